@@ -1,0 +1,34 @@
+import 'server-only';
+import type { Caller } from './caller';
+
+/**
+ * Which nights' and programmes' data a caller may see, as a value that every list of `lib/server/data` demands. A list
+ * without a scope does not compile.
+ */
+export interface Scope {
+  /** True: everything, for managers, photometrists and jobs. */
+  readonly all: boolean;
+  /** Programmes the person belongs to. */
+  readonly programmeIds: readonly number[];
+  /** The person whose nights as an observer count; null for nobody. */
+  readonly observerId: number | null;
+}
+
+const everything: Scope = { all: true, programmeIds: [], observerId: null };
+
+/** Scope for measurements, solutions, calibrated magnitudes and unreleased catalogues. */
+export function dataScope(caller: Caller): Scope {
+  if (caller.kind === 'job') return everything;
+  if (caller.roles.has('manager') || caller.roles.has('photometrist')) return everything;
+  return {
+    all: false,
+    programmeIds: [...caller.programmes.keys()],
+    observerId: caller.roles.has('observer') ? caller.personId : null,
+  };
+}
+
+/** Scope for the log itself: the observatory's staff see every night, investigators those with frames of their programmes. */
+export function nightScope(caller: Caller): Scope {
+  if (caller.kind === 'person' && caller.roles.has('observer')) return everything;
+  return dataScope(caller);
+}

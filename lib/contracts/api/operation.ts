@@ -1,0 +1,44 @@
+import type { z } from 'zod';
+
+/**
+ * One call of the HTTP interface, said once: the route validates with it, and the OpenAPI document is made from it.
+ * `open` calls answer without sign-in. `raw` bodies are streamed to the handler unread; `stream` answers are written by it.
+ */
+export interface Operation<
+  Params extends z.ZodType = z.ZodType,
+  Query extends z.ZodType = z.ZodType,
+  Body extends z.ZodType = z.ZodType,
+  Answer extends z.ZodType = z.ZodType,
+> {
+  readonly id: string;
+  readonly method: 'get' | 'post' | 'put' | 'patch' | 'delete';
+  /** Below /api/v1, parameters in braces. */
+  readonly path: `/${string}`;
+  readonly tag: string;
+  readonly summary: string;
+  readonly description?: string;
+  readonly params?: Params;
+  readonly query?: Query;
+  readonly body?: Body;
+  /** Media types of a body that is streamed, not parsed. */
+  readonly raw?: readonly string[];
+  readonly answer?: Answer;
+  /** Media types of an answer that the handler streams. */
+  readonly stream?: readonly string[];
+  readonly status?: 200 | 201 | 202 | 204;
+  readonly open?: boolean;
+}
+
+/** Keeps the literal types of an operation. */
+export const operation = <const O extends Operation>(definition: O): O => definition;
+
+type Parsed<T> = T extends z.ZodType ? z.output<T> : undefined;
+export type ParamsOf<O extends Operation> = Parsed<O['params']>;
+export type QueryOf<O extends Operation> = Parsed<O['query']>;
+export type BodyOf<O extends Operation> = Parsed<O['body']>;
+/** What a handler returns: the input side of the answer's schema, which strips what it does not name. */
+export type AnswerOf<O extends Operation> = O['stream'] extends readonly string[]
+  ? Response
+  : O['answer'] extends z.ZodType
+    ? z.input<O['answer']>
+    : undefined;

@@ -8,6 +8,8 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
   declare id: string;
   declare personId: number;
   declare expiresAt: Date;
+  /** The browser's own name for itself, cut to 255 characters. */
+  declare userAgent: CreationOptional<string>;
   declare createdAt: CreationOptional<Date>;
 
   static associate(): void {
@@ -20,6 +22,7 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
         id: { type: DataTypes.CHAR(64), primaryKey: true, allowNull: false },
         personId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         expiresAt: { type: DataTypes.DATE(3), allowNull: false },
+        userAgent: { type: DataTypes.STRING(255), allowNull: false, defaultValue: '' },
         createdAt: {
           type: DataTypes.DATE(3),
           allowNull: false,

@@ -7,7 +7,8 @@ import { databaseEnvironment } from './environment';
 const worker = Number(process.env['VITEST_POOL_ID'] ?? '1');
 const address = inject('workerDatabases')[worker - 1];
 if (address === undefined) throw new Error(`There is no database for worker ${worker}.`);
-Object.assign(process.env, databaseEnvironment(address));
+// vitest sets BASE_URL to a path of its own meaning; here it is the address in links.
+Object.assign(process.env, databaseEnvironment(address), { BASE_URL: 'http://evenfall.example' });
 
 beforeAll(emptyTables);
 afterAll(closeDatabase);

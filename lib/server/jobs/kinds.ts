@@ -1,0 +1,71 @@
+import 'server-only';
+import { z } from 'zod';
+import { PublicId } from '@/lib/contracts/common';
+
+/** Long jobs share WORKER_CONCURRENCY places; short ones have places of their own, so that mail never waits behind a table. */
+export type Lane = 'long' | 'short';
+
+interface Kind<Payload extends z.ZodType = z.ZodType, Result extends z.ZodType = z.ZodType> {
+  /** What the job does, as people read it. */
+  readonly title: string;
+  readonly payload: Payload;
+  readonly result: Result;
+  readonly lane: Lane;
+  /** How often the work may begin before it counts as failed; a process that died counts as one. */
+  readonly maxTries: number;
+  /** Time after the last heartbeat at which another runner takes the job. */
+  readonly lease_s: number;
+  /** Longest wait between two tries. */
+  readonly longestWait_s: number;
+}
+const kind = <P extends z.ZodType, R extends z.ZodType>(definition: Kind<P, R>): Kind<P, R> => definition;
+
+/** The contract of every kind of job: what goes in, what comes out, how long and how often. */
+export const jobKinds = {
+  'check-measurements': kind({
+    title: 'Check measurements',
+    payload: z.object({ set: PublicId }),
+    result: z.object({
+      set: PublicId,
+      state: z.enum(['matched', 'refused']),
+      rows: z.number().int(),
+      matched: z.number().int(),
+      faults: z.number().int(),
+    }),
+    lane: 'long',
+    maxTries: 3,
+    lease_s: 30,
+    longestWait_s: 300,
+  }),
+  'send-mail': kind({
+    title: 'Send mail',
+    payload: z.object({ mail: PublicId }),
+    result: z.object({ messageId: z.string() }),
+    lane: 'short',
+    // With the longest wait this is a little more than two days of a mail server being away.
+    maxTries: 108,
+    lease_s: 120,
+    longestWait_s: 1800,
+  }),
+  tidy: kind({
+    title: 'Remove what has expired',
+    payload: z.object({}),
+    result: z.object({
+      sessions: z.number().int(),
+      idempotencyKeys: z.number().int(),
+      jobs: z.number().int(),
+      files: z.number().int(),
+    }),
+    lane: 'short',
+    maxTries: 3,
+    lease_s: 60,
+    longestWait_s: 600,
+  }),
+} as const;
+
+export type JobKind = keyof typeof jobKinds;
+export type JobPayload<K extends JobKind> = z.output<(typeof jobKinds)[K]['payload']>;
+export type JobResult<K extends JobKind> = z.output<(typeof jobKinds)[K]['result']>;
+
+export const jobKindNames = Object.keys(jobKinds) as readonly JobKind[];
+export const isJobKind = (name: string): name is JobKind => name in jobKinds;

@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import type { FaultCode } from '@/lib/faults/fault';
 
 /**
  * One call of the HTTP interface, said once: the route validates with it, and the OpenAPI document is made from it.
@@ -27,6 +28,8 @@ export interface Operation<
   readonly stream?: readonly string[];
   readonly status?: 200 | 201 | 202 | 204;
   readonly open?: boolean;
+  /** Refusals beyond those that follow from the rest: bad input, no sign-in, no right, nothing there. */
+  readonly faults?: readonly FaultCode[];
 }
 
 /** Keeps the literal types of an operation. */

@@ -1,37 +1,28 @@
 import 'server-only';
+import { problems } from '@/lib/contracts/api/problem';
 import { Fault, isFault, type FaultCode } from '@/lib/faults/fault';
 import { isOutage } from '@/lib/server/data/outage';
 import { logger } from '@/lib/server/log/logger';
-
-const answers = {
-  'invalid-input': { status: 400, title: 'The input is not valid' },
-  'not-signed-in': { status: 401, title: 'Sign-in is needed' },
-  'not-allowed': { status: 403, title: 'Not allowed' },
-  'not-found': { status: 404, title: 'Not found' },
-  conflict: { status: 409, title: 'Conflict with the present state' },
-  stale: { status: 412, title: 'Changed by somebody else meanwhile' },
-  'too-large': { status: 413, title: 'Too large' },
-  unsupported: { status: 415, title: 'Not supported' },
-  unprocessable: { status: 422, title: 'Cannot be processed' },
-  'too-many': { status: 429, title: 'Too many requests' },
-  unavailable: { status: 503, title: 'Not available just now' },
-} as const satisfies Record<FaultCode, { status: number; title: string }>;
 
 /** What a person or program is told of any error: a fault as it stands, an outage as such, a bug by its reference only. */
 export function toFault(error: unknown, requestId: string, what: string): Fault | null {
   if (isFault(error)) return error;
   logger().error({ err: error, requestId, what }, 'unexpected error');
   if (!isOutage(error)) return null;
-  return new Fault('unavailable', 'The database cannot be reached just now. Nothing was changed; try again shortly.', {
-    retryAfter_s: 5,
-    cause: error,
-  });
+  return new Fault(
+    'unavailable',
+    'The database cannot be reached just now. Nothing was changed; try again shortly.',
+    {
+      retryAfter_s: 5,
+      cause: error,
+    },
+  );
 }
 
 /** Problem details, RFC 9457. */
 export function problemResponse(fault: Fault | null, requestId: string): Response {
   const { status, title } = fault
-    ? answers[fault.code]
+    ? problems[fault.code]
     : { status: 500, title: 'Something went wrong on our side' };
   const body = {
     type: fault ? `/api-reference#problem-${fault.code}` : 'about:blank',
@@ -47,4 +38,4 @@ export function problemResponse(fault: Fault | null, requestId: string): Respons
   return new Response(JSON.stringify(body), { status, headers });
 }
 
-export const problemStatus = (code: FaultCode): number => answers[code].status;
+export const problemStatus = (code: FaultCode): number => problems[code].status;

@@ -1,0 +1,25 @@
+import type { Route } from 'next';
+import type { ObservatoryRole } from '@/lib/contracts/roles';
+
+export interface Place {
+  readonly label: string;
+  readonly href: Route;
+  /** In the bar itself, or under Office. */
+  readonly part: 'bar' | 'office';
+  /** Shown to people with one of these roles; to everybody signed in when absent. The page itself decides who may enter. */
+  readonly roles?: readonly ObservatoryRole[];
+  /** There only where the demo runs. */
+  readonly demoOnly?: boolean;
+}
+
+/** Every place of the bar, in its order. A place is added together with its page: a link without one does not compile. */
+export const places: readonly Place[] = [];
+
+/** The places that a person sees. */
+export function placesFor(roles: readonly ObservatoryRole[], isDemo: boolean): readonly Place[] {
+  return places.filter(
+    (place) =>
+      (place.demoOnly !== true || isDemo) &&
+      (place.roles === undefined || place.roles.some((role) => roles.includes(role))),
+  );
+}

@@ -6,17 +6,22 @@ export interface ThreadSource {
   /** The file workers/threads/NAME.thread.ts. */
   readonly name: string;
   /**
-   * `(options) => new Worker(new URL('./NAME.thread.ts', import.meta.url), options)`, written out in the calling file:
-   * the bundler follows only this literal form.
+   * `(options) => new Worker(new URL('./NAME.thread.ts', import.meta.url), { ...options })`, written out so in the calling
+   * file. The bundler follows only this form: with a plain `options` it copies the file unbuilt, and the thread fails.
    */
-  readonly bundled: (options: WorkerOptions) => Worker;
+  readonly bundled: (options: ThreadOptions) => Worker;
+}
+
+/** The bundler adds its own to `workerData`, so it must be an object: a bare number or string would arrive as `{}`. */
+export interface ThreadOptions extends Omit<WorkerOptions, 'eval' | 'workerData'> {
+  readonly workerData: object;
 }
 
 /**
  * Starts a thread from a TypeScript file, in the built server and in a process that runs under tsx or vitest. Node's
  * loader refuses a .ts worker there, even with tsx among its arguments, so the thread itself registers tsx first.
  */
-export function startThread(source: ThreadSource, options: WorkerOptions = {}): Worker {
+export function startThread(source: ThreadSource, options: ThreadOptions): Worker {
   if (process.env['NEXT_RUNTIME'] === 'nodejs') return source.bundled(options);
   const folder = path.dirname(fileURLToPath(import.meta.url));
   const file = pathToFileURL(path.join(folder, `${source.name}.thread.ts`)).href;

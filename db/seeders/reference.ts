@@ -11,8 +11,7 @@ interface Source {
   readonly default_error: number;
 }
 
-const quantities = ['V', 'BV', 'UB', 'VR', 'RI', 'VI'] as const;
-type Quantity = (typeof quantities)[number];
+type Quantity = 'V' | 'BV' | 'UB' | 'VR' | 'RI' | 'VI';
 type StarLine = Readonly<
   Record<'star' | 'field' | 'ra_deg' | 'dec_deg' | 'n' | Quantity | `e_${Quantity}`, string>
 >;

@@ -6,6 +6,26 @@ export const PublicId = z
   .regex(/^[0-9a-hjkmnp-tv-z]{12}$/, 'is not an id of this service')
   .meta({ description: 'Opaque identifier', example: '3kq8v7m2t0xc' });
 
+/** An id in an address: whatever is no id of ours names nothing, and is not found rather than malformed. */
+export const PathId = z
+  .string()
+  .min(1)
+  .max(200)
+  .meta({ description: 'Opaque identifier', example: '3kq8v7m2t0xc' });
+
+/** Text of one line, without blanks at its ends. */
+export const line = (max: number) =>
+  z
+    .string()
+    .trim()
+    .max(max, `must be at most ${max} characters long`)
+    .regex(/^[^\p{Cc}\u2028\u2029]*$/u, 'must be one line of text, without control characters');
+
+/** Why a thing is undone: kept in the audit trail. */
+export const Reason = line(500)
+  .min(3, 'must say why, in a few words')
+  .meta({ description: 'Why; kept in the audit trail', example: 'exposure time mistyped' });
+
 /** An instant: ISO 8601, UTC, with Z. */
 export const Utc = z.iso
   .datetime({ message: 'must be an instant in UTC such as 2026-11-03T23:41:05Z' })

@@ -42,7 +42,7 @@ const allow = {
   page: ['page', 'component', 'act', 'read', 'identity', 'contract', 'fault', ...science],
   component: ['component', 'contract', 'fault', ...science],
   endpoint: ['endpoint', 'http', 'act', 'read', 'contract', 'fault', 'format'],
-  contract: ['contract'],
+  contract: ['contract', 'fault'],
   fault: ['fault'],
   numerics: ['numerics', 'fault'],
   astro: ['astro', 'numerics', 'fault'],

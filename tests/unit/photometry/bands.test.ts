@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { bands } from '@/lib/contracts/bands';
 import { bandOrder, colourForBand, magnitudeInBand } from '@/lib/photometry/bands';
-import { expectWithin } from '@/tests/support/expect-within';
+import { expectWithin } from '@/tests/support/numbers';
 
 const column = (value: number): Float64Array => Float64Array.of(value);
 /** TPhe C of the published table. */

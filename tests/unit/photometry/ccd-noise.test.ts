@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { magnitudePerRelativeFlux, signalToNoise } from '@/lib/photometry/ccd-noise';
-import { expectWithin } from '@/tests/support/expect-within';
+import { expectWithin } from '@/tests/support/numbers';
 import reference from '@/tests/reference/ccd-noise.json';
 
 const noise = { nPixels: 80, nBackground: 400, sky: 50, dark: 1, readNoise: 8, gain: 1.5 };

@@ -8,7 +8,7 @@ import {
   type SimulationInput,
 } from '@/lib/photometry/simulate';
 import reference from '@/tests/reference/transformation.json';
-import { expectWithin } from '@/tests/support/expect-within';
+import { expectWithin } from '@/tests/support/numbers';
 
 const quiet = { drift: 0, extinctionDrift: 0, colourTerm2: 0, scatterObservation: 0, scatterFrame: 0 };
 const { z_v, k_v, c_v, z_b, k_b, c_b, k2 } = reference.coefficients;

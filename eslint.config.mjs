@@ -50,7 +50,8 @@ const allow = {
   format: ['format', 'contract', 'fault'],
   policy: ['policy', 'contract', 'fault'],
   // Not other acts: an act that needs another is two acts, or a function of lib/server/data that both use.
-  act: ['policy', 'data', 'queue', 'plumbing', 'contract', 'fault', 'format', ...science],
+  // Of identity they use secrets and sessions; who asks they are told.
+  act: ['policy', 'data', 'identity', 'queue', 'plumbing', 'contract', 'fault', 'format', ...science],
   read: ['read', 'policy', 'data', 'contract', 'fault', 'format', ...science],
   data: ['data', 'policy', 'db', 'contract', 'fault'],
   queue: ['queue', 'data', 'policy', 'contract', 'fault', 'plumbing'],

@@ -30,6 +30,8 @@ export interface Operation<
   readonly open?: boolean;
   /** Refusals beyond those that follow from the rest: bad input, no sign-in, no right, nothing there. */
   readonly faults?: readonly FaultCode[];
+  /** The answer holds a secret: it is never kept for a repeated Idempotency-Key. */
+  readonly secret?: boolean;
 }
 
 /** Keeps the literal types of an operation. */

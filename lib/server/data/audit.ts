@@ -1,6 +1,9 @@
 import 'server-only';
 import { execute, type Tx } from './database';
-import { actorOf, type Caller } from '@/lib/server/policy/caller';
+import type { Caller } from '@/lib/server/policy/caller';
+
+/** Who an audit row names: a caller, or nobody for what happens at the door before sign-in. */
+export type Actor = Pick<Caller, 'personId' | 'requestId'>;
 
 export interface AuditEntry {
   /** What was done, as noun.verb: `night.close`. */
@@ -16,13 +19,13 @@ export interface AuditEntry {
 }
 
 /** Adds a row to the audit trail within the change it tells of. */
-export async function recordAudit(tx: Tx, caller: Caller, entry: AuditEntry): Promise<void> {
+export async function recordAudit(tx: Tx, actor: Actor, entry: AuditEntry): Promise<void> {
   await execute(
     `INSERT INTO audit_events
        (person_id, act, subject_kind, subject_id, night_id, programme_id, reason, before_values, after_values, request_id)
      VALUES (:person, :act, :kind, :subject, :night, :programme, :reason, :before, :after, :request)`,
     {
-      person: actorOf(caller),
+      person: actor.personId,
       act: entry.act,
       kind: entry.subjectKind,
       subject: entry.subjectId,
@@ -31,7 +34,7 @@ export async function recordAudit(tx: Tx, caller: Caller, entry: AuditEntry): Pr
       reason: entry.reason ?? '',
       before: entry.before ? JSON.stringify(entry.before) : null,
       after: entry.after ? JSON.stringify(entry.after) : null,
-      request: caller.requestId,
+      request: actor.requestId,
     },
     tx,
   );

@@ -14,7 +14,11 @@ const keep_hours = 48;
 const abandoned_s = 120;
 
 /** Takes the key for this request; returns null when it is ours, or what is known of the earlier request. */
-export async function takeKey(personId: number, key: string, fingerprint: string): Promise<StoredAnswer | null> {
+export async function takeKey(
+  personId: number,
+  key: string,
+  fingerprint: string,
+): Promise<StoredAnswer | null> {
   const values = { person: personId, key, fingerprint, keep: keep_hours, abandoned: abandoned_s };
   await execute(
     `DELETE FROM idempotency_keys
@@ -37,7 +41,12 @@ export async function takeKey(personId: number, key: string, fingerprint: string
 }
 
 /** Keeps the answer for whoever sends the key again. */
-export async function storeAnswer(personId: number, key: string, status: number, body: string): Promise<void> {
+export async function storeAnswer(
+  personId: number,
+  key: string,
+  status: number,
+  body: string,
+): Promise<void> {
   await execute(
     'UPDATE idempotency_keys SET status = :status, body = :body WHERE person_id = :person AND idempotency_key = :key',
     { person: personId, key, status, body },

@@ -6,10 +6,11 @@ import type { z } from 'zod';
 import type { ActionResult } from '@/lib/contracts/action-result';
 import { Fault } from '@/lib/faults/fault';
 import { currentCaller } from '@/lib/server/identity/current-caller';
-import type { PersonCaller } from '@/lib/server/policy/caller';
+import type { PersonCaller, Visitor } from '@/lib/server/policy/caller';
 import { demandSameOrigin } from './origin';
 import { parseInput } from './parse-input';
 import { toFault } from './problem';
+import { visitorFrom } from './visitor';
 
 type Work<S extends z.ZodType, Who, T> = (caller: Who, input: z.output<S>) => Promise<T>;
 
@@ -21,7 +22,11 @@ export function action<S extends z.ZodType, T>(schema: S, work: Work<S, PersonCa
   return async (input: FormData | z.input<S>): Promise<ActionResult<T>> =>
     run(schema, input, async (value, requestId) => {
       const caller = await currentCaller();
-      if (!caller) throw new Fault('not-signed-in', 'You are no longer signed in. Sign in again; nothing was lost here.');
+      if (!caller)
+        throw new Fault(
+          'not-signed-in',
+          'You are no longer signed in. Sign in again; nothing was lost here.',
+        );
       return work({ ...caller, requestId }, value);
     });
 }
@@ -33,9 +38,9 @@ export function formAction<S extends z.ZodType, T>(schema: S, work: Work<S, Pers
 }
 
 /** For the door: sign-in and one-time links, where nobody is signed in yet. */
-export function openFormAction<S extends z.ZodType, T>(schema: S, work: Work<S, { requestId: string }, T>) {
+export function openFormAction<S extends z.ZodType, T>(schema: S, work: Work<S, Visitor, T>) {
   return async (_former: ActionResult<T> | null, form: FormData): Promise<ActionResult<T>> =>
-    run(schema, form, (value, requestId) => work({ requestId }, value));
+    run(schema, form, async (value, requestId) => work(visitorFrom(await headers(), requestId), value));
 }
 
 async function run<S extends z.ZodType, T>(

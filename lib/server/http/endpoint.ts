@@ -46,7 +46,11 @@ interface Incoming {
   readonly params: Record<string, string | string[] | undefined>;
 }
 
-async function answer<O extends Operation>(operation: O, handler: Handler<O>, incoming: Incoming): Promise<Response> {
+async function answer<O extends Operation>(
+  operation: O,
+  handler: Handler<O>,
+  incoming: Incoming,
+): Promise<Response> {
   const { request, requestId } = incoming;
   const caller = await callerFromRequest(request);
   if (operation.method !== 'get') demandSameOrigin(request.headers, caller?.via ?? 'nobody');
@@ -64,7 +68,8 @@ async function answer<O extends Operation>(operation: O, handler: Handler<O>, in
     requestId,
   } as Call<O>;
   const run = async (): Promise<Response> => toResponse(operation, await handler(call), requestId);
-  const key = operation.method === 'get' || operation.stream ? null : idempotencyKey(request.headers);
+  const isKept = operation.method !== 'get' && !operation.stream && !operation.secret;
+  const key = isKept ? idempotencyKey(request.headers) : null;
   if (!key || !caller) return run();
   const content = `${operation.method} ${url.pathname}${url.search}\n${text}`;
   return idempotent({ personId: caller.personId, key, content }, run);

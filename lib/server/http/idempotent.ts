@@ -7,9 +7,13 @@ import { freeKey, storeAnswer, takeKey } from '@/lib/server/data/idempotency';
 export function idempotencyKey(headers: Headers): string | null {
   const header = headers.get('idempotency-key')?.trim();
   if (!header) return null;
-  const key = header.startsWith('"') && header.endsWith('"') && header.length > 2 ? header.slice(1, -1) : header;
+  const key =
+    header.startsWith('"') && header.endsWith('"') && header.length > 2 ? header.slice(1, -1) : header;
   if (/^[\x21-\x7e]{1,255}$/.test(key)) return key;
-  throw new Fault('invalid-input', 'Idempotency-Key must be 1 to 255 printable ASCII characters without blanks.');
+  throw new Fault(
+    'invalid-input',
+    'Idempotency-Key must be 1 to 255 printable ASCII characters without blanks.',
+  );
 }
 
 interface Keyed {
@@ -45,7 +49,9 @@ function replay(
     throw new Fault('unprocessable', 'This Idempotency-Key was used for another request. Take a new one.');
   }
   if (earlier.status === null) {
-    throw new Fault('conflict', 'The first request with this Idempotency-Key is still running.', { retryAfter_s: 2 });
+    throw new Fault('conflict', 'The first request with this Idempotency-Key is still running.', {
+      retryAfter_s: 2,
+    });
   }
   return new Response(earlier.status === 204 ? null : earlier.body, {
     status: earlier.status,

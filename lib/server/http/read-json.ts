@@ -12,7 +12,10 @@ export async function readText(request: Request): Promise<string> {
   for await (const chunk of request.body as unknown as AsyncIterable<Uint8Array>) {
     size += chunk.byteLength;
     if (size > limit_bytes) {
-      throw new Fault('too-large', `The body is larger than ${limit_bytes / 1024 / 1024} MiB. Send it in parts.`);
+      throw new Fault(
+        'too-large',
+        `The body is larger than ${limit_bytes / 1024 / 1024} MiB. Send it in parts.`,
+      );
     }
     chunks.push(chunk);
   }

@@ -80,6 +80,17 @@ export function lucia(tx: Tx | null = null) {
   });
 }
 
+/** Begins a session and returns its cookie's value, which is kept nowhere else. */
+export async function startSession(personId: number, userAgent: string, tx: Tx): Promise<string> {
+  const session = await lucia(tx).createSession(personId, { userAgent: userAgent.slice(0, 255) });
+  return session.id;
+}
+
+/** Ends the session of a cookie; false when it had ended before. */
+export async function endSession(cookie: string, tx: Tx): Promise<boolean> {
+  return sessions.deleteSession(secretHash(cookie), tx);
+}
+
 /** The person behind a session cookie's value, or null when the session has ended or its person is disabled. */
 export async function personOfSession(cookie: string): Promise<CallerRow | null> {
   const { user } = await lucia().validateSession(cookie);

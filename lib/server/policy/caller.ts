@@ -29,6 +29,15 @@ export interface JobCaller {
   readonly requestId: string;
 }
 
+/** Who stands at the door: nobody yet. Only what leads to sign-in takes a visitor instead of a caller. */
+export interface Visitor {
+  readonly requestId: string;
+  /** Network address, as far as it is known. */
+  readonly address: string;
+  /** The browser's own name for itself. */
+  readonly userAgent: string;
+}
+
 export const tokenScopes = ['read', 'write'] as const;
 export type TokenScope = (typeof tokenScopes)[number];
 

@@ -52,7 +52,7 @@ const allow = {
   // Not other acts: an act that needs another is two acts, or a function of lib/server/data that both use.
   // Of identity they use secrets and sessions; who asks they are told.
   act: ['policy', 'data', 'identity', 'queue', 'plumbing', 'contract', 'fault', 'format', ...science],
-  read: ['read', 'policy', 'data', 'contract', 'fault', 'format', ...science],
+  read: ['read', 'policy', 'data', 'identity', 'contract', 'fault', 'format', ...science],
   data: ['data', 'policy', 'db', 'contract', 'fault'],
   queue: ['queue', 'data', 'policy', 'contract', 'fault', 'plumbing'],
   identity: ['identity', 'data', 'policy', 'contract', 'fault', 'plumbing'],

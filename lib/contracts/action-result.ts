@@ -6,6 +6,8 @@ export interface FaultValue {
   readonly detail: string;
   readonly issues: readonly Issue[];
   readonly reference: string;
+  /** What was typed, but for secrets, so that a form without scripts can show it again. */
+  readonly typed: Readonly<Record<string, string>>;
 }
 
 /** What a server action returns; it never throws at a component. */

@@ -18,14 +18,10 @@ export const PersonName = z
   .meta({ id: 'PersonName', description: 'A person, by id and name' });
 export type PersonName = z.infer<typeof PersonName>;
 
-const Summary = z
-  .string()
-  .trim()
-  .max(10_000, 'must be at most 10,000 characters long')
-  .meta({
-    description: 'The observers’ account of the night',
-    example: 'Thin cirrus until 23 UTC, clear afterwards.',
-  });
+const Summary = z.string().trim().max(10_000, 'must be at most 10,000 characters long').meta({
+  description: 'The observers’ account of the night',
+  example: 'Thin cirrus until 23 UTC, clear afterwards.',
+});
 
 export const Night = z
   .object({
@@ -72,13 +68,9 @@ export const OpenNight = z
   .meta({ id: 'OpenNight' });
 export type OpenNight = z.infer<typeof OpenNight>;
 
-const version = z
-  .number()
-  .int()
-  .optional()
-  .meta({
-    description: 'The version you have read: the change is refused if it is no longer the present one',
-  });
+const version = z.number().int().optional().meta({
+  description: 'The version you have read: the change is refused if it is no longer the present one',
+});
 
 /** A change of state stands by itself, so that it is one act in the audit trail. */
 export const PatchNight = z

@@ -11,13 +11,9 @@ const tags: Readonly<Record<string, string>> = {
 
 const binary = { type: 'string', format: 'binary' } as const;
 const idempotencyKey = z.object({
-  'Idempotency-Key': z
-    .string()
-    .max(255)
-    .optional()
-    .meta({
-      description: 'Your own name for this write: sent again with it, it is done once and answered alike',
-    }),
+  'Idempotency-Key': z.string().max(255).optional().meta({
+    description: 'Your own name for this write: sent again with it, it is done once and answered alike',
+  }),
 });
 
 /** The refusals that an operation can give: what follows from its form, and what it names. */

@@ -62,9 +62,22 @@ async function run<S extends z.ZodType, T>(
         detail: fault?.message ?? 'Something went wrong on our side. What you typed is still here.',
         issues: fault?.issues ?? [],
         reference: requestId,
+        typed: typedText(input),
       },
     };
   }
+}
+
+const secretField = /password|repeated|token/i;
+
+/** A form's text fields as they came; passwords and tokens do not travel back. */
+function typedText(input: unknown): Readonly<Record<string, string>> {
+  if (!(input instanceof FormData)) return {};
+  const fields = [...input].filter(
+    (field): field is [string, string] =>
+      typeof field[1] === 'string' && !field[0].startsWith('$ACTION') && !secretField.test(field[0]),
+  );
+  return Object.fromEntries(fields);
 }
 
 /** A form's fields as an object; a name that stands more than once becomes a list. Next's own fields are left out. */

@@ -26,7 +26,8 @@ const kinds = {
   'lib/server/jobs/**': 'queue',
   'lib/server/http/**': 'http',
   'lib/server/identity/**': 'identity',
-  'lib/server/{mail,storage,log,settings}/**': 'plumbing',
+  'lib/server/mail/**': 'mail',
+  'lib/server/{storage,log,settings}/**': 'plumbing',
   'db/seeders/**': 'seeder',
   'db/**': 'db',
   'workers/threads/**': 'thread',
@@ -51,9 +52,11 @@ const allow = {
   policy: ['policy', 'contract', 'fault'],
   // Not other acts: an act that needs another is two acts, or a function of lib/server/data that both use.
   // Of identity they use secrets and sessions; who asks they are told.
-  act: ['policy', 'data', 'identity', 'queue', 'plumbing', 'contract', 'fault', 'format', ...science],
-  read: ['read', 'policy', 'data', 'identity', 'contract', 'fault', 'format', ...science],
+  act: ['policy', 'data', 'identity', 'queue', 'mail', 'plumbing', 'contract', 'fault', 'format', ...science],
+  read: ['read', 'policy', 'data', 'identity', 'plumbing', 'contract', 'fault', 'format', ...science],
   data: ['data', 'policy', 'db', 'contract', 'fault'],
+  // A mail is a row of the outbox and a job.
+  mail: ['mail', 'data', 'queue', 'policy', 'plumbing', 'contract', 'fault'],
   queue: ['queue', 'data', 'policy', 'contract', 'fault', 'plumbing'],
   identity: ['identity', 'data', 'policy', 'contract', 'fault', 'plumbing'],
   http: ['http', 'identity', 'policy', 'contract', 'fault', 'plumbing', 'data'],

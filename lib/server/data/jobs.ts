@@ -1,7 +1,8 @@
 import 'server-only';
-import { execute, selectOne, type Tx } from './database';
+import type { JobScope } from '@/lib/server/policy/scope';
+import { execute, select, selectOne, type Tx } from './database';
 
-export interface JobRow {
+export interface NewJobRow {
   readonly publicId: string;
   readonly kind: string;
   /** JSON. */
@@ -17,7 +18,7 @@ export interface JobRow {
 }
 
 /** Writes a queued job, unless one with its key lives; returns the public id of the one that there is now. */
-export async function insertJob(tx: Tx, job: JobRow): Promise<string> {
+export async function insertJob(tx: Tx, job: NewJobRow): Promise<string> {
   await execute(
     // The update changes nothing: it locks the living job, so that it cannot end before this transaction does.
     `INSERT INTO jobs (public_id, kind, payload, dedupe_key, priority, run_after, max_tries, created_by_id, night_id, programme_id)
@@ -33,4 +34,101 @@ export async function insertJob(tx: Tx, job: JobRow): Promise<string> {
     tx,
   );
   return living?.publicId ?? job.publicId;
+}
+
+export type JobState = 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
+
+export interface JobRow {
+  readonly id: number;
+  readonly publicId: string;
+  readonly kind: string;
+  readonly payload: unknown;
+  readonly state: JobState;
+  readonly runAfter: Date;
+  readonly tries: number;
+  readonly maxTries: number;
+  readonly progress: number;
+  readonly message: string;
+  readonly result: unknown;
+  readonly error: unknown;
+  readonly isCancelRequested: 0 | 1;
+  readonly createdById: number | null;
+  readonly createdBy: string | null;
+  readonly programmeId: number | null;
+  readonly nightPublicId: string | null;
+  readonly nightDate: string | null;
+  readonly telescope: string | null;
+  readonly createdAt: Date;
+  readonly startedAt: Date | null;
+  readonly finishedAt: Date | null;
+}
+
+const jobRows = `SELECT j.id, j.public_id AS publicId, j.kind, j.payload, j.state, j.run_after AS runAfter, j.tries,
+       j.max_tries AS maxTries, j.progress, j.message, j.result, j.error,
+       j.cancel_requested_at IS NOT NULL AS isCancelRequested, j.created_by_id AS createdById, p.name AS createdBy,
+       j.programme_id AS programmeId, n.public_id AS nightPublicId, n.date AS nightDate, t.code AS telescope,
+       j.created_at AS createdAt, j.started_at AS startedAt, j.finished_at AS finishedAt
+  FROM jobs j
+  LEFT JOIN people p ON p.id = j.created_by_id
+  LEFT JOIN nights n ON n.id = j.night_id
+  LEFT JOIN telescopes t ON t.id = n.telescope_id`;
+
+/** One job; asks for no scope, because whoever calls asks policy with what it finds. */
+export function findJob(publicId: string, tx: Tx | null = null): Promise<JobRow | null> {
+  return selectOne<JobRow>(`${jobRows} WHERE j.public_id = :publicId`, { publicId }, tx);
+}
+
+/** Locks a job until the transaction ends and tells its state; null when there is none. */
+export async function lockJob(tx: Tx, id: number): Promise<JobState | null> {
+  const row = await selectOne<{ state: JobState }>(
+    'SELECT state FROM jobs WHERE id = :id FOR UPDATE',
+    { id },
+    tx,
+  );
+  return row?.state ?? null;
+}
+
+/** The same jobs in one query, for those who watch them. */
+export async function findJobs(publicIds: readonly string[]): Promise<readonly JobRow[]> {
+  if (publicIds.length === 0) return [];
+  return select<JobRow>(`${jobRows} WHERE j.public_id IN (:publicIds)`, { publicIds });
+}
+
+export interface JobFilter {
+  readonly state?: JobState | undefined;
+  readonly kind?: string | undefined;
+  /** Internal id of the last job of the page before. */
+  readonly before: number | null;
+  readonly limit: number;
+}
+
+/** Jobs within the scope, the newest first. */
+export function listJobs(scope: JobScope, filter: JobFilter): Promise<readonly JobRow[]> {
+  const where = ['(:all OR j.created_by_id = :owner OR j.programme_id IN (:programmes))'];
+  if (filter.state !== undefined) where.push('j.state = :state');
+  if (filter.kind !== undefined) where.push('j.kind = :kind');
+  if (filter.before !== null) where.push('j.id < :before');
+  return select<JobRow>(`${jobRows} WHERE ${where.join(' AND ')} ORDER BY j.id DESC LIMIT :limit`, {
+    all: scope.all,
+    owner: scope.ownerId,
+    // An empty list is no SQL; no programme has the id 0.
+    programmes: scope.programmeIds.length > 0 ? scope.programmeIds : [0],
+    state: filter.state ?? null,
+    kind: filter.kind ?? null,
+    before: filter.before,
+    limit: filter.limit,
+  });
+}
+
+/** How many jobs within the scope are in each state. */
+export function countJobs(scope: JobScope): Promise<readonly { state: JobState; n: number }[]> {
+  return select(
+    `SELECT state, COUNT(*) AS n FROM jobs
+      WHERE :all OR created_by_id = :owner OR programme_id IN (:programmes) GROUP BY state`,
+    {
+      all: scope.all,
+      owner: scope.ownerId,
+      programmes: scope.programmeIds.length > 0 ? scope.programmeIds : [0],
+    },
+  );
 }

@@ -29,3 +29,66 @@ export async function insertMail(tx: Tx, mail: MailRow): Promise<string> {
   );
   return row?.publicId ?? mail.publicId;
 }
+
+export interface DueMail {
+  readonly publicId: string;
+  readonly messageId: string;
+  readonly recipient: string;
+  readonly name: string | null;
+  readonly subject: string;
+  readonly text: string;
+  readonly html: string;
+  readonly state: 'queued' | 'sent' | 'failed';
+  readonly tries: number;
+}
+
+/**
+ * Locks a mail until the transaction ends, so that no two processes can hand it over at the same time. Null when another
+ * one has it, or there is none.
+ */
+export function lockMail(tx: Tx, publicId: string): Promise<DueMail | null> {
+  return selectOne<DueMail>(
+    `SELECT m.public_id AS publicId, m.message_id AS messageId, m.recipient, m.subject, m.text, m.html, m.state, m.tries,
+            (SELECT p.name FROM people p WHERE p.id = m.person_id) AS name
+       FROM mails m WHERE m.public_id = :publicId FOR UPDATE SKIP LOCKED`,
+    { publicId },
+    tx,
+  );
+}
+
+export async function markSent(tx: Tx, publicId: string): Promise<void> {
+  await execute(
+    `UPDATE mails SET state = 'sent', sent_at = NOW(3), tries = tries + 1, last_error = '' WHERE public_id = :publicId`,
+    { publicId },
+    tx,
+  );
+}
+
+/** Keeps why a try failed; the mail stays queued. */
+export async function noteMailTry(tx: Tx, publicId: string, error: string, wait_s: number): Promise<void> {
+  await execute(
+    `UPDATE mails SET tries = tries + 1, last_error = :error, next_try_at = NOW(3) + INTERVAL :wait SECOND
+      WHERE public_id = :publicId AND state = 'queued'`,
+    { publicId, error: error.slice(0, 500), wait: wait_s },
+    tx,
+  );
+}
+
+/** The mail will not be sent. */
+export async function failMail(tx: Tx, publicId: string, reason: string): Promise<void> {
+  await execute(
+    `UPDATE mails SET state = 'failed', last_error = IF(last_error = '', :reason, last_error)
+      WHERE public_id = :publicId AND state = 'queued'`,
+    { publicId, reason: reason.slice(0, 500) },
+    tx,
+  );
+}
+
+/** A failed mail is to be tried again. */
+export async function requeueMail(tx: Tx, publicId: string): Promise<void> {
+  await execute(
+    `UPDATE mails SET state = 'queued', last_error = '', next_try_at = NOW(3) WHERE public_id = :publicId AND state = 'failed'`,
+    { publicId },
+    tx,
+  );
+}

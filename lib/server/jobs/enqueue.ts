@@ -1,9 +1,10 @@
 import 'server-only';
+import type { JobKind } from '@/lib/contracts/job-kinds';
 import { insertJob } from '@/lib/server/data/jobs';
 import type { Tx } from '@/lib/server/data/database';
 import { newPublicId } from '@/lib/server/data/public-id';
 import { actorOf, type Caller } from '@/lib/server/policy/caller';
-import { jobKinds, type JobKind, type JobPayload } from './kinds';
+import { jobKinds, type JobPayload } from './kinds';
 import { wakeRunner } from './wake';
 
 export interface NewJob<K extends JobKind> {

@@ -1,13 +1,12 @@
 import 'server-only';
 import { z } from 'zod';
 import { PublicId } from '@/lib/contracts/common';
+import type { JobKind } from '@/lib/contracts/job-kinds';
 
 /** Long jobs share WORKER_CONCURRENCY places; short ones have places of their own, so that mail never waits behind a table. */
 export type Lane = 'long' | 'short';
 
 interface Kind<Payload extends z.ZodType = z.ZodType, Result extends z.ZodType = z.ZodType> {
-  /** What the job does, as people read it. */
-  readonly title: string;
   readonly payload: Payload;
   readonly result: Result;
   readonly lane: Lane;
@@ -23,7 +22,6 @@ const kind = <P extends z.ZodType, R extends z.ZodType>(definition: Kind<P, R>):
 /** The contract of every kind of job: what goes in, what comes out, how long and how often. */
 export const jobKinds = {
   'check-measurements': kind({
-    title: 'Check measurements',
     payload: z.object({ set: PublicId }),
     result: z.object({
       set: PublicId,
@@ -38,7 +36,6 @@ export const jobKinds = {
     longestWait_s: 300,
   }),
   'send-mail': kind({
-    title: 'Send mail',
     payload: z.object({ mail: PublicId }),
     result: z.object({ messageId: z.string() }),
     lane: 'short',
@@ -48,7 +45,6 @@ export const jobKinds = {
     longestWait_s: 1800,
   }),
   tidy: kind({
-    title: 'Remove what has expired',
     payload: z.object({}),
     result: z.object({
       sessions: z.number().int(),
@@ -61,11 +57,7 @@ export const jobKinds = {
     lease_s: 60,
     longestWait_s: 600,
   }),
-} as const;
+} as const satisfies Record<JobKind, Kind>;
 
-export type JobKind = keyof typeof jobKinds;
 export type JobPayload<K extends JobKind> = z.output<(typeof jobKinds)[K]['payload']>;
 export type JobResult<K extends JobKind> = z.output<(typeof jobKinds)[K]['result']>;
-
-export const jobKindNames = Object.keys(jobKinds) as readonly JobKind[];
-export const isJobKind = (name: string): name is JobKind => name in jobKinds;

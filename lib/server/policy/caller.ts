@@ -27,6 +27,8 @@ export interface JobCaller {
   /** The person whose act queued it, for the audit trail. */
   readonly personId: number | null;
   readonly requestId: string;
+  /** Which hold of the job this is: an act that must not happen twice asks `demandLease` with it. */
+  readonly lease?: { readonly owner: string; readonly attempt: number };
 }
 
 /** Who stands at the door: nobody yet. Only what leads to sign-in takes a visitor instead of a caller. */

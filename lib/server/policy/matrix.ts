@@ -61,6 +61,7 @@ const rules = {
   'audit.see': any(manager, owner, investigator),
   'job.see': any(manager, owner, investigator),
   'job.cancel': any(manager, owner),
+  'job.retry': manager,
   'account.change': anybody,
   'token.make': anybody,
   'token.revoke': any(manager, owner),

@@ -32,3 +32,20 @@ export function nightScope(caller: Caller): Scope {
   if (caller.kind === 'person' && caller.roles.has('observer')) return everything;
   return dataScope(caller);
 }
+
+/** Which jobs a caller may see: the matrix's `job.see`, as a value for lists. */
+export interface JobScope {
+  readonly all: boolean;
+  readonly ownerId: number;
+  readonly programmeIds: readonly number[];
+}
+
+export function jobScope(caller: Caller): JobScope {
+  // No person has the id 0.
+  if (caller.kind === 'job') return { all: true, ownerId: 0, programmeIds: [] };
+  return {
+    all: caller.roles.has('manager'),
+    ownerId: caller.personId,
+    programmeIds: [...caller.programmes.keys()],
+  };
+}

@@ -1,0 +1,38 @@
+import 'server-only';
+import { hasEnded, JobError, type Job } from '@/lib/contracts/api/job';
+import { isJobKind, jobTitles } from '@/lib/contracts/job-kinds';
+import type { JobRow } from '@/lib/server/data/jobs';
+import { jobSubject } from '@/lib/server/data/visible-job';
+import type { Caller } from '@/lib/server/policy/caller';
+import { may } from '@/lib/server/policy/matrix';
+
+const utc = (instant: Date): string => instant.toISOString();
+const utcOrNull = (instant: Date | null): string | null => instant && instant.toISOString();
+
+/** A job as this caller sees it. */
+export function shownJob(caller: Caller, row: JobRow): Job {
+  const error = JobError.safeParse(row.error);
+  return {
+    id: row.publicId,
+    kind: row.kind,
+    title: isJobKind(row.kind) ? jobTitles[row.kind] : row.kind,
+    state: row.state,
+    progress: row.progress,
+    message: row.message,
+    ...(row.result === null ? {} : { result: row.result }),
+    ...(error.success ? { error: error.data } : {}),
+    tries: row.tries,
+    max_tries: row.maxTries,
+    next_try_at: row.state === 'queued' ? utc(row.runAfter) : null,
+    cancel_requested: Number(row.isCancelRequested) === 1,
+    may_cancel: !hasEnded(row.state) && may(caller, 'job.cancel', jobSubject(row)),
+    may_retry: row.state === 'failed' && may(caller, 'job.retry', jobSubject(row)),
+    created_by: row.createdBy,
+    night: row.nightPublicId,
+    night_date: row.nightDate,
+    telescope: row.telescope,
+    created_at: utc(row.createdAt),
+    started_at: utcOrNull(row.startedAt),
+    finished_at: utcOrNull(row.finishedAt),
+  };
+}

@@ -6,6 +6,7 @@ import { Person } from './person';
 /** Observing time lost, and to what. */
 export class TimeLoss extends Model<InferAttributes<TimeLoss>, InferCreationAttributes<TimeLoss>> {
   declare id: CreationOptional<number>;
+  declare publicId: string;
   declare nightId: number;
   declare cause: string;
   declare minutes: number;
@@ -22,6 +23,7 @@ export class TimeLoss extends Model<InferAttributes<TimeLoss>, InferCreationAttr
     TimeLoss.init(
       {
         id: { type: DataTypes.INTEGER.UNSIGNED, primaryKey: true, autoIncrement: true, allowNull: false },
+        publicId: { type: DataTypes.CHAR(12), allowNull: false },
         nightId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         cause: { type: DataTypes.STRING(16), allowNull: false },
         minutes: { type: DataTypes.SMALLINT.UNSIGNED, allowNull: false },

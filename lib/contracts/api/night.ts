@@ -40,7 +40,6 @@ export const Night = z
     version: z.number().int().meta({ description: 'Rises with every change of the night itself' }),
     frames: z.number().int().meta({ description: 'Number of frames that you may see' }),
     conditions: z.number().int(),
-    measurement_sets: z.number().int().meta({ description: 'Number of measurement sets that you may see' }),
     minutes_lost: z.number().int(),
   })
   .meta({ id: 'Night', description: 'One telescope, one local evening date' });

@@ -88,6 +88,36 @@ export function frameFaults(frame: Told): readonly (readonly [keyof Told, string
   return found;
 }
 
+/** What a frame must fit into. */
+export interface FrameNight {
+  readonly starts_at: string;
+  readonly ends_at: string;
+  readonly telescope: string;
+  readonly bands: readonly Band[];
+}
+
+/** What is wrong with a frame in its night: [field, what is wrong]. */
+export function frameFaultsInNight(
+  frame: { readonly utc_start: string; readonly band?: Band | null | undefined },
+  night: FrameNight,
+): readonly (readonly ['utc_start' | 'band', string])[] {
+  const found: ['utc_start' | 'band', string][] = [];
+  const start = Date.parse(frame.utc_start);
+  if (start < Date.parse(night.starts_at) || start >= Date.parse(night.ends_at)) {
+    found.push([
+      'utc_start',
+      `lies outside the night, which runs from ${night.starts_at} to ${night.ends_at}`,
+    ]);
+  }
+  if (frame.band && !night.bands.includes(frame.band)) {
+    found.push([
+      'band',
+      `${night.telescope} has no filter for it: it has ${night.bands.join(', ') || 'none'}`,
+    ]);
+  }
+  return found;
+}
+
 export const FrameInput = z
   .strictObject(fields)
   .superRefine((frame, context) => {

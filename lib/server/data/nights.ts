@@ -57,12 +57,20 @@ async function withObservers(rows: readonly Stored[], tx: Tx | null): Promise<re
     { nights: rows.map(({ id }) => id) },
     tx,
   );
-  const byNight = Map.groupBy(observers, ({ nightId }) => nightId);
-  return rows.map((row) => ({ ...row, observers: byNight.get(row.id) ?? [] }));
+  return rows.map((row) => ({
+    ...row,
+    observers: observers
+      .filter(({ nightId }) => nightId === row.id)
+      .map(({ personId, publicId, name }) => ({ personId, publicId, name })),
+  }));
 }
 
 /** A night by its public id, if the scope holds it. */
-export async function findNight(scope: Scope, publicId: string, tx: Tx | null = null): Promise<NightRow | null> {
+export async function findNight(
+  scope: Scope,
+  publicId: string,
+  tx: Tx | null = null,
+): Promise<NightRow | null> {
   const [nights, frames] = [visibleNights(scope), visibleFrames(scope)];
   const row = await selectOne<Stored>(
     `SELECT ${columns(frames.sql)} FROM ${tables} WHERE n.public_id = :publicId AND ${nights.sql}`,

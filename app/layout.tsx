@@ -7,6 +7,10 @@ import '@fontsource/ibm-plex-sans/400.css';
 import '@fontsource/ibm-plex-sans/500.css';
 import '@fontsource/ibm-plex-sans/600.css';
 import { lightCookie, lightOf } from '@/lib/contracts/light';
+import { currentCaller } from '@/lib/server/identity/current-caller';
+import { shellState } from '@/lib/server/reads/shell';
+import { PersonMenu } from './_components/shell/person-menu';
+import { placesFor } from './_components/shell/places';
 import { Shell } from './_components/shell/shell';
 import './globals.css';
 
@@ -42,11 +46,14 @@ export async function generateViewport(): Promise<Viewport> {
 }
 
 export default async function RootLayout({ children }: { readonly children: ReactNode }) {
-  const [light, now] = await Promise.all([chosenLight(), presentTime()]);
+  const [light, now, caller] = await Promise.all([chosenLight(), presentTime(), currentCaller()]);
+  const { site, roles, isDemo } = await shellState(caller);
+  const person = caller && { name: caller.name, email: caller.email, roles, menu: <PersonMenu /> };
+  const places = caller ? placesFor([...caller.roles], isDemo) : [];
   return (
     <html lang="en-GB" data-light={light} suppressHydrationWarning>
       <body>
-        <Shell light={light} places={[]} person={null} site={null} serverNow={now}>
+        <Shell light={light} places={places} person={person} site={site} serverNow={now}>
           {children}
         </Shell>
       </body>

@@ -2,7 +2,7 @@
 
 import { useActionState, useEffect, useState, type FormEvent } from 'react';
 import { Light, lightCookie, lightCookieAge_s, lightNames, lights } from '@/lib/contracts/light';
-import { chooseLight } from './actions';
+import { chooseLight, rememberLight } from './actions';
 
 /** Sets the light of the page as it stands, and remembers it. */
 function apply(light: Light): void {
@@ -29,7 +29,13 @@ function usePrintInDay(light: Light): void {
   }, [light]);
 }
 
-export function LightSwitch({ initial }: { readonly initial: Light }) {
+interface LightSwitchProps {
+  readonly initial: Light;
+  /** Their light is remembered with the account too. */
+  readonly isSignedIn: boolean;
+}
+
+export function LightSwitch({ initial, isSignedIn }: LightSwitchProps) {
   const [light, setLight] = useState(initial);
   const [, send] = useActionState(chooseLight, null);
   usePrintInDay(light);
@@ -40,6 +46,8 @@ export function LightSwitch({ initial }: { readonly initial: Light }) {
     event.preventDefault();
     apply(chosen.data);
     setLight(chosen.data);
+    // Over a broken link the light still holds in this browser, by its cookie; that is all there is to say.
+    if (isSignedIn) rememberLight(chosen.data).catch(() => undefined);
   };
   return (
     <form action={send} onSubmit={choose} role="group" aria-label="Light" className="no-print flex">

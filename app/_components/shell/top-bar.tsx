@@ -90,7 +90,7 @@ export function TopBar({ light, places, person, site, serverNow }: TopBarProps) 
       )}
       <div className="flex flex-wrap items-center gap-x-5 gap-y-1 max-lg:w-full lg:ml-auto">
         <Clocks site={site} serverNow={serverNow} />
-        <LightSwitch initial={light} />
+        <LightSwitch initial={light} isSignedIn={person !== null} />
         {person === null ? null : (
           <div className="max-lg:ml-auto">
             <PersonMenu person={person} />

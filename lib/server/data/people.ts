@@ -101,3 +101,14 @@ export async function lockManagers(tx: Tx): Promise<readonly number[]> {
   );
   return rows.map(({ id }) => id);
 }
+
+/** Whether there is a manager who can act: enabled and with a password. */
+export async function managerExists(tx: Tx): Promise<boolean> {
+  const row = await selectOne(
+    `SELECT 1 AS found FROM person_roles r JOIN people p ON p.id = r.person_id
+      WHERE r.role = 'manager' AND p.disabled_at IS NULL AND p.password_hash IS NOT NULL LIMIT 1`,
+    {},
+    tx,
+  );
+  return row !== null;
+}

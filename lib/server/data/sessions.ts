@@ -66,3 +66,13 @@ export async function deleteSessionsOfPerson(
 export async function deleteExpiredSessions(tx: Tx | null): Promise<number> {
   return execute('DELETE FROM sessions WHERE expires_at <= NOW(3)', {}, tx);
 }
+
+/** Ends a session that a list named by the first 16 digits of its hash; false when there is none. */
+export async function deleteListedSession(personId: number, listedAs: string, tx: Tx): Promise<boolean> {
+  const ended = await execute(
+    'DELETE FROM sessions WHERE person_id = :personId AND LEFT(id, 16) = :listedAs',
+    { personId, listedAs },
+    tx,
+  );
+  return ended > 0;
+}

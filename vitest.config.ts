@@ -93,6 +93,7 @@ export default defineConfig({
           name: 'setup',
           environment: 'node',
           include: ['tests/setup/**/*.test.ts'],
+          setupFiles: ['tests/support/setup-file.ts'],
           maxWorkers: 1,
           testTimeout: 240_000,
           hookTimeout: 240_000,

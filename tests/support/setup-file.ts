@@ -1,0 +1,4 @@
+import { afterAll } from 'vitest';
+import { removeTemporaryFolders } from './start-script';
+
+afterAll(removeTemporaryFolders);

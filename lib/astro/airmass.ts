@@ -103,7 +103,7 @@ export function airmassPickering2002(apparentZenithDistance_deg: number): number
  * @param apparentZenithDistance_deg - through the air [deg], 0 ≤ z < 90
  * @returns airmass [1]
  * @throws {RangeError} at or below the horizon, or not finite
- * @accuracy 0.2 % at z = 60°, 2 % at 80°, useless near the horizon
+ * @accuracy 0.4 % too large at z = 60°, 4 % at 80°, useless near the horizon
  * @source plane-parallel atmosphere */
 export function airmassSecZ(apparentZenithDistance_deg: number): number {
   if (requireAboveHorizon(apparentZenithDistance_deg) >= 90) {

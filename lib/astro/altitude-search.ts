@@ -47,9 +47,10 @@ export function turningPoints(altitudeAt: AltitudeAt, window: TimeWindow): reado
   for (let i = 1; i + 1 < samples.length; i += 1) {
     const [before, here, after] = samples.slice(i - 1, i + 2);
     if (before === undefined || here === undefined || after === undefined) continue;
-    const rises = here.altitude >= before.altitude;
-    if (rises === after.altitude > here.altitude) continue;
-    points.push(closeInOnTurn(altitudeAt, { start: before.utc, end: after.utc }, rises ? 1 : -1));
+    const isHighest = here.altitude > before.altitude && here.altitude >= after.altitude;
+    const isLowest = here.altitude < before.altitude && here.altitude <= after.altitude;
+    if (!isHighest && !isLowest) continue;
+    points.push(closeInOnTurn(altitudeAt, { start: before.utc, end: after.utc }, isHighest ? 1 : -1));
   }
   return [...points, ...samples.slice(-1)];
 }

@@ -1,6 +1,6 @@
 import { degPerHour, degPerRad, normaliseRightAscension, radPerDeg, wrapHourAngle } from './angles';
 import { apparentDirection, ofDate } from './apparent-place';
-import { requireDeclination } from './require-range';
+import { requireDeclination, requireLatitude } from './require-range';
 import type { SkyMoment } from './sky-moment';
 import { type Vector3, placeOf } from './vector';
 
@@ -59,7 +59,7 @@ export function horizontalFromHourAngle(
   const h = wrapHourAngle(hourAngle_hours);
   const h_rad = h * degPerHour * radPerDeg;
   const dec_rad = requireDeclination(dec) * radPerDeg;
-  const lat_rad = latitude * radPerDeg;
+  const lat_rad = requireLatitude(latitude) * radPerDeg;
   const [sinLat, cosLat] = [Math.sin(lat_rad), Math.cos(lat_rad)];
   const [sinDec, cosDec] = [Math.sin(dec_rad), Math.cos(dec_rad)];
   const [sinH, cosH] = [Math.sin(h_rad), Math.cos(h_rad)];

@@ -33,6 +33,16 @@ export function requireDeclination(dec: number): number {
   return requireRange(dec, { name: 'Declination', unit: 'degrees', min: -90, max: 90 });
 }
 
+/** Latitudes end at the poles too.
+ * @param latitude - geodetic latitude [deg]
+ * @returns the value unchanged [deg]
+ * @throws {RangeError} when not finite or beyond ±90
+ * @accuracy exact
+ * @source definition */
+export function requireLatitude(latitude: number): number {
+  return requireRange(latitude, { name: 'Latitude', unit: 'degrees', min: -90, max: 90 });
+}
+
 /** The years in which the ephemerides and the precession model behind this folder hold their accuracy.
  * @param utc - instant [ms since 1970-01-01T00:00:00Z]
  * @returns the value unchanged [ms]

@@ -1,4 +1,4 @@
-import { requireRange } from './require-range';
+import { requireLatitude, requireRange } from './require-range';
 
 /** Where a telescope stands, on the WGS84 ellipsoid. */
 export interface Site {
@@ -18,7 +18,7 @@ export interface Site {
  * @source our own limits: both longitude conventions in use are accepted */
 export function requireSite(site: Site): Site {
   requireRange(site.longitude, { name: 'Longitude', unit: 'degrees east', min: -180, max: 360 });
-  requireRange(site.latitude, { name: 'Latitude', unit: 'degrees', min: -90, max: 90 });
+  requireLatitude(site.latitude);
   requireRange(site.elevation, { name: 'Elevation', unit: 'metres', min: -500, max: 10_000 });
   return site;
 }

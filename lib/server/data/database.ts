@@ -2,6 +2,8 @@ import 'server-only';
 import { QueryTypes, Transaction } from 'sequelize';
 import { database } from '@/db/connection';
 
+export { closeDatabase } from '@/db/connection';
+
 export type Tx = Transaction;
 export type SqlValue = string | number | boolean | Date | Buffer | null | readonly (string | number)[];
 export type SqlValues = Readonly<Record<string, SqlValue>>;

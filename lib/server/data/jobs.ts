@@ -132,3 +132,14 @@ export function countJobs(scope: JobScope): Promise<readonly { state: JobState; 
     },
   );
 }
+
+/** Whether a job of the kind was made in the last `minutes`, or still waits or runs. */
+export async function hasRecentJob(tx: Tx, kind: string, minutes: number): Promise<boolean> {
+  const row = await selectOne(
+    `SELECT id FROM jobs
+      WHERE kind = :kind AND (state IN ('queued','running') OR created_at > NOW(3) - INTERVAL :minutes MINUTE) LIMIT 1`,
+    { kind, minutes },
+    tx,
+  );
+  return row !== null;
+}

@@ -56,9 +56,13 @@ export function lockMail(tx: Tx, publicId: string): Promise<DueMail | null> {
   );
 }
 
+/** The mail is with the SMTP server. An invitation's link works without a password, so it is not kept any longer. */
 export async function markSent(tx: Tx, publicId: string): Promise<void> {
   await execute(
-    `UPDATE mails SET state = 'sent', sent_at = NOW(3), tries = tries + 1, last_error = '' WHERE public_id = :publicId`,
+    `UPDATE mails
+        SET state = 'sent', sent_at = NOW(3), tries = tries + 1, last_error = '',
+            text = IF(kind = 'invitation', '', text), html = IF(kind = 'invitation', '', html)
+      WHERE public_id = :publicId`,
     { publicId },
     tx,
   );

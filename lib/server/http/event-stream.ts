@@ -1,5 +1,6 @@
 import 'server-only';
 import { logger } from '@/lib/server/log/logger';
+import { beforeStop } from '@/lib/server/settings/shutdown';
 
 export interface ServerEvent {
   readonly event: string;
@@ -8,14 +9,6 @@ export interface ServerEvent {
 
 /** Silence longer than this makes proxies hang up. */
 const heartbeat_ms = 15_000;
-
-/** Streams that are open in this process; on globalThis, because a bundler may hold this module twice. */
-const holder = globalThis as typeof globalThis & { evenfallStreams?: Set<() => void> };
-
-/** Ends every stream: an open one would keep the server from stopping. */
-export function closeEventStreams(): void {
-  holder.evenfallStreams?.forEach((close) => close());
-}
 
 /**
  * Server-sent events from an iteration, with a heartbeat while it is silent. The signal that the iteration gets fires
@@ -30,7 +23,6 @@ export async function eventStream(
   // Refusals come before the first byte, as problem details.
   const events = await start(ending.signal);
   const encoder = new TextEncoder();
-  const streams = (holder.evenfallStreams ??= new Set());
   const end = (): void => ending.abort();
   let isOpen = true;
   const body = new ReadableStream<Uint8Array>({
@@ -39,14 +31,15 @@ export async function eventStream(
         if (isOpen) controller.enqueue(encoder.encode(text));
       };
       const timer = setInterval(() => send(': still here\n\n'), heartbeat_ms);
-      streams.add(end);
+      // An open stream would keep the server from stopping.
+      const forget = beforeStop(end);
       request.signal.addEventListener('abort', end, { once: true });
       send('retry: 2000\n\n');
       void pump(events, ending.signal, send)
         .catch((error: unknown) => logger().error({ err: error }, 'an event stream broke'))
         .finally(() => {
           clearInterval(timer);
-          streams.delete(end);
+          forget();
           request.signal.removeEventListener('abort', end);
           if (isOpen) controller.close();
           isOpen = false;

@@ -50,7 +50,7 @@ export const jobKinds = {
       sessions: z.number().int(),
       idempotencyKeys: z.number().int(),
       jobs: z.number().int(),
-      files: z.number().int(),
+      signInFailures: z.number().int(),
     }),
     lane: 'short',
     maxTries: 3,

@@ -11,7 +11,7 @@ import {
   RightAscension,
   Utc,
 } from '@/lib/contracts/common';
-import { NightParams } from './night';
+import { NightParams, outsideNight } from './night';
 import { operation } from './operation';
 
 /** Most frames that one call takes. */
@@ -102,13 +102,8 @@ export function frameFaultsInNight(
   night: FrameNight,
 ): readonly (readonly ['utc_start' | 'band', string])[] {
   const found: ['utc_start' | 'band', string][] = [];
-  const start = Date.parse(frame.utc_start);
-  if (start < Date.parse(night.starts_at) || start >= Date.parse(night.ends_at)) {
-    found.push([
-      'utc_start',
-      `lies outside the night, which runs from ${night.starts_at} to ${night.ends_at}`,
-    ]);
-  }
+  const outside = outsideNight(frame.utc_start, night);
+  if (outside !== null) found.push(['utc_start', outside]);
   if (frame.band && !night.bands.includes(frame.band)) {
     found.push([
       'band',

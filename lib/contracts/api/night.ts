@@ -45,6 +45,16 @@ export const Night = z
   .meta({ id: 'Night', description: 'One telescope, one local evening date' });
 export type Night = z.infer<typeof Night>;
 
+/** What is wrong with an instant that should lie in the night; null when it does. */
+export function outsideNight(
+  utc: string,
+  night: { readonly starts_at: string; readonly ends_at: string },
+): string | null {
+  const at = Date.parse(utc);
+  if (at >= Date.parse(night.starts_at) && at < Date.parse(night.ends_at)) return null;
+  return `lies outside the night, which runs from ${night.starts_at} to ${night.ends_at}`;
+}
+
 export const NightQuery = Page.extend({
   telescope: TelescopeCode.optional(),
   from: CalendarDate.optional().meta({ description: 'First date' }),

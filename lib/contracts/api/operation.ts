@@ -41,9 +41,15 @@ type Parsed<T> = T extends z.ZodType ? z.output<T> : undefined;
 export type ParamsOf<O extends Operation> = Parsed<O['params']>;
 export type QueryOf<O extends Operation> = Parsed<O['query']>;
 export type BodyOf<O extends Operation> = Parsed<O['body']>;
+/** The same value as nobody may change it: what acts and reads return. */
+type Frozen<T> = T extends readonly (infer Item)[]
+  ? readonly Frozen<Item>[]
+  : T extends object
+    ? { readonly [Key in keyof T]: Frozen<T[Key]> }
+    : T;
 /** What a handler returns: the input side of the answer's schema, which strips what it does not name. */
 export type AnswerOf<O extends Operation> = O['stream'] extends readonly string[]
   ? Response
   : O['answer'] extends z.ZodType
-    ? z.input<O['answer']>
+    ? Frozen<z.input<O['answer']>>
     : undefined;

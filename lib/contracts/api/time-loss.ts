@@ -56,8 +56,7 @@ export const addTimeLoss = operation({
   path: '/nights/{id}/time-losses',
   tag,
   summary: 'Record time lost',
-  description:
-    'All of a night’s losses together cannot exceed its 24 hours. Possible in a closed night as well.',
+  description: 'All losses together cannot be longer than the night. Possible in a closed night as well.',
   params: NightParams,
   body: TimeLossInput,
   answer: TimeLoss,

@@ -4,7 +4,7 @@ import { recordAudit } from '@/lib/server/data/audit';
 import { inTransaction } from '@/lib/server/data/database';
 import { demandNightVersion, lockNight } from '@/lib/server/data/night-state';
 import { observersByPublicId, setObservers, touchNight } from '@/lib/server/data/night-writes';
-import { requireNight, toNight } from '@/lib/server/data/nights';
+import { requireNight, subjectOf, toNight } from '@/lib/server/data/nights';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { nightScope } from '@/lib/server/policy/scope';
@@ -13,7 +13,7 @@ import { nightScope } from '@/lib/server/policy/scope';
 export async function changeNight(caller: PersonCaller, id: string, input: ChangeNight): Promise<Night> {
   const scope = nightScope(caller);
   const seen = await requireNight(scope, id);
-  demand(caller, 'night.log', { observerIds: seen.observers.map(({ personId }) => personId) });
+  demand(caller, 'night.log', subjectOf(seen));
   return inTransaction(async (tx) => {
     const locked = await lockNight(tx, seen);
     await demandNightVersion(tx, seen, locked, input.version);

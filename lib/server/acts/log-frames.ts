@@ -14,7 +14,7 @@ import {
 import { framesByNumber, toFrame } from '@/lib/server/data/frames';
 import { instrumentOf, type InstrumentRow } from '@/lib/server/data/instruments';
 import { lockOpenNight } from '@/lib/server/data/night-state';
-import { requireNight, type NightRow } from '@/lib/server/data/nights';
+import { boundsOf, requireNight, subjectOf, type NightRow } from '@/lib/server/data/nights';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { nightScope } from '@/lib/server/policy/scope';
@@ -33,7 +33,7 @@ export async function logFrames(
   logging: Logging,
 ): Promise<readonly Frame[]> {
   const night = await requireNight(nightScope(caller), id);
-  demand(caller, 'night.log', { observerIds: night.observers.map(({ personId }) => personId) });
+  demand(caller, 'night.log', subjectOf(night));
   const instrument = await instrumentOf(night);
   const completed = await completeFrames(inputs);
   refuse(
@@ -68,8 +68,7 @@ export async function logFrames(
 
 function faultsOf(input: FrameInput, night: NightRow, instrument: InstrumentRow): readonly Issue[] {
   const bounds = {
-    starts_at: night.startsAt.toISOString(),
-    ends_at: night.endsAt.toISOString(),
+    ...boundsOf(night),
     telescope: instrument.name,
     bands: instrument.filters.map(({ band }) => band),
   };

@@ -3,7 +3,7 @@ import type { Night, ReopenNight } from '@/lib/contracts/api/night';
 import { recordAudit } from '@/lib/server/data/audit';
 import { inTransaction } from '@/lib/server/data/database';
 import { moveNight } from '@/lib/server/data/night-state';
-import { requireNight, toNight } from '@/lib/server/data/nights';
+import { requireNight, subjectOf, toNight } from '@/lib/server/data/nights';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { nightScope } from '@/lib/server/policy/scope';
@@ -12,7 +12,7 @@ import { nightScope } from '@/lib/server/policy/scope';
 export async function reopenNight(caller: PersonCaller, id: string, input: ReopenNight): Promise<Night> {
   const scope = nightScope(caller);
   const night = await requireNight(scope, id);
-  demand(caller, 'night.reopen', { observerIds: night.observers.map(({ personId }) => personId) });
+  demand(caller, 'night.reopen', subjectOf(night));
   return inTransaction(async (tx) => {
     const before = await moveNight(tx, night, {
       from: ['closed', 'calibrated'],

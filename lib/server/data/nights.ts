@@ -124,14 +124,24 @@ export async function listNightRows(scope: Scope, query: NightQuery): Promise<Ni
   return { rows: await withObservers(page.rows, null), next: page.next };
 }
 
+/** The night's bounds as the interface writes them. */
+export const boundsOf = (row: NightRow): { readonly starts_at: string; readonly ends_at: string } => ({
+  starts_at: row.startsAt.toISOString(),
+  ends_at: row.endsAt.toISOString(),
+});
+
+/** What the rules of access must know of the night. */
+export const subjectOf = (row: NightRow): { readonly observerIds: readonly number[] } => ({
+  observerIds: row.observers.map(({ personId }) => personId),
+});
+
 /** A night as the interface gives it. */
 export const toNight = (row: NightRow): Night => ({
   id: row.publicId,
   telescope: row.telescope,
   date: row.date,
   state: row.state,
-  starts_at: row.startsAt.toISOString(),
-  ends_at: row.endsAt.toISOString(),
+  ...boundsOf(row),
   summary: row.summary,
   observers: row.observers.map(({ publicId, name }) => ({ id: publicId, name })),
   opened_by: row.openedBy,

@@ -1,0 +1,88 @@
+import 'server-only';
+import type { Condition } from '@/lib/contracts/api/condition';
+import type { Frame } from '@/lib/contracts/api/frame';
+import type { Night } from '@/lib/contracts/api/night';
+import type { Remark } from '@/lib/contracts/api/remark';
+import type { TimeLoss } from '@/lib/contracts/api/time-loss';
+import { allConditionRows, toCondition } from '@/lib/server/data/conditions';
+import { allFrameRows, toFrame } from '@/lib/server/data/frames';
+import { instrumentOf, type FilterRow } from '@/lib/server/data/instruments';
+import { requireNight, subjectOf, toNight } from '@/lib/server/data/nights';
+import { allRemarkRows, toRemark } from '@/lib/server/data/remarks';
+import { allTimeLossRows, toTimeLoss } from '@/lib/server/data/time-losses';
+import type { Caller } from '@/lib/server/policy/caller';
+import { may } from '@/lib/server/policy/matrix';
+import { nightScope } from '@/lib/server/policy/scope';
+
+export interface NightPage {
+  readonly night: Night;
+  readonly telescope: {
+    readonly code: string;
+    readonly name: string;
+    /** Lowest pointing. [deg] */
+    readonly minAltitude: number;
+    readonly filters: readonly FilterRow[];
+  };
+  readonly site: {
+    readonly name: string;
+    /** East positive. [deg] */
+    readonly longitude: number;
+    /** [deg] */
+    readonly latitude: number;
+    /** [m] */
+    readonly elevation: number;
+    readonly timezone: string;
+  };
+  /** By mid-exposure. */
+  readonly frames: readonly Frame[];
+  readonly conditions: readonly Condition[];
+  readonly remarks: readonly Remark[];
+  readonly timeLosses: readonly TimeLoss[];
+  readonly may: {
+    readonly log: boolean;
+    readonly close: boolean;
+    readonly reopen: boolean;
+    readonly upload: boolean;
+  };
+}
+
+/** All that the page of a night shows: seven statements, however much was logged. */
+export async function nightPage(caller: Caller, id: string): Promise<NightPage> {
+  const scope = nightScope(caller);
+  const row = await requireNight(scope, id);
+  const [instrument, frames, conditions, remarks, losses] = await Promise.all([
+    instrumentOf(row),
+    allFrameRows(scope, row.id),
+    allConditionRows(row.id),
+    allRemarkRows(row.id),
+    allTimeLossRows(row.id),
+  ]);
+  const programmeIds = frames.flatMap(({ programmeId }) => programmeId ?? []);
+  const subject = { ...subjectOf(row), programmeIds: [...new Set(programmeIds)] };
+  return {
+    night: toNight(row),
+    telescope: {
+      code: instrument.code,
+      name: instrument.name,
+      minAltitude: instrument.minAltitude,
+      filters: instrument.filters,
+    },
+    site: {
+      name: instrument.siteName,
+      longitude: instrument.longitude,
+      latitude: instrument.latitude,
+      elevation: instrument.elevation,
+      timezone: instrument.timezone,
+    },
+    frames: frames.map(toFrame),
+    conditions: conditions.map(toCondition),
+    remarks: remarks.map(toRemark),
+    timeLosses: losses.map(toTimeLoss),
+    may: {
+      log: row.state === 'open' && may(caller, 'night.log', subject),
+      close: row.state === 'open' && may(caller, 'night.close', subject),
+      reopen: row.state !== 'open' && may(caller, 'night.reopen', subject),
+      upload: may(caller, 'measurements.upload', subject),
+    },
+  };
+}

@@ -48,7 +48,7 @@ const allow = {
   numerics: ['numerics', 'fault'],
   astro: ['astro', 'numerics', 'fault'],
   photometry: ['photometry', 'astro', 'numerics', 'fault'],
-  format: ['format', 'contract', 'fault'],
+  format: ['format', 'contract', 'fault', 'astro'],
   policy: ['policy', 'contract', 'fault'],
   // Not other acts: an act that needs another is two acts, or a function of lib/server/data that both use.
   // Of identity they use secrets and sessions; who asks they are told.

@@ -73,7 +73,16 @@ export function measurementTable(mapping: ColumnMapping, issues: IssueList, sink
   let usable = false;
   let rows = 0;
   const row = emptyRow();
+  let current: readonly string[] = [];
 
+  // One closure for all rows: a million of them would keep the collector busy.
+  const text = (column: MeasurementColumn): string => {
+    const position = positions.get(column);
+    return position === undefined ? '' : (current[position]?.trim() ?? '');
+  };
+  const reportHere = (column: MeasurementColumn, issue: IssueText): void => {
+    report(row.line, column, text(column), issue);
+  };
   const headerOf = (column: MeasurementColumn): string => headers?.[positions.get(column) ?? -1]?.trim() ?? column;
   function report(line: number, column: MeasurementColumn, value: string, text: IssueText): void {
     issues.add({ path: column, line, column: headerOf(column), value: excerpt(value), ...text });
@@ -98,13 +107,8 @@ export function measurementTable(mapping: ColumnMapping, issues: IssueList, sink
     const before = issues.total();
     row.rowNo = rows;
     row.line = line;
-    const text = (column: MeasurementColumn): string => {
-      const position = positions.get(column);
-      return position === undefined ? '' : (fields[position]?.trim() ?? '');
-    };
-    fillRow(row, text, (column, issue) => {
-      report(line, column, text(column), issue);
-    });
+    current = fields;
+    fillRow(row, text, reportHere);
     if (issues.total() === before) sink.row(row);
   }
 

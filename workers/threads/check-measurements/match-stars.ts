@@ -1,0 +1,154 @@
+import { directionOf, placeOf } from '@/lib/astro/vector';
+import { standardMatcher, type StandardMatch } from '@/lib/photometry/match-standards';
+import type { RegisteredFrame } from './frame-register';
+import type { CheckOrder, LoadPlan, NewFrame } from './messages';
+import { numberField, rowFile, textField } from './row-files';
+import type { StarRegister } from './star-register';
+
+type Matched = Pick<LoadPlan, 'stars' | 'matchedRows' | 'newFrames' | 'usedFrames'>;
+
+/** Matches every star of a table, writes the file of its stars and settles what is known of the frames only then. */
+export function matchStars(order: CheckOrder, stars: StarRegister, frames: readonly RegisteredFrame[]): Matched {
+  const matches = order.kind === 'target' ? [] : matchAll(order, stars);
+  const file = rowFile(order.folder, 'stars');
+  for (let star = 0; star < stars.stars(); star += 1) file.write(starLine(order, stars, { star, match: matches[star] }));
+  let matchedRows = 0;
+  matches.forEach((match, star) => {
+    if (match.kind === 'matched') matchedRows += stars.rowsOf(star);
+  });
+  const written = file.close();
+  return {
+    stars: written[0] ?? { file: '', rows: 0 },
+    matchedRows,
+    newFrames: newFrames(order, stars, { frames, matches }),
+    usedFrames: usedFrames(stars, frames),
+  };
+}
+
+function matchAll(order: CheckOrder, stars: StarRegister): StandardMatch[] {
+  const match = standardMatcher(order.standards, {
+    tolerance: order.tolerance,
+    epoch_years: order.night.epoch_years,
+  });
+  const matches: StandardMatch[] = [];
+  for (let star = 0; star < stars.stars(); star += 1) {
+    matches.push(match({ key: stars.key(star), ra: stars.ra(star), dec: stars.dec(star) }));
+  }
+  settleRivals(order, stars, matches);
+  return matches;
+}
+
+/**
+ * Two stars of one frame cannot be one standard: the name counts before the position, then the nearer one; the other is
+ * left unmatched with the reason. Stars of different frames may: a position can scatter by more than the tolerance.
+ */
+function settleRivals(order: CheckOrder, stars: StarRegister, matches: StandardMatch[]): void {
+  const holders = new Map<string, number>();
+  for (let row = 0; row < stars.rows(); row += 1) {
+    const star = stars.starOfRow(row);
+    const match = matches[star];
+    if (match?.kind !== 'matched') continue;
+    const place = `${stars.frameOfRow(row)} ${match.standard}`;
+    const rival = holders.get(place);
+    const other = rival === undefined ? undefined : matches[rival];
+    if (rival === undefined || rival === star || other?.kind !== 'matched') {
+      holders.set(place, star);
+      continue;
+    }
+    const wins = isBetter(match, other);
+    const name = order.standards.names[match.standard];
+    const winner = wins ? match : other;
+    const how = winner.by === 'name' ? 'has its name' : `lies nearer, at ${winner.separation.toFixed(1)}″`;
+    const reason = `On one frame two stars of the table match ${name}; the other ${how}.`;
+    matches[wins ? rival : star] = { kind: 'unmatched', reason };
+    if (wins) holders.set(place, star);
+  }
+}
+
+type Hit = Extract<StandardMatch, { kind: 'matched' }>;
+const isBetter = (one: Hit, other: Hit): boolean =>
+  one.by === other.by ? one.separation < other.separation : one.by === 'name';
+
+/** star_no, name, ra, decl, n_rows, standard_id, matched_by, separation, reason */
+function starLine(
+  order: CheckOrder,
+  stars: StarRegister,
+  { star, match }: { readonly star: number; readonly match: StandardMatch | undefined },
+): string {
+  const hit = match?.kind === 'matched' ? match : null;
+  const reason = match?.kind === 'unmatched' ? match.reason : (hit?.caution ?? '');
+  return [
+    star + 1,
+    textField(stars.name(star)),
+    numberField(stars.ra(star)),
+    numberField(stars.dec(star)),
+    stars.rowsOf(star),
+    hit ? (order.standards.ids[hit.standard] ?? '\\N') : '\\N',
+    hit?.by ?? '\\N',
+    numberField(hit?.separation ?? NaN),
+    textField(reason),
+  ].join('\t');
+}
+
+function usedFrames(stars: StarRegister, frames: readonly RegisteredFrame[]): readonly number[] {
+  const used = new Set<number>();
+  for (let row = 0; row < stars.rows(); row += 1) used.add(stars.frameOfRow(row));
+  return [...used].flatMap((index) => frames[index]?.id ?? []).sort((a, b) => a - b);
+}
+
+interface Seen {
+  readonly sum: { x: number; y: number; z: number };
+  readonly fields: Map<string, number>;
+}
+
+/** The frames that are to be created, with the middle of their stars and the field of their standards. */
+function newFrames(
+  order: CheckOrder,
+  stars: StarRegister,
+  { frames, matches }: { readonly frames: readonly RegisteredFrame[]; readonly matches: readonly StandardMatch[] },
+): readonly NewFrame[] {
+  const first = order.frames.length;
+  if (frames.length === first) return [];
+  const seen = frames.slice(first).map((): Seen => ({ sum: { x: 0, y: 0, z: 0 }, fields: new Map() }));
+  for (let row = 0; row < stars.rows(); row += 1) {
+    const frame = seen[stars.frameOfRow(row) - first];
+    if (frame) look(frame, stars.starOfRow(row));
+  }
+
+  function look(frame: Seen, star: number): void {
+    const match = matches[star];
+    const standard = match?.kind === 'matched' ? match.standard : -1;
+    const hasPlace = !Number.isNaN(stars.ra(star));
+    const ra = hasPlace ? stars.ra(star) : (order.standards.ra[standard] ?? NaN);
+    const dec = hasPlace ? stars.dec(star) : (order.standards.dec[standard] ?? NaN);
+    if (!Number.isNaN(ra)) {
+      const { x, y, z } = directionOf(ra, dec);
+      frame.sum.x += x;
+      frame.sum.y += y;
+      frame.sum.z += z;
+    }
+    const field = order.standards.fields[standard];
+    if (field !== undefined) frame.fields.set(field, (frame.fields.get(field) ?? 0) + 1);
+  }
+
+  return seen.flatMap(({ sum, fields }, index): NewFrame[] => {
+    const frame = frames[first + index];
+    if (!frame?.band) return []; // the register creates no frame without its band
+    const place = Math.hypot(sum.x, sum.y, sum.z) > 0 ? placeOf(sum) : null;
+    const field = [...fields].sort((a, b) => b[1] - a[1])[0]?.[0] ?? null;
+    const usual = order.kind === 'mixed' ? (field === null ? 'target' : 'standard') : order.kind;
+    return [
+      {
+        number: frame.number,
+        file: frame.file,
+        type: frame.type === '' ? usual : frame.type,
+        band: frame.band,
+        utcStart: frame.utcStart,
+        exposure_s: frame.exposure_s,
+        ra: place?.ra ?? null,
+        dec: place?.dec ?? null,
+        field,
+      },
+    ];
+  });
+}

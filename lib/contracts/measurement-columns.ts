@@ -32,7 +32,10 @@ export const MeasurementColumn = z.enum(measurementColumnNames);
 /** Which header of the file stands for which column. Columns that the file names as we do need no entry. */
 export const ColumnMapping = z
   .partialRecord(MeasurementColumn, z.string().trim().min(1).max(120))
-  .meta({ description: 'Column of the measurement table → header in the file', example: { inst_mag: 'MAG_APER' } });
+  .meta({
+    description: 'Column of the measurement table → header in the file',
+    example: { inst_mag: 'MAG_APER' },
+  });
 export type ColumnMapping = z.infer<typeof ColumnMapping>;
 
 /** Headers are compared without case and surrounding blanks. */
@@ -67,17 +70,27 @@ export interface MissingColumns {
 }
 
 /** What a table must have before one row of it can be read. */
-export function missingColumns(present: { has(column: MeasurementColumn): boolean }): readonly MissingColumns[] {
+export function missingColumns(present: {
+  has(column: MeasurementColumn): boolean;
+}): readonly MissingColumns[] {
   const needs: readonly MissingColumns[] = [
     { anyOf: [['frame']], message: 'There is no column that says which frame a row belongs to.' },
-    { anyOf: [['star'], ['ra', 'dec']], message: 'There is no column with the star’s name, nor two with its position.' },
-    { anyOf: [['inst_mag'], ['flux']], message: 'There is no column with the instrumental magnitude or the counts.' },
+    {
+      anyOf: [['star'], ['ra', 'dec']],
+      message: 'There is no column with the star’s name, nor two with its position.',
+    },
+    {
+      anyOf: [['inst_mag'], ['flux']],
+      message: 'There is no column with the instrumental magnitude or the counts.',
+    },
     {
       anyOf: [['inst_err'], ['flux', 'flux_err']],
       message: 'There is no column with the standard error of the magnitude or of the counts.',
     },
   ];
-  return needs.filter(({ anyOf }) => !anyOf.some((columns) => columns.every((column) => present.has(column))));
+  return needs.filter(
+    ({ anyOf }) => !anyOf.some((columns) => columns.every((column) => present.has(column))),
+  );
 }
 
 /** Headers that other programs commonly give to a column, for a first guess that a person confirms. */
@@ -86,8 +99,29 @@ const guesses: Partial<Record<MeasurementColumn, readonly string[]>> = {
   star: ['name', 'object', 'id', 'star_name', 'star_id', 'source'],
   ra: ['ra_deg', 'raj2000', 'ra_j2000', 'alpha_j2000', 'right_ascension', 'alpha'],
   dec: ['dec_deg', 'dej2000', 'decj2000', 'dec_j2000', 'delta_j2000', 'declination', 'delta', 'de'],
-  inst_mag: ['mag', 'mag_inst', 'instmag', 'magnitude', 'mag_aper', 'mag_auto', 'mag_psf', 'm_inst', 'merge_mag'],
-  inst_err: ['err', 'mag_err', 'magerr', 'merr', 'emag', 'e_mag', 'magerr_aper', 'magerr_auto', 'mag_error', 'sigma'],
+  inst_mag: [
+    'mag',
+    'mag_inst',
+    'instmag',
+    'magnitude',
+    'mag_aper',
+    'mag_auto',
+    'mag_psf',
+    'm_inst',
+    'merge_mag',
+  ],
+  inst_err: [
+    'err',
+    'mag_err',
+    'magerr',
+    'merr',
+    'emag',
+    'e_mag',
+    'magerr_aper',
+    'magerr_auto',
+    'mag_error',
+    'sigma',
+  ],
   flux: ['counts', 'flux_aper', 'flux_auto', 'flux_psf', 'net_counts'],
   flux_err: ['fluxerr', 'fluxerr_aper', 'fluxerr_auto', 'counts_err', 'e_flux', 'flux_error'],
   x: ['x_image', 'xcenter', 'xpos', 'x_pix'],

@@ -1,6 +1,6 @@
-import { isAscii, isUtf8 } from 'node:buffer';
 import Papa from 'papaparse';
 import { excerpt } from './issue-list';
+import { utf8Lines, type TextPiece } from './utf8-lines';
 
 /** Something wrong with the text itself, before anything in it is understood. */
 export interface CsvFault {
@@ -39,14 +39,13 @@ const mostQuoteFaults = 200;
  * check of the encoding, which that library leaves to its caller.
  */
 export function csvReader(sink: CsvSink): CsvReader {
-  let pending = Buffer.alloc(0); // bytes after the last line feed
+  const lines = utf8Lines();
   let carry = ''; // text of a row that is not complete
   let line = 1; // where `carry` begins
-  let atStart = true;
   let beforeRows = true;
   let stopped = false;
   let quoteFaults = 0;
-  const wronglyEncoded: number[] = []; // lines, ascending, that no row has claimed yet
+  const wrong = wrongLines(sink);
 
   const stop = (fault: CsvFault): void => {
     stopped = true;
@@ -55,59 +54,33 @@ export function csvReader(sink: CsvSink): CsvReader {
 
   function push(bytes: Uint8Array): void {
     if (stopped) return;
-    const end = bytes.lastIndexOf(10) + 1;
-    if (end === 0) {
-      pending = Buffer.concat([pending, bytes]);
-      if (pending.length > longestRow) stop(tooLong(line));
-      return;
-    }
-    const whole = pending.length === 0 ? bytes.subarray(0, end) : Buffer.concat([pending, bytes.subarray(0, end)]);
-    pending = Buffer.from(bytes.subarray(end));
-    consume(decode(whole), false);
+    const piece = lines.push(bytes);
+    if (piece) consume(piece, false);
+    else if (lines.pending() > longestRow) stop(tooLong(line));
   }
 
   function end(): void {
-    if (stopped) return;
-    consume(decode(pending), true);
+    if (!stopped) consume(lines.end(), true);
   }
 
-  function decode(bytes: Uint8Array): string {
-    const buffer = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength);
-    // A piece ends at a line feed, which is no part of any longer UTF-8 sequence.
-    if (!isAscii(buffer) && !isUtf8(buffer)) noteWrongLines(buffer);
-    let text = buffer.toString(isAscii(buffer) ? 'latin1' : 'utf8');
-    if (atStart && buffer.length > 0) {
-      atStart = false;
-      if (text.startsWith('\ufeff')) text = text.slice(1);
-    }
-    return text.includes('\r') ? text.replaceAll('\r\n', '\n') : text;
-  }
-
-  function noteWrongLines(buffer: Buffer): void {
-    let at = line + count(carry, '\n');
-    for (let from = 0; from < buffer.length; at += 1) {
-      const feed = buffer.indexOf(10, from);
-      const to = feed === -1 ? buffer.length : feed + 1;
-      if (!isUtf8(buffer.subarray(from, to))) wronglyEncoded.push(at);
-      from = to;
-    }
-  }
-
-  function consume(piece: string, isLast: boolean): void {
-    let text = skipComments(carry + piece, isLast);
+  function consume(piece: TextPiece, isLast: boolean): void {
+    if (piece.wrongLines.length > 0) wrong.note(piece.wrongLines, line + count(carry, '\n'));
+    let text = skipComments(carry + piece.text, isLast);
     for (;;) {
       const { data, errors, cursor } = split(text, isLast);
       // Whatever follows a misplaced quotation mark is guesswork: the rows before it count, then its line is left out.
-      const wrong = errors.find(({ code, row }) => code === 'InvalidQuotes' || row < data.length);
+      const misplaced = errors.find(({ code, row }) => code === 'InvalidQuotes' || row < data.length);
       const start = line;
-      emit(wrong ? data.slice(0, wrong.row) : data, text.includes('"'));
-      if (!wrong) {
+      emit(misplaced ? data.slice(0, misplaced.row) : data, text.includes('"'));
+      if (!misplaced) {
         carry = text.slice(cursor);
         break;
       }
-      const feed = text.indexOf('\n', wrong.index);
+      const feed = text.indexOf('\n', misplaced.index);
       const resume = feed === -1 ? text.length : feed + 1;
-      sink.fault(quoteFault(wrong.code, line, text.slice(text.lastIndexOf('\n', wrong.index - 1) + 1, resume)));
+      sink.fault(
+        quoteFault(misplaced.code, line, text.slice(text.lastIndexOf('\n', misplaced.index - 1) + 1, resume)),
+      );
       quoteFaults += 1;
       line = start + count(text.slice(0, resume), '\n');
       text = text.slice(resume);
@@ -120,7 +93,7 @@ export function csvReader(sink: CsvSink): CsvReader {
     for (const fields of rows) {
       const from = line;
       line += 1 + (mayBreak ? breaksWithin(fields) : 0);
-      if (wronglyEncoded.length > 0 && claimWrongLines(fields, from)) continue;
+      if (wrong.claim(fields, line)) continue;
       if (fields.length === 1 && fields[0]?.trim() === '') continue;
       beforeRows = false;
       sink.row(fields, from);
@@ -137,7 +110,7 @@ export function csvReader(sink: CsvSink): CsvReader {
       const content = text.slice(from, to);
       if (!content.startsWith('#') && content.trim() !== '') break;
       if (content.startsWith('#')) sink.comment(content.slice(1).trim(), line);
-      if (wronglyEncoded[0] === line) claimWrongLines([content], line);
+      wrong.claim([content], line + 1);
       if (feed === -1) return '';
       from = feed + 1;
       line += 1;
@@ -145,26 +118,34 @@ export function csvReader(sink: CsvSink): CsvReader {
     return from === 0 ? text : text.slice(from);
   }
 
-  /** Reports the wrongly encoded lines of a row that ends before the present line, or of the one comment line. */
-  function claimWrongLines(fields: readonly string[], from: number): boolean {
-    const until = Math.max(line, from + 1);
-    let found = false;
-    while (wronglyEncoded[0] !== undefined && wronglyEncoded[0] < until) {
+  return { push, end };
+}
+
+/** Lines that are not UTF-8, until the row that they belong to comes by. */
+function wrongLines(sink: CsvSink) {
+  const waiting: number[] = [];
+  return {
+    note: (lines: readonly number[], first: number): void => {
+      for (const line of lines) waiting.push(first + line);
+    },
+    /** Reports those before the line `until`, as faults of these fields; whether there were any. */
+    claim: (fields: readonly string[], until: number): boolean => {
+      if (waiting.length === 0) return false;
+      const later = waiting.findIndex((line) => line >= until);
+      const claimed = waiting.splice(0, later === -1 ? waiting.length : later);
       const field = fields.findIndex((text) => text.includes('\ufffd'));
       const value = fields[field];
-      sink.fault({
-        line: wronglyEncoded[0],
-        ...(value === undefined ? {} : { field, value: excerpt(value) }),
-        message: 'This is not UTF-8 text.',
-        remedy: 'Save the table with the encoding UTF-8.',
-      });
-      wronglyEncoded.shift();
-      found = true;
-    }
-    return found;
-  }
-
-  return { push, end };
+      for (const line of claimed) {
+        sink.fault({
+          line,
+          ...(value === undefined ? {} : { field, value: excerpt(value) }),
+          message: 'This is not UTF-8 text.',
+          remedy: 'Save the table with the encoding UTF-8.',
+        });
+      }
+      return claimed.length > 0;
+    },
+  };
 }
 
 interface Split {
@@ -195,14 +176,16 @@ function count(text: string, character: string): number {
 
 const tooLong = (line: number): CsvFault => ({
   line,
-  message: 'The row that begins here does not end within 1,048,576 characters. The table was not read further.',
+  message:
+    'The row that begins here does not end within 1,048,576 characters. The table was not read further.',
   remedy: 'Look for a quotation mark without its partner.',
 });
 
 const tooManyQuotes = (line: number): CsvFault => ({
   line,
   message: `${mostQuoteFaults} rows have misplaced quotation marks. The table was not read further.`,
-  remedy: 'Write a field with commas, quotation marks or line breaks between quotation marks, those inside twice.',
+  remedy:
+    'Write a field with commas, quotation marks or line breaks between quotation marks, those inside twice.',
 });
 
 function quoteFault(code: string, line: number, row: string): CsvFault {

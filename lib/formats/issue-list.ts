@@ -3,6 +3,12 @@ import type { Issue } from '@/lib/faults/fault';
 /** How many issues of one table are kept word for word; the rest are counted. */
 export const keptIssues = 1000;
 
+/** What is wrong and what to do about it. */
+export interface IssueText {
+  readonly message: string;
+  readonly remedy: string;
+}
+
 /** Collects what is wrong with a table: the first thousand as they are, all of them as a number. */
 export interface IssueList {
   readonly add: (issue: Issue) => void;
@@ -15,7 +21,6 @@ const longestValue = 200;
 
 /** A value from a file, short enough to show, with control characters made visible. */
 export function excerpt(text: string): string {
-  // eslint-disable-next-line no-control-regex -- these are the characters that must not reach a page or a download
   const visible = text.slice(0, longestValue + 1).replace(/[\u0000-\u001f\u007f]/g, '␣');
   return visible.length > longestValue ? `${visible.slice(0, longestValue - 1)}…` : visible;
 }

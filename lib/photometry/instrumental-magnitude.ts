@@ -34,5 +34,6 @@ export function magnitudeErrorOfFlux(flux: number, fluxErr: number): number {
 }
 
 function requirePositive(value: number, what: string): void {
-  if (!(value > 0 && value < Infinity)) throw new RangeError(`${what} must be above 0 and finite, not ${value}.`);
+  if (!(value > 0 && value < Infinity))
+    throw new RangeError(`${what} must be above 0 and finite, not ${value}.`);
 }

@@ -121,25 +121,39 @@ function matchByPosition(
   const lead = nameless ? '' : 'No standard has this name. ';
   if (first === undefined) {
     const next = near[0];
-    const hint = next ? ` The nearest, ${standards.names[next.standard]}, lies at ${shown(next.separation)}.` : '';
+    const hint = next
+      ? ` The nearest, ${standards.names[next.standard]}, lies at ${shown(next.separation)}.`
+      : '';
     return { kind: 'unmatched', reason: `${lead}No standard lies within ${shown(tolerance)}.${hint}` };
   }
   if (second !== undefined) {
-    const list = within.map((one) => `${standards.names[one.standard]} at ${shown(one.separation)}`).join(', ');
+    const list = within
+      .map((one) => `${standards.names[one.standard]} at ${shown(one.separation)}`)
+      .join(', ');
     const reason = `${lead}${within.length} standards lie within ${shown(tolerance)}: ${list}.`;
     return { kind: 'unmatched', reason: reason.slice(0, 300) };
   }
   if ((standards.unusable[first.standard] ?? '') !== '') {
     return { kind: 'unmatched', reason: markedReason(standards, first.standard) };
   }
-  return { kind: 'matched', standard: first.standard, by: 'position', separation: first.separation, caution: '' };
+  return {
+    kind: 'matched',
+    standard: first.standard,
+    by: 'position',
+    separation: first.separation,
+    caution: '',
+  };
 }
 
 const markedReason = (standards: StandardTable, standard: number): string =>
   `${standards.names[standard]} is marked not to be used: ${standards.unusable[standard]}`.slice(0, 300);
 
 const shown = (arcsec: number): string =>
-  arcsec < 100 ? `${arcsec.toFixed(1)}″` : arcsec < 3600 ? `${(arcsec / 60).toFixed(1)}′` : `${(arcsec / 3600).toFixed(1)}°`;
+  arcsec < 100
+    ? `${arcsec.toFixed(1)}″`
+    : arcsec < 3600
+      ? `${(arcsec / 60).toFixed(1)}′`
+      : `${(arcsec / 3600).toFixed(1)}°`;
 
 /** Where a standard stands at the epoch of the measurements.
  * @param standards - published stars

@@ -3,7 +3,11 @@ import { describe, expect, it } from 'vitest';
 import { separation } from '@/lib/astro/separation';
 import { skyGrid } from '@/lib/astro/sky-grid';
 
-function found(grid: ReturnType<typeof skyGrid>, ra: number, dec: number): readonly (readonly [number, number])[] {
+function found(
+  grid: ReturnType<typeof skyGrid>,
+  ra: number,
+  dec: number,
+): readonly (readonly [number, number])[] {
   const all: [number, number][] = [];
   grid.within(ra, dec, (place, separation_arcsec) => all.push([place, separation_arcsec]));
   return all.sort((a, b) => a[0] - b[0]);
@@ -22,8 +26,12 @@ describe('skyGrid', () => {
     const grid = skyGrid(2);
     grid.add(10, 89.9999);
     grid.add(190, -89.9998);
-    expect(found(grid, 190, 89.9999).map(([place, s]) => [place, Math.round(s * 1e6) / 1e6])).toEqual([[0, 0.72]]);
-    expect(found(grid, 10, -89.9999).map(([place, s]) => [place, Math.round(s * 1e6) / 1e6])).toEqual([[1, 1.08]]);
+    expect(found(grid, 190, 89.9999).map(([place, s]) => [place, Math.round(s * 1e6) / 1e6])).toEqual([
+      [0, 0.72],
+    ]);
+    expect(found(grid, 10, -89.9999).map(([place, s]) => [place, Math.round(s * 1e6) / 1e6])).toEqual([
+      [1, 1.08],
+    ]);
     expect(found(grid, 77, 90).map(([place]) => place)).toEqual([0]);
   });
 
@@ -41,8 +49,20 @@ describe('skyGrid', () => {
 
   it('finds exactly what a search through all places finds, with the same separations', () => {
     const nearby = fc.double({ min: -0.004, max: 0.004, noNaN: true });
-    const centre = fc.constantFrom([0, 0], [359.999, 60], [0.001, -89.999], [123, 89.9995], [180, 90], [90, -45]);
-    const draw = fc.tuple(centre, fc.array(fc.tuple(nearby, nearby), { minLength: 1, maxLength: 120 }), nearby, nearby);
+    const centre = fc.constantFrom(
+      [0, 0],
+      [359.999, 60],
+      [0.001, -89.999],
+      [123, 89.9995],
+      [180, 90],
+      [90, -45],
+    );
+    const draw = fc.tuple(
+      centre,
+      fc.array(fc.tuple(nearby, nearby), { minLength: 1, maxLength: 120 }),
+      nearby,
+      nearby,
+    );
     const place = (ra: number, dec: number) => ({
       ra: ((ra % 360) + 360) % 360,
       dec: Math.max(-90, Math.min(90, dec)),

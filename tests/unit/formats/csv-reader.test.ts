@@ -94,10 +94,20 @@ describe('csvReader', () => {
   });
 
   it('names line and field of text that is not UTF-8', () => {
-    const bytes = Buffer.concat([Buffer.from('a,b\n1,\u00e9\n2,'), Buffer.from([0xe9]), Buffer.from('x\n3,c\n')]);
+    const bytes = Buffer.concat([
+      Buffer.from('a,b\n1,\u00e9\n2,'),
+      Buffer.from([0xe9]),
+      Buffer.from('x\n3,c\n'),
+    ]);
     const { faults, rows } = read(bytes);
     expect(faults).toEqual([
-      { line: 3, field: 1, value: '\ufffdx', message: 'This is not UTF-8 text.', remedy: expect.any(String) as string },
+      {
+        line: 3,
+        field: 1,
+        value: '\ufffdx',
+        message: 'This is not UTF-8 text.',
+        remedy: expect.any(String) as string,
+      },
     ]);
     expect(rows.map(({ line }) => line)).toEqual([1, 2, 4]);
   });
@@ -116,22 +126,30 @@ describe('csvReader', () => {
     // Two or more fields: a row of one empty field is a blank line. No lone CR: a quoted CRLF is kept as LF.
     const table = fc.array(fc.array(field, { minLength: 2, maxLength: 5 }), { minLength: 1, maxLength: 20 });
     fc.assert(
-      fc.property(table, fc.boolean(), fc.integer({ min: 1, max: 40 }), fc.boolean(), (drawn, crlf, size, allQuoted) => {
-        const rows = drawn.map((row) => row.map((text) => text.replaceAll('\r', '').replaceAll('\ufeff', '')));
-        const first = ['h', 'k'];
-        const write = allQuoted ? quoted : plain;
-        const content = [first, ...rows].map((row) => row.map(write).join(',')).join(crlf ? '\r\n' : '\n');
-        const found = read(content, size);
-        expect(found.faults).toEqual([]);
-        expect(found.rows.map(({ fields }) => [...fields])).toEqual([first, ...rows]);
-        let line = 1;
-        const lines = [first, ...rows].map((row) => {
-          const at = line;
-          line += 1 + row.join('').split('\n').length - 1;
-          return at;
-        });
-        expect(found.rows.map((row) => row.line)).toEqual(lines);
-      }),
+      fc.property(
+        table,
+        fc.boolean(),
+        fc.integer({ min: 1, max: 40 }),
+        fc.boolean(),
+        (drawn, crlf, size, allQuoted) => {
+          const rows = drawn.map((row) =>
+            row.map((text) => text.replaceAll('\r', '').replaceAll('\ufeff', '')),
+          );
+          const first = ['h', 'k'];
+          const write = allQuoted ? quoted : plain;
+          const content = [first, ...rows].map((row) => row.map(write).join(',')).join(crlf ? '\r\n' : '\n');
+          const found = read(content, size);
+          expect(found.faults).toEqual([]);
+          expect(found.rows.map(({ fields }) => [...fields])).toEqual([first, ...rows]);
+          let line = 1;
+          const lines = [first, ...rows].map((row) => {
+            const at = line;
+            line += 1 + row.join('').split('\n').length - 1;
+            return at;
+          });
+          expect(found.rows.map((row) => row.line)).toEqual(lines);
+        },
+      ),
       { numRuns: 300 },
     );
   });

@@ -1,6 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import { starKey } from '@/lib/contracts/star-name';
-import { placeAtEpoch, standardMatcher, type StandardTable, type StarToMatch } from '@/lib/photometry/match-standards';
+import {
+  placeAtEpoch,
+  standardMatcher,
+  type StandardTable,
+  type StarToMatch,
+} from '@/lib/photometry/match-standards';
 
 interface Star {
   readonly name: string;
@@ -36,7 +41,12 @@ describe('standardMatcher', () => {
 
   it('knows a name in whatever case and with whatever blanks and hyphens, without a position', () => {
     for (const name of ['114-750', '114 750', ' 114750'])
-      expect(match(nowhere(name))).toMatchObject({ kind: 'matched', standard: 0, by: 'name', separation: NaN });
+      expect(match(nowhere(name))).toMatchObject({
+        kind: 'matched',
+        standard: 0,
+        by: 'name',
+        separation: NaN,
+      });
     expect(match(nowhere('ZERO-a'))).toMatchObject({ standard: 1 });
   });
 
@@ -83,7 +93,11 @@ describe('standardMatcher', () => {
       reason: '2 standards lie within 2.0″: Pair C at 1.4″, Pair D at 1.6″.',
     });
     expect(match(at(50, -30 + 0.9 * arcsec))).toMatchObject({ kind: 'matched', standard: 3 });
-    expect(match(at(50, -30 + 1.4 * arcsec, 'pair-d'))).toMatchObject({ kind: 'matched', standard: 4, by: 'name' });
+    expect(match(at(50, -30 + 1.4 * arcsec, 'pair-d'))).toMatchObject({
+      kind: 'matched',
+      standard: 4,
+      by: 'name',
+    });
   });
 
   it('matches no star that is marked not to be used, by name or by position, and says why', () => {
@@ -102,7 +116,10 @@ describe('standardMatcher', () => {
   it('looks for a standard where its proper motion has taken it', () => {
     const moving = table({ name: 'Fast', ra: 100, dec: 60, pm: [3000, -4000] });
     const then = standardMatcher(moving, { tolerance: 2, epoch_years: 26.5 });
-    const now = { ra: 100 + (3 * 26.5 * arcsec) / Math.cos((60 * Math.PI) / 180), dec: 60 - 4 * 26.5 * arcsec };
+    const now = {
+      ra: 100 + (3 * 26.5 * arcsec) / Math.cos((60 * Math.PI) / 180),
+      dec: 60 - 4 * 26.5 * arcsec,
+    };
     expect(then(at(now.ra, now.dec))).toMatchObject({ kind: 'matched', by: 'position' });
     expect(then(at(100, 60)).kind).toBe('unmatched');
   });

@@ -1,6 +1,6 @@
 import type { Band, FrameType } from '@/lib/contracts/bands';
 import type { MeasurementColumn } from '@/lib/contracts/measurement-columns';
-import type { IssueText } from '@/lib/formats/measurement-table';
+import type { IssueText } from '@/lib/formats/issue-list';
 import type { LoggedFrame, NightBounds } from './messages';
 
 /** What a row says about its frame; NaN and '' mean that it does not. */
@@ -66,14 +66,20 @@ export function frameRegister(logged: readonly LoggedFrame[], night: NightBounds
     const file = byFile.get(text);
     if (number !== undefined && file !== undefined && number !== file) {
       const message = `This is the number of one frame and the file name of another (frame ${frames[file]?.number}).`;
-      return { message, remedy: 'Write the file name with its ending, or give one of the frames another file name.' };
+      return {
+        message,
+        remedy: 'Write the file name with its ending, or give one of the frames another file name.',
+      };
     }
     const exact = number ?? file;
     if (exact !== undefined) return exact;
     const alike = byLooseFile.get(looseFile(text)) ?? [];
     if (alike.length < 2) return alike[0];
     const list = alike.map((index) => frames[index]?.file).join(', ');
-    return { message: `This could be ${alike.length} frames: ${list}.`, remedy: 'Write the file name exactly.' };
+    return {
+      message: `This could be ${alike.length} frames: ${list}.`,
+      remedy: 'Write the file name exactly.',
+    };
   }
 
   function find(row: FrameRow): number | readonly FrameIssue[] {
@@ -134,7 +140,10 @@ function disagreements(frame: RegisteredFrame, row: FrameRow): readonly FrameIss
     issues.push({
       column,
       message: `This frame has ${there} ${where}.`,
-      remedy: frame.line === 0 ? 'Correct the table, or the frame in the log.' : 'Write one value for the whole frame.',
+      remedy:
+        frame.line === 0
+          ? 'Correct the table, or the frame in the log.'
+          : 'Write one value for the whole frame.',
     });
   };
   if (noStars.has(frame.type)) {
@@ -142,11 +151,17 @@ function disagreements(frame: RegisteredFrame, row: FrameRow): readonly FrameIss
     issues.push({ column: 'frame', message, remedy: 'Correct the frame’s number, or its type in the log.' });
   } else if (frame.band === null) {
     const message = 'This frame has no band in the night log.';
-    issues.push({ column: 'frame', message, remedy: 'Enter its band in the log, then upload the table again.' });
+    issues.push({
+      column: 'frame',
+      message,
+      remedy: 'Enter its band in the log, then upload the table again.',
+    });
   }
-  if (row.band !== '' && frame.band !== null && row.band !== frame.band) differs('band', `the band ${frame.band}`);
+  if (row.band !== '' && frame.band !== null && row.band !== frame.band)
+    differs('band', `the band ${frame.band}`);
   const slack = Math.max(exposureSlack_s, exposureSlack * frame.exposure_s);
-  if (Math.abs(row.exposure_s - frame.exposure_s) > slack) differs('exposure', `an exposure of ${frame.exposure_s} s`);
+  if (Math.abs(row.exposure_s - frame.exposure_s) > slack)
+    differs('exposure', `an exposure of ${frame.exposure_s} s`);
   if (frame.line > 0 && Math.abs(row.utcStart - frame.utcStart) > sameStart_ms) {
     differs('utc_start', `the start ${new Date(frame.utcStart).toISOString()}`);
   }
@@ -157,7 +172,11 @@ function disagreements(frame: RegisteredFrame, row: FrameRow): readonly FrameIss
 }
 
 /** Why a frame that the log does not have cannot be created from a row. */
-function whyNotCreated(row: FrameRow, night: NightBounds, frames: readonly RegisteredFrame[]): readonly FrameIssue[] {
+function whyNotCreated(
+  row: FrameRow,
+  night: NightBounds,
+  frames: readonly RegisteredFrame[],
+): readonly FrameIssue[] {
   const has = [!Number.isNaN(row.utcStart), !Number.isNaN(row.exposure_s), row.band !== ''];
   if (!has.every(Boolean)) {
     const remedy = has.some(Boolean)
@@ -171,7 +190,11 @@ function whyNotCreated(row: FrameRow, night: NightBounds, frames: readonly Regis
   }
   const issues: FrameIssue[] = [];
   if (/^0+$/.test(row.frame)) {
-    issues.push({ column: 'frame', message: 'Frames count from 1.', remedy: 'Write the number of the frame.' });
+    issues.push({
+      column: 'frame',
+      message: 'Frames count from 1.',
+      remedy: 'Write the number of the frame.',
+    });
   }
   if (row.utcStart < night.startsAt || row.utcStart >= night.endsAt) {
     const span = `${new Date(night.startsAt).toISOString()} to ${new Date(night.endsAt).toISOString()}`;
@@ -182,9 +205,15 @@ function whyNotCreated(row: FrameRow, night: NightBounds, frames: readonly Regis
     });
   }
   if (row.type !== '' && noStars.has(row.type)) {
-    issues.push({ column: 'type', message: `No star is measured on a ${row.type}.`, remedy: 'Write standard or target.' });
+    issues.push({
+      column: 'type',
+      message: `No star is measured on a ${row.type}.`,
+      remedy: 'Write standard or target.',
+    });
   }
-  const twin = frames.find((one) => one.band === row.band && Math.abs(one.utcStart - row.utcStart) <= sameStart_ms);
+  const twin = frames.find(
+    (one) => one.band === row.band && Math.abs(one.utcStart - row.utcStart) <= sameStart_ms,
+  );
   if (twin) {
     const name = twin.number === null ? (twin.file ?? '') : `frame ${twin.number}`;
     const there = twin.line === 0 ? 'in the log' : `of line ${twin.line}`;

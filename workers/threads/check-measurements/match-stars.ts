@@ -8,10 +8,15 @@ import type { StarRegister } from './star-register';
 type Matched = Pick<LoadPlan, 'stars' | 'matchedRows' | 'newFrames' | 'usedFrames'>;
 
 /** Matches every star of a table, writes the file of its stars and settles what is known of the frames only then. */
-export function matchStars(order: CheckOrder, stars: StarRegister, frames: readonly RegisteredFrame[]): Matched {
+export function matchStars(
+  order: CheckOrder,
+  stars: StarRegister,
+  frames: readonly RegisteredFrame[],
+): Matched {
   const matches = order.kind === 'target' ? [] : matchAll(order, stars);
   const file = rowFile(order.folder, 'stars');
-  for (let star = 0; star < stars.stars(); star += 1) file.write(starLine(order, stars, { star, match: matches[star] }));
+  for (let star = 0; star < stars.stars(); star += 1)
+    file.write(starLine(order, stars, { star, match: matches[star] }));
   let matchedRows = 0;
   matches.forEach((match, star) => {
     if (match.kind === 'matched') matchedRows += stars.rowsOf(star);
@@ -105,7 +110,10 @@ interface Seen {
 function newFrames(
   order: CheckOrder,
   stars: StarRegister,
-  { frames, matches }: { readonly frames: readonly RegisteredFrame[]; readonly matches: readonly StandardMatch[] },
+  {
+    frames,
+    matches,
+  }: { readonly frames: readonly RegisteredFrame[]; readonly matches: readonly StandardMatch[] },
 ): readonly NewFrame[] {
   const first = order.frames.length;
   if (frames.length === first) return [];

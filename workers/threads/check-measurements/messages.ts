@@ -84,4 +84,3 @@ export type CheckMessage =
   | { readonly kind: 'reading'; readonly bytes: number; readonly size: number; readonly rows: number }
   | { readonly kind: 'matching'; readonly rows: number }
   | { readonly kind: 'end'; readonly result: CheckResult };
-

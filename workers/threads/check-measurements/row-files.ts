@@ -54,4 +54,5 @@ export function rowFile(folder: string, name: string, rowsPerFile = Infinity): R
 export const numberField = (value: number): string => (Number.isFinite(value) ? String(value) : '\\N');
 
 /** Text for LOAD DATA; control characters were refused before. */
-export const textField = (value: string): string => (value.includes('\\') ? value.replaceAll('\\', '\\\\') : value);
+export const textField = (value: string): string =>
+  value.includes('\\') ? value.replaceAll('\\', '\\\\') : value;

@@ -1,7 +1,7 @@
 import { skyGrid } from '@/lib/astro/sky-grid';
 import { starKey } from '@/lib/contracts/star-name';
 import { growingArray } from './growing-array';
-import { pairIndex } from './pair-index';
+import { measuredRows, type MeasuredRows, type StarRow } from './measured-rows';
 
 /** The distinct stars of a table and where each was measured. Rows and stars count from 0 here. */
 export interface StarRegister {
@@ -24,98 +24,26 @@ export interface StarRegister {
   readonly starOfRow: (row: number) => number;
 }
 
-export interface StarRow {
-  readonly line: number;
-  readonly frame: number;
-  readonly name: string;
-  readonly ra: number;
-  readonly dec: number;
-}
-
-/** Spellings that are looked up without working out their key again. */
-const rememberedSpellings = 200_000;
-/** Two positions on one frame nearer than this are one row written twice. [deg]: 0.004 arcsec */
-const positionStep = 1e-6;
-
 export function starRegister(tolerance_arcsec: number): StarRegister {
-  const frameOfRow = growingArray(Int32Array);
-  const starOfRow = growingArray(Int32Array);
-  const lineOfRow = growingArray(Int32Array);
-  const [raOfRow, decOfRow] = [growingArray(Int32Array), growingArray(Int32Array)];
-  const measured = pairIndex(starOfRow.get, frameOfRow.get);
   const names: string[] = [];
   const [ra, dec] = [growingArray(Float64Array), growingArray(Float64Array)];
   const rowsOf = growingArray(Int32Array);
-  const bySpelling = new Map<string, number>();
-  const byKey = new Map<string, number>();
-  const grid = skyGrid(tolerance_arcsec);
-  const starOfPlace = growingArray(Int32Array);
-
-  /** Only nameless rows need their position again; a table of names alone spends no memory on it. */
-  function keepSteps(index: number, row: StarRow): void {
-    while (raOfRow.length() < index) {
-      raOfRow.push(0);
-      decOfRow.push(0);
-    }
-    const [stepsRa, stepsDec] = steps(row);
-    raOfRow.push(stepsRa);
-    decOfRow.push(stepsDec);
-  }
-
-  function newStar(name: string, row: StarRow): number {
+  const measured = measuredRows();
+  const newStar = (name: string, row: StarRow): number => {
     names.push(name);
     ra.push(row.ra);
     dec.push(row.dec);
     rowsOf.push(0);
     return names.length - 1;
-  }
-
-  function namedStar(row: StarRow): number {
-    const known = bySpelling.get(row.name);
-    if (known !== undefined) return known;
-    const key = starKey(row.name);
-    let star = byKey.get(key);
-    if (star === undefined) {
-      star = newStar(ownCopy(row.name), row);
-      byKey.set(ownCopy(key), star);
-    }
-    if (bySpelling.size < rememberedSpellings) bySpelling.set(ownCopy(row.name), star);
-    return star;
-  }
-
-  /** The nearest nameless star that this frame has not measured yet, or a new one; −line−1 for a row written twice. */
-  function placedStar(row: StarRow): number {
-    let best = -1;
-    let bestDistance = Infinity;
-    let twice = -1;
-    grid.within(row.ra, row.dec, (place, distance) => {
-      const star = starOfPlace.get(place);
-      const earlier = measured.find(star, row.frame);
-      if (earlier >= 0) {
-        const [stepsRa, stepsDec] = steps(row);
-        if (raOfRow.get(earlier) === stepsRa && decOfRow.get(earlier) === stepsDec) twice = earlier;
-      } else if (distance < bestDistance) {
-        bestDistance = distance;
-        best = star;
-      }
-    });
-    if (twice >= 0) return -twice - 1;
-    if (best >= 0) return best;
-    grid.add(row.ra, row.dec);
-    starOfPlace.push(names.length);
-    return newStar('', row);
-  }
+  };
+  const named = namedStars(newStar);
+  const placed = placedStars(tolerance_arcsec, measured, newStar);
 
   function enter(row: StarRow): { readonly star: number } | { readonly firstLine: number } {
-    const star = row.name === '' ? placedStar(row) : namedStar(row);
-    const twice = star < 0 ? -star - 1 : row.name === '' ? -1 : measured.find(star, row.frame);
-    if (twice >= 0) return { firstLine: lineOfRow.get(twice) };
-    const index = starOfRow.length();
-    starOfRow.push(star);
-    frameOfRow.push(row.frame);
-    lineOfRow.push(row.line);
-    if (row.name === '') keepSteps(index, row);
-    measured.enter(index, star, row.frame);
+    const star = row.name === '' ? placed(row) : named(row);
+    const earlier = star < 0 ? -star - 1 : measured.find(star, row.frame);
+    if (earlier >= 0) return { firstLine: measured.lineOf(earlier) };
+    measured.enter(star, row);
     rowsOf.set(star, rowsOf.get(star) + 1);
     if (Number.isNaN(ra.get(star)) && !Number.isNaN(row.ra)) {
       ra.set(star, row.ra);
@@ -127,21 +55,73 @@ export function starRegister(tolerance_arcsec: number): StarRegister {
   return {
     enter,
     stars: () => names.length,
-    rows: starOfRow.length,
+    rows: measured.rows,
     name: (star) => names[star] ?? '',
     key: (star) => starKey(names[star] ?? ''),
     ra: ra.get,
     dec: dec.get,
     rowsOf: rowsOf.get,
-    frameOfRow: frameOfRow.get,
-    starOfRow: starOfRow.get,
+    frameOfRow: measured.frameOf,
+    starOfRow: measured.starOf,
   };
 }
 
-const steps = ({ ra, dec }: StarRow): readonly [number, number] => [
-  Math.round(ra / positionStep),
-  Math.round(dec / positionStep),
-];
+type NewStar = (name: string, row: StarRow) => number;
+
+/** Spellings that are looked up without working out their key again. */
+const rememberedSpellings = 200_000;
+
+/** Finds or makes the star of a name. */
+function namedStars(newStar: NewStar): (row: StarRow) => number {
+  const bySpelling = new Map<string, number>();
+  const byKey = new Map<string, number>();
+  return (row) => {
+    const known = bySpelling.get(row.name);
+    if (known !== undefined) return known;
+    const key = starKey(row.name);
+    let star = byKey.get(key);
+    if (star === undefined) {
+      star = newStar(ownCopy(row.name), row);
+      byKey.set(ownCopy(key), star);
+    }
+    if (bySpelling.size < rememberedSpellings) bySpelling.set(ownCopy(row.name), star);
+    return star;
+  };
+}
+
+/**
+ * Finds the nearest nameless star that the row's frame has not measured yet, or makes one: on one frame two near places
+ * are two stars. A row that was written twice gives −1 less the number of the row that says the same.
+ */
+function placedStars(
+  tolerance_arcsec: number,
+  measured: MeasuredRows,
+  newStar: NewStar,
+): (row: StarRow) => number {
+  const grid = skyGrid(tolerance_arcsec);
+  const starOfPlace = growingArray(Int32Array);
+  return (row) => {
+    let best = -1;
+    let bestDistance = Infinity;
+    let twice = -1;
+    grid.within(row.ra, row.dec, (place, distance) => {
+      const star = starOfPlace.get(place);
+      const earlier = measured.find(star, row.frame);
+      if (earlier >= 0) {
+        if (measured.isAtPlaceOf(earlier, row)) twice = earlier;
+      } else if (distance < bestDistance) {
+        bestDistance = distance;
+        best = star;
+      }
+    });
+    if (twice >= 0) return -twice - 1;
+    if (best >= 0) return best;
+    grid.add(row.ra, row.dec);
+    const star = newStar('', row);
+    starOfPlace.push(star);
+    return star;
+  };
+}
 
 /** A part of a longer text keeps all of it in memory; a copy keeps only itself. */
 const ownCopy = (text: string): string => Buffer.from(text, 'utf8').toString('utf8');

@@ -1,0 +1,52 @@
+import { describe, expect, it } from 'vitest';
+import { columnPositions, guessMapping, missingColumns } from '@/lib/contracts/measurement-columns';
+
+describe('columns of a measurement table', () => {
+  it('are found by name without case and blanks', () => {
+    expect([...columnPositions([' Frame', 'STAR', 'other', 'Inst_Mag '], {})]).toEqual([
+      ['frame', 0],
+      ['star', 1],
+      ['inst_mag', 3],
+    ]);
+  });
+
+  it('a header that is mapped to one column no longer counts for another', () => {
+    const positions = columnPositions(['frame', 'sky', 'fwhm'], { peak: 'SKY' });
+    expect([...positions]).toEqual([
+      ['frame', 0],
+      ['fwhm', 2],
+      ['peak', 1],
+    ]);
+  });
+
+  it('what is missing is said with every way to mend it', () => {
+    expect(missingColumns(new Set(['frame', 'star', 'flux', 'flux_err'] as const))).toEqual([]);
+    expect(
+      missingColumns(new Set(['frame', 'ra', 'dec', 'inst_mag'] as const)).map(({ anyOf }) => anyOf),
+    ).toEqual([[['inst_err'], ['flux', 'flux_err']]]);
+    expect(missingColumns(new Set())).toHaveLength(4);
+  });
+
+  it('a first guess maps headers that other programs use, each once, and leaves ours alone', () => {
+    expect(
+      guessMapping([
+        'NUMBER',
+        'image',
+        'ALPHA_J2000',
+        'DELTA_J2000',
+        'MAG_AUTO',
+        'MAGERR_AUTO',
+        'FLAGS',
+        'x',
+      ]),
+    ).toEqual({
+      frame: 'image',
+      ra: 'ALPHA_J2000',
+      dec: 'DELTA_J2000',
+      inst_mag: 'MAG_AUTO',
+      inst_err: 'MAGERR_AUTO',
+      flag: 'FLAGS',
+    });
+    expect(guessMapping(['frame', 'star', 'inst_mag', 'inst_err', 'name'])).toEqual({});
+  });
+});

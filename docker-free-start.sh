@@ -521,7 +521,7 @@ command_start() {
 }
 
 command_first_manager() {
-  [[ $# -eq 2 ]] || die 'first-manager needs an e-mail address and a name.' \
+  [[ $# -ge 2 ]] || die 'first-manager needs an e-mail address and a name.' \
     "For example: ./docker-free-start.sh first-manager ada@observatory.example 'Ada Marsh'"
   EVENFALL_DEMO=0
   settings

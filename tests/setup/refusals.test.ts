@@ -137,7 +137,7 @@ describe('a start that cannot go on says why and what to do, when', () => {
     ]);
   });
 
-  it('it runs already on the same data folder', async () => {
+  it('runs already on the same data folder', async () => {
     const copy = await ownCopy();
     await mkdir(copy.DATA_DIR);
     const holder = spawn('flock', [path.join(copy.DATA_DIR, 'lock'), 'sh', '-c', 'echo held; exec sleep 60']);

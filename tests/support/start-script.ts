@@ -35,9 +35,12 @@ export async function ownCopy(): Promise<{
   readonly MAIL_CATCHER_PORT: string;
   readonly DATA_DIR: string;
 }> {
-  const ports = [await freePort(), await freePort(), await freePort()];
-  const [PORT = '', DB_PORT = '', MAIL_CATCHER_PORT = ''] = ports.map(String);
-  return { PORT, DB_PORT, MAIL_CATCHER_PORT, DATA_DIR: path.join(await temporaryFolder(), 'data') };
+  return {
+    PORT: String(await freePort()),
+    DB_PORT: String(await freePort()),
+    MAIL_CATCHER_PORT: String(await freePort()),
+    DATA_DIR: path.join(await temporaryFolder(), 'data'),
+  };
 }
 
 const inherited = ['PATH', 'HOME', 'LANG', 'TZ', 'CI', 'USER'];

@@ -137,10 +137,11 @@ describe('a start that cannot go on says why and what to do, when', () => {
     ]);
   });
 
-  it('runs already on the same data folder', async () => {
+  it('another copy runs on the same data folder', async () => {
     const copy = await ownCopy();
     await mkdir(copy.DATA_DIR);
-    const holder = spawn('flock', [path.join(copy.DATA_DIR, 'lock'), 'sh', '-c', 'echo held; exec sleep 60']);
+    const hold = 'exec 9>"$0"; flock 9; echo held; exec sleep 60';
+    const holder = spawn('bash', ['-c', hold, path.join(copy.DATA_DIR, 'lock')]);
     await new Promise((resolve) => holder.stdout.once('data', resolve));
     try {
       await expectRefusal(copy, ['already runs on DATA_DIR', 'for a second copy']);

@@ -76,7 +76,7 @@ const allow = {
     'plumbing',
     ...science,
   ],
-  worker: ['worker', 'queue', 'act', 'read', 'policy', 'contract', 'fault', 'format', 'plumbing', ...science],
+  worker: ['worker', 'queue', 'mail', 'act', 'read', 'policy', 'contract', 'fault', 'format', 'plumbing', ...science],
   thread: ['thread', 'contract', 'fault', 'format', ...science],
   fixture: ['fixture'],
 };

@@ -4,8 +4,9 @@ import { Panel } from '@/app/_components/ui/panel';
 import { oneTimeLink, type OneTimeLink } from '@/lib/server/reads/one-time-link';
 import { PasswordForm } from './_components/password-form';
 
-// The address is the secret: it must not travel on to other sites.
-export const metadata: Metadata = { title: 'Set a password', referrer: 'no-referrer', robots: 'noindex' };
+// The address is the secret. The service's referrer policy keeps it from other sites; a stricter one would take the
+// origin from the form that is sent without scripts.
+export const metadata: Metadata = { title: 'Set a password', robots: 'noindex' };
 
 const refusals: Readonly<Record<Exclude<OneTimeLink['state'], 'open'> | 'unknown', string>> = {
   used: 'It has been used. Sign in with the password that was set by it; if you did not set it, tell a manager of the observatory at once.',

@@ -7,6 +7,8 @@ import { Problem, problems } from './problem';
 
 const tags: Readonly<Record<string, string>> = {
   service: 'The service itself',
+  access: 'Tokens, and who you are',
+  observatory: 'Telescopes and programmes',
 };
 
 const binary = { type: 'string', format: 'binary' } as const;

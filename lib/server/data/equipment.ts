@@ -63,10 +63,10 @@ export interface EpochRow {
 
 const siteColumns = `id, name, longitude, latitude, elevation, timezone, mean_extinction AS meanExtinction`;
 const telescopeColumns = `t.id, t.site_id AS siteId, t.code, t.name, t.aperture_m, t.min_altitude AS minAltitude,
-  t.retired_on AS retiredOn`;
+  DATE_FORMAT(t.retired_on, '%Y-%m-%d') AS retiredOn`;
 const cameraColumns = `id, telescope_id AS telescopeId, name, width_px, height_px, pixel_scale AS pixelScale, gain,
   read_noise AS readNoise, saturation`;
-const epochColumns = `id, telescope_id AS telescopeId, camera_id AS cameraId, starts_on AS startsOn, ends_on AS endsOn,
+const epochColumns = `id, telescope_id AS telescopeId, camera_id AS cameraId, DATE_FORMAT(starts_on, '%Y-%m-%d') AS startsOn, DATE_FORMAT(ends_on, '%Y-%m-%d') AS endsOn,
   description, colour_terms AS colourTerms`;
 
 /** The order of bands everywhere: blue to red. */
@@ -80,13 +80,17 @@ export interface TelescopePage {
   /** Code after which the page begins. */
   readonly after?: string | undefined;
   readonly limit: number;
+  /** Leaves retired ones out. */
+  readonly inUse?: boolean;
 }
 
-/** Telescopes by code, retired ones too: their nights are still there. */
+/** Telescopes by code; retired ones too unless told otherwise, for their nights are still there. */
 export async function telescopes(page: TelescopePage = { limit: 1000 }): Promise<readonly TelescopeRow[]> {
   return select<TelescopeRow>(
-    `SELECT ${telescopeColumns} FROM telescopes t WHERE t.code > :after ORDER BY t.code LIMIT :limit`,
-    { after: page.after ?? '', limit: page.limit },
+    `SELECT ${telescopeColumns} FROM telescopes t
+      WHERE t.code > :after AND (NOT :inUse OR t.retired_on IS NULL OR t.retired_on > CURRENT_DATE)
+      ORDER BY t.code LIMIT :limit`,
+    { after: page.after ?? '', limit: page.limit, inUse: page.inUse ?? false },
   );
 }
 

@@ -49,3 +49,6 @@ export function jobScope(caller: Caller): JobScope {
     programmeIds: [...caller.programmes.keys()],
   };
 }
+
+/** Scope for programmes themselves: the observatory's staff see all, investigators their own. */
+export const programmeScope = nightScope;

@@ -9,6 +9,7 @@ import * as openapi from './openapi';
 import type { Operation } from './operation';
 import * as programme from './programme';
 import * as remark from './remark';
+import * as standard from './standard';
 import * as telescope from './telescope';
 import * as timeLoss from './time-loss';
 import * as token from './token';
@@ -25,6 +26,7 @@ const files = [
   remark,
   timeLoss,
   objectName,
+  standard,
   job,
   health,
   openapi,

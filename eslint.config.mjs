@@ -90,7 +90,7 @@ const policies = [
   { from: { element: { type: 'test' } }, allow: { to: { element: { type: '*' } } } },
   // A server action is the one door from a component to the server.
   { from: { element: { type: 'component' } }, allow: { to: { file: { categories: 'action' } } } },
-  { from: { file: { categories: 'action' } }, allow: { to: anyOf(['http', 'format']) } },
+  { from: { file: { categories: 'action' } }, allow: { to: anyOf(['http', 'act', 'read', 'identity', 'format']) } },
   { from: { file: { categories: 'action' } }, disallow: { to: anyOf(['component', ...science]) } },
   // Packages: free, except where a folder is to stay movable, or a package has one place.
   { allow: { to: { module: { origin: 'external' } } } },

@@ -13,6 +13,7 @@ import { Mail } from './mail';
 import { MeasurementFault } from './measurement-fault';
 import { MeasurementFlag } from './measurement-flag';
 import { MeasurementSet } from './measurement-set';
+import { MeasurementSetFrame } from './measurement-set-frame';
 import { MeasurementStar } from './measurement-star';
 import { Night } from './night';
 import { NightObserver } from './night-observer';
@@ -69,6 +70,7 @@ export const models = [
   StandardSource,
   StandardStar,
   MeasurementSet,
+  MeasurementSetFrame,
   MeasurementFault,
   MeasurementStar,
   MeasurementFlag,

@@ -16,6 +16,8 @@ export class MeasurementStar extends Model<
   declare ra: number | null;
   declare decl: number | null;
   declare nRows: number;
+  /** line of the file */
+  declare firstLine: CreationOptional<number>;
   declare standardId: number | null;
   declare matchedBy: string | null;
   /** arcsec from the published position, of its first row */
@@ -37,6 +39,7 @@ export class MeasurementStar extends Model<
         ra: { type: DataTypes.DOUBLE, allowNull: true },
         decl: { type: DataTypes.DOUBLE, allowNull: true },
         nRows: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
+        firstLine: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 0 },
         standardId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
         matchedBy: { type: DataTypes.STRING(16), allowNull: true },
         separation: { type: DataTypes.DOUBLE, allowNull: true },

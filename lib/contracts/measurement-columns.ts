@@ -30,16 +30,17 @@ export const measurementColumnNames = measurementColumns.map(({ name }) => name)
 export const MeasurementColumn = z.enum(measurementColumnNames);
 
 /** Which header of the file stands for which column. Columns that the file names as we do need no entry. */
-export const ColumnMapping = z
-  .partialRecord(MeasurementColumn, z.string().trim().min(1).max(120))
-  .meta({
-    description: 'Column of the measurement table → header in the file',
-    example: { inst_mag: 'MAG_APER' },
-  });
+export const ColumnMapping = z.partialRecord(MeasurementColumn, z.string().trim().min(1).max(120)).meta({
+  description: 'Column of the measurement table → header in the file',
+  example: { inst_mag: 'MAG_APER' },
+});
 export type ColumnMapping = z.infer<typeof ColumnMapping>;
 
 /** Headers are compared without case and surrounding blanks. */
 export const headerKey = (header: string): string => header.trim().toLowerCase();
+
+/** What two headers have in common that take one mapping: their names in order. */
+export const headersKey = (headers: readonly string[]): string => JSON.stringify(headers.map(headerKey));
 
 /** Position of each column among the headers; a column that is mapped is looked for under its header only. */
 export function columnPositions(

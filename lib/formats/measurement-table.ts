@@ -8,6 +8,9 @@ import { excerpt, type IssueList, type IssueText } from './issue-list';
 import { fieldCountText, headerIssues } from './measurement-header';
 import { emptyRow, fillRow, type MeasurementRow } from './measurement-row';
 
+/** Which header stands for which column, once the headers are known. */
+export type MappingFor = (headers: readonly string[]) => ColumnMapping;
+
 export interface TableSink {
   /** The header was understood: which header stands for which column. */
   readonly header?: (columns: ReadonlyMap<MeasurementColumn, string>) => void;
@@ -26,7 +29,7 @@ export interface MeasurementTable extends CsvSink {
 }
 /** The rules of a measurement table: takes rows of text, gives rows of values and reports everything wrong with them. */
 export function measurementTable(
-  mapping: ColumnMapping,
+  mappingFor: MappingFor,
   issues: IssueList,
   sink: TableSink,
 ): MeasurementTable {
@@ -54,6 +57,7 @@ export function measurementTable(
 
   function readHeader(fields: readonly string[], line: number): void {
     headers = fields;
+    const mapping = mappingFor(fields);
     positions = columnPositions(fields, mapping);
     const found = headerIssues(fields, mapping, positions);
     found.forEach((issue) => issues.add({ path: '', line, ...issue }));

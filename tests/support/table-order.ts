@@ -47,6 +47,7 @@ export const order = ({ stars, isOpen, ...rest }: TestOrder): CheckOrder => ({
   kind: 'standard',
   tolerance: 2,
   mapping: {},
+  remembered: [],
   frames: [loggedFrame({ number: 1 }), loggedFrame({ number: 2, band: 'B' })],
   standards: standards(stars ?? [{ name: '114-750', ra: 340.436, dec: 1.21 }]),
   night: {
@@ -54,6 +55,8 @@ export const order = ({ stars, isOpen, ...rest }: TestOrder): CheckOrder => ({
     endsAt: Date.UTC(2026, 10, 4, 12),
     isOpen: isOpen ?? true,
     epoch_years: 26.84,
+    bands: ['U', 'B', 'V', 'R', 'I'],
+    telescope: 'Larkspur 0.8 m',
   },
   ...rest,
 });

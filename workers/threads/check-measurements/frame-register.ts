@@ -28,6 +28,10 @@ export interface RegisteredFrame {
   readonly line: number;
 }
 
+/** A frame in a row that is to be loaded: its id; −1, −2, … for those that are to be created, which follow the logged ones. */
+export const frameField = (id: number | null | undefined, index: number, nLogged: number): number =>
+  id ?? nLogged - index - 1;
+
 export type FrameIssue = IssueText & { readonly column: MeasurementColumn };
 
 export interface FrameRegister {
@@ -62,7 +66,7 @@ export function frameRegister(logged: readonly LoggedFrame[], night: NightBounds
 
   /** The frame of a number or file name; undefined when there is none, a text when it could be two. */
   function lookUp(text: string): number | IssueText | undefined {
-    const number = /^\d{1,9}$/.test(text) ? byNumber.get(Number(text)) : undefined;
+    const number = /^\d{1,7}$/.test(text) ? byNumber.get(Number(text)) : undefined;
     const file = byFile.get(text);
     if (number !== undefined && file !== undefined && number !== file) {
       const message = `This is the number of one frame and the file name of another (frame ${frames[file]?.number}).`;
@@ -99,7 +103,7 @@ export function frameRegister(logged: readonly LoggedFrame[], night: NightBounds
   function create(row: FrameRow): number | readonly FrameIssue[] {
     const issues = whyNotCreated(row, night, frames);
     if (issues.length > 0) return issues;
-    const number = /^[1-9]\d{0,8}$/.test(row.frame) ? Number(row.frame) : null;
+    const number = /^[1-9]\d{0,6}$/.test(row.frame) ? Number(row.frame) : null;
     const frame: RegisteredFrame = {
       id: null,
       number,
@@ -210,6 +214,10 @@ function whyNotCreated(
       message: `No star is measured on a ${row.type}.`,
       remedy: 'Write standard or target.',
     });
+  }
+  if (row.band !== '' && !night.bands.includes(row.band)) {
+    const message = `${night.telescope} has no filter for this band.`;
+    issues.push({ column: 'band', message, remedy: `Write one of ${night.bands.join(', ')}.` });
   }
   const twin = frames.find(
     (one) => one.band === row.band && Math.abs(one.utcStart - row.utcStart) <= sameStart_ms,

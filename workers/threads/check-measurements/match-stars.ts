@@ -1,6 +1,6 @@
 import { directionOf, placeOf } from '@/lib/astro/vector';
 import { standardMatcher, type StandardMatch } from '@/lib/photometry/match-standards';
-import type { RegisteredFrame } from './frame-register';
+import { frameField, type RegisteredFrame } from './frame-register';
 import type { CheckOrder, LoadPlan, NewFrame } from './messages';
 import { numberField, rowFile, textField } from './row-files';
 import type { StarRegister } from './star-register';
@@ -26,7 +26,7 @@ export function matchStars(
     stars: written[0] ?? { file: '', rows: 0 },
     matchedRows,
     newFrames: newFrames(order, stars, { frames, matches }),
-    usedFrames: usedFrames(stars, frames),
+    usedFrames: usedFrames(order, stars, frames),
   };
 }
 
@@ -74,7 +74,7 @@ type Hit = Extract<StandardMatch, { kind: 'matched' }>;
 const isBetter = (one: Hit, other: Hit): boolean =>
   one.by === other.by ? one.separation < other.separation : one.by === 'name';
 
-/** star_no, name, ra, decl, n_rows, standard_id, matched_by, separation, reason */
+/** star_no, name, ra, decl, n_rows, first_line, standard_id, matched_by, separation, reason */
 function starLine(
   order: CheckOrder,
   stars: StarRegister,
@@ -88,6 +88,7 @@ function starLine(
     numberField(stars.ra(star)),
     numberField(stars.dec(star)),
     stars.rowsOf(star),
+    stars.firstLine(star),
     hit ? (order.standards.ids[hit.standard] ?? '\\N') : '\\N',
     hit?.by ?? '\\N',
     numberField(hit?.separation ?? NaN),
@@ -95,10 +96,20 @@ function starLine(
   ].join('\t');
 }
 
-function usedFrames(stars: StarRegister, frames: readonly RegisteredFrame[]): readonly number[] {
-  const used = new Set<number>();
-  for (let row = 0; row < stars.rows(); row += 1) used.add(stars.frameOfRow(row));
-  return [...used].flatMap((index) => frames[index]?.id ?? []).sort((a, b) => a - b);
+function usedFrames(
+  order: CheckOrder,
+  stars: StarRegister,
+  frames: readonly RegisteredFrame[],
+): LoadPlan['usedFrames'] {
+  const rows = new Map<number, number>();
+  for (let row = 0; row < stars.rows(); row += 1) {
+    const frame = stars.frameOfRow(row);
+    rows.set(frame, (rows.get(frame) ?? 0) + 1);
+  }
+  return [...rows].map(([index, count]) => ({
+    frame: frameField(frames[index]?.id, index, order.frames.length),
+    rows: count,
+  }));
 }
 
 interface Seen {

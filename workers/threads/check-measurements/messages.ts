@@ -24,10 +24,17 @@ export interface CheckOrder {
   readonly kind: MeasurementKind;
   /** [arcsec] */
   readonly tolerance: number;
+  /** As the uploader gave it; where empty, that remembered for the same headers counts. */
   readonly mapping: ColumnMapping;
+  readonly remembered: readonly RememberedMapping[];
   readonly frames: readonly LoggedFrame[];
   readonly standards: StandardTable & { readonly ids: Int32Array; readonly fields: readonly string[] };
   readonly night: NightBounds;
+}
+
+export interface RememberedMapping {
+  readonly headers: readonly string[];
+  readonly mapping: ColumnMapping;
 }
 
 export interface NightBounds {
@@ -38,6 +45,9 @@ export interface NightBounds {
   readonly isOpen: boolean;
   /** Julian years since 2000.0 */
   readonly epoch_years: number;
+  /** Bands that the telescope has filters for. */
+  readonly bands: readonly Band[];
+  readonly telescope: string;
 }
 
 /** A frame that the log does not have and the table tells enough of. */
@@ -76,8 +86,8 @@ export interface LoadPlan {
   readonly matchedRows: number;
   /** In the rows, a frame that is to be created stands as −1 for the first of these, −2 for the second, … */
   readonly newFrames: readonly NewFrame[];
-  /** Ids of the logged frames that the rows name. */
-  readonly usedFrames: readonly number[];
+  /** The frames that the rows name: ids of the log, or −1, −2, … as above, with their numbers of rows. */
+  readonly usedFrames: readonly { readonly frame: number; readonly rows: number }[];
 }
 
 export type CheckMessage =

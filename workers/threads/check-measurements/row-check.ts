@@ -3,7 +3,7 @@ import type { IssueList } from '@/lib/formats/issue-list';
 import { keptColumns, type MeasurementRow } from '@/lib/formats/measurement-row';
 import type { MeasurementTable } from '@/lib/formats/measurement-table';
 import { magnitudeErrorOfFlux, magnitudeOfFlux } from '@/lib/photometry/instrumental-magnitude';
-import type { FrameRegister } from './frame-register';
+import { frameField, type FrameRegister } from './frame-register';
 import { numberField, type RowFile } from './row-files';
 import type { StarRegister } from './star-register';
 
@@ -51,7 +51,7 @@ export function rowCheck({ frames, stars, nLogged, report, issues, slices }: Row
     if (star === null || issues.total() > 0) return; // nothing will be loaded: only faults are still looked for
     const mag = needsExposure ? magnitudeOfFlux(row.flux, exposure_s) : row.mag;
     const err = Number.isNaN(row.err) ? magnitudeErrorOfFlux(row.flux, row.fluxErr) : row.err;
-    slices.write(rowLine(row, { frame: id ?? nLogged - frame - 1, star, mag, err, flag }));
+    slices.write(rowLine(row, { frame: frameField(id, frame, nLogged), star, mag, err, flag }));
   }
 
   function starOf(row: MeasurementRow, frame: number): number | null {
@@ -99,7 +99,6 @@ function valueOf(row: MeasurementRow, column: MeasurementColumn): string {
 }
 
 interface RowValues {
-  /** Id of a logged frame; −1, −2, … for those that are to be created. */
   readonly frame: number;
   /** From 0. */
   readonly star: number;

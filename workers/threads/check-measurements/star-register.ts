@@ -20,6 +20,8 @@ export interface StarRegister {
   readonly ra: (star: number) => number;
   readonly dec: (star: number) => number;
   readonly rowsOf: (star: number) => number;
+  /** Line in which the star stands first. */
+  readonly firstLine: (star: number) => number;
   readonly frameOfRow: (row: number) => number;
   readonly starOfRow: (row: number) => number;
 }
@@ -27,13 +29,14 @@ export interface StarRegister {
 export function starRegister(tolerance_arcsec: number): StarRegister {
   const names: string[] = [];
   const [ra, dec] = [growingArray(Float64Array), growingArray(Float64Array)];
-  const rowsOf = growingArray(Int32Array);
+  const [rowsOf, firstLine] = [growingArray(Int32Array), growingArray(Int32Array)];
   const measured = measuredRows();
   const newStar = (name: string, row: StarRow): number => {
     names.push(name);
     ra.push(row.ra);
     dec.push(row.dec);
     rowsOf.push(0);
+    firstLine.push(row.line);
     return names.length - 1;
   };
   const named = namedStars(newStar);
@@ -61,6 +64,7 @@ export function starRegister(tolerance_arcsec: number): StarRegister {
     ra: ra.get,
     dec: dec.get,
     rowsOf: rowsOf.get,
+    firstLine: firstLine.get,
     frameOfRow: measured.frameOf,
     starOfRow: measured.starOf,
   };

@@ -1,4 +1,4 @@
-import type { ColumnMapping } from '@/lib/contracts/measurement-columns';
+import { headersKey, type ColumnMapping } from '@/lib/contracts/measurement-columns';
 import type { Issue } from '@/lib/faults/fault';
 import { csvReader } from '@/lib/formats/csv-reader';
 import { foreignFileKind } from '@/lib/formats/file-kind';
@@ -33,7 +33,7 @@ export function tableCheck(order: CheckOrder): TableCheck {
   let atStart = true;
   let isForeign = false;
 
-  const table = measurementTable(order.mapping, issues, {
+  const table = measurementTable((headers) => mappingOf(order, headers), issues, {
     header: (found) => {
       columns = Object.fromEntries(found);
     },
@@ -86,6 +86,13 @@ export function tableCheck(order: CheckOrder): TableCheck {
   }
 
   return { push, rows: table.rows, finish };
+}
+
+/** What the uploader said counts; failing that, what somebody said once of a table with the same headers. */
+function mappingOf(order: CheckOrder, headers: readonly string[]): ColumnMapping {
+  if (Object.keys(order.mapping).length > 0) return order.mapping;
+  const wanted = headersKey(headers);
+  return order.remembered.find((one) => headersKey(one.headers) === wanted)?.mapping ?? {};
 }
 
 /** By line: a fault of a whole row may have been found later than those of the next row's fields. */

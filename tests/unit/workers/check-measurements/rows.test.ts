@@ -19,13 +19,25 @@ describe('rows that are to be loaded', () => {
       ['2', '1002', '2', '-7.25', '0.002', ...Array<string>(8).fill('\\N')],
     ]);
     expect(stars).toEqual([
-      ['1', '114-750', '340.436', '1.21', '1', '500', 'name', expect.stringMatching(/^0(\.0+\d*)?$|e-/), ''],
+      [
+        '1',
+        '114-750',
+        '340.436',
+        '1.21',
+        '1',
+        '3',
+        '500',
+        'name',
+        expect.stringMatching(/^0(\.0+\d*)?$|e-/),
+        '',
+      ],
       [
         '2',
         'Other',
         '\\N',
         '\\N',
         '1',
+        '4',
         '\\N',
         '\\N',
         '\\N',
@@ -33,7 +45,14 @@ describe('rows that are to be loaded', () => {
       ],
     ]);
     expect(flags).toEqual([['1', 'edge']]);
-    expect(result.load).toMatchObject({ matchedRows: 1, newFrames: [], usedFrames: [1001, 1002] });
+    expect(result.load).toMatchObject({
+      matchedRows: 1,
+      newFrames: [],
+      usedFrames: [
+        { frame: 1001, rows: 1 },
+        { frame: 1002, rows: 1 },
+      ],
+    });
   });
 
   it('read other headers by their mapping', () => {
@@ -42,6 +61,20 @@ describe('rows that are to be loaded', () => {
     expect(result.faults).toEqual([]);
     expect(rows[0]?.slice(3, 5)).toEqual(['12', '0.1']);
     expect(result.columns).toEqual({ frame: 'IMAGE', star: 'star', inst_mag: 'mag_aper', inst_err: 'Err' });
+  });
+
+  it('read remembered headers by the mapping that somebody saved for them, unless the uploader gives another', () => {
+    const remembered = [
+      {
+        headers: ['Image', 'Name', 'M', 'E', 'N'],
+        mapping: { frame: 'image', star: 'name', inst_mag: 'm', inst_err: 'e' },
+      },
+    ];
+    const content = 'IMAGE,name,m,e,n\n1,A,12,0.1,0.2\n';
+    expect(checkTable(content, { remembered }).rows[0]?.slice(3, 5)).toEqual(['12', '0.1']);
+    const mapping = { frame: 'image', star: 'name', inst_mag: 'm', inst_err: 'n' };
+    expect(checkTable(content, { remembered, mapping }).rows[0]?.slice(3, 5)).toEqual(['12', '0.2']);
+    expect(checkTable(`x,${content}`, { remembered }).result.nFaults).toBeGreaterThan(0);
   });
 
   it('turn counts into magnitudes with the exposure of the frame', () => {
@@ -104,7 +137,7 @@ describe('the stars of a table', () => {
   it('nameless rows of several frames are one star within the tolerance, across right ascension 0 too', () => {
     const table = 'frame,ra,dec,inst_mag,inst_err\n1,359.9999,0,12,0.1\n2,0.0001,0,12,0.1\n';
     expect(checkTable(table, { stars: near }).stars).toEqual([
-      ['1', '', '359.9999', '0', '2', '500', 'position', '0', ''],
+      ['1', '', '359.9999', '0', '2', '2', '500', 'position', '0', ''],
     ]);
   });
 
@@ -119,7 +152,7 @@ describe('the stars of a table', () => {
     const table =
       'frame,star,ra,dec,inst_mag,inst_err\n1,a,0.0002,0,12,0.1\n1,b,359.99995,0,12,0.1\n2,a,0.0002,0,12,0.1\n';
     const { stars, result } = checkTable(table, { stars: near });
-    expect(stars.map((fields) => [fields[1], fields[6], fields[8]])).toEqual([
+    expect(stars.map((fields) => [fields[1], fields[7], fields[9]])).toEqual([
       ['a', '\\N', 'On one frame two stars of the table match P; the other lies nearer, at 0.2″.'],
       ['b', 'position', ''],
     ]);
@@ -128,14 +161,14 @@ describe('the stars of a table', () => {
 
   it('the name counts before the position', () => {
     const table = 'frame,star,ra,dec,inst_mag,inst_err\n1,b,359.9999,0,12,0.1\n1,P,0.0002,0,12,0.1\n';
-    expect(checkTable(table, { stars: near }).stars.map((fields) => fields[6])).toEqual(['\\N', 'name']);
+    expect(checkTable(table, { stars: near }).stars.map((fields) => fields[7])).toEqual(['\\N', 'name']);
   });
 
   it('of a table of targets are not looked for among the standards', () => {
     const { stars, result } = checkTable('frame,star,inst_mag,inst_err\n1,114-750,12,0.1\n', {
       kind: 'target',
     });
-    expect(stars).toEqual([['1', '114-750', '\\N', '\\N', '1', '\\N', '\\N', '\\N', '']]);
+    expect(stars).toEqual([['1', '114-750', '\\N', '\\N', '1', '2', '\\N', '\\N', '\\N', '']]);
     expect(result.load?.matchedRows).toBe(0);
   });
 });

@@ -64,25 +64,30 @@ export function startRunner(options: RunnerOptions): Runner {
     });
   };
 
-  const takeWork = async (): Promise<void> => {
+  /** Whether the queue was asked at all: with every place taken there is nothing to ask for. */
+  const takeWork = async (): Promise<boolean> => {
+    let isAsked = false;
     for (const [name, lane] of Object.entries(lanes)) {
       const kinds = kindsOf(name as Lane, handlers);
       const limit = lane.concurrency - lane.size - lane.pending;
+      if (limit < 1 || kinds.length === 0) continue;
       const asked_ms = performance.now();
       const leases = await leaseJobs({ owner, kinds, limit, lease_s: options.lease_s });
       for (const lease of leases) start(lease, asked_ms);
+      isAsked = true;
     }
+    return isAsked;
   };
 
   let tidied_ms = -Infinity;
   const look = loop(looking.signal, async () => {
     try {
-      await takeWork();
+      const isAsked = await takeWork();
       if (handlers.tidy && performance.now() - tidied_ms > tidyEvery_ms) {
         await scheduleTidy();
         tidied_ms = performance.now();
       }
-      outage.worked();
+      if (isAsked) outage.worked();
     } catch (error) {
       // Whatever keeps it from the queue, the runner must outlive it.
       outage.failed(error);

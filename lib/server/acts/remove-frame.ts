@@ -23,7 +23,7 @@ export async function removeFrame(
     await lockOpenNight(tx, night);
     const row = await findFrame(scope, night.id, ids.frame, tx);
     if (!row) throw new Fault('not-found', 'There is no such frame in this night.');
-    const set = await setThatUses(tx, night.id, row.id);
+    const set = await setThatUses(tx, row.id);
     if (set !== null) {
       throw new Fault(
         'conflict',

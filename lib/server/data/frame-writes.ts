@@ -135,22 +135,15 @@ export async function framesInTheWay(
   );
 }
 
-/** Name of a measurement set with a measurement on the frame, or null. Looks through the night's own sets only. */
-export async function setThatUses(tx: Tx, nightId: number, frameId: number): Promise<string | null> {
-  const sets = await select<{ id: number; name: string }>(
-    'SELECT id, name FROM measurement_sets WHERE night_id = :nightId ORDER BY id',
-    { nightId },
+/** Name of a measurement set with measurements on the frame, or null. */
+export async function setThatUses(tx: Tx, frameId: number): Promise<string | null> {
+  const set = await selectOne<{ name: string }>(
+    `SELECT s.name FROM measurement_set_frames u JOIN measurement_sets s ON s.id = u.set_id
+      WHERE u.frame_id = :frameId ORDER BY s.id LIMIT 1`,
+    { frameId },
     tx,
   );
-  for (const { id, name } of sets) {
-    const used = await selectOne<{ one: number }>(
-      'SELECT 1 AS one FROM measurements WHERE set_id = :id AND frame_id = :frameId LIMIT 1',
-      { id, frameId },
-      tx,
-    );
-    if (used) return name;
-  }
-  return null;
+  return set?.name ?? null;
 }
 
 interface ToldFrame {

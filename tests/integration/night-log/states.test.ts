@@ -7,6 +7,7 @@ import { openNight } from '@/lib/server/acts/open-night';
 import { reopenNight } from '@/lib/server/acts/reopen-night';
 import { execute, select } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
+import { faultOf } from '../../support/fault-of';
 import { newCaller, newLogWorld } from '../../support/log-world';
 
 let noor: PersonCaller;
@@ -28,17 +29,6 @@ beforeAll(async () => {
 const nextDate = (): string => `2026-09-${String(day++).padStart(2, '0')}`;
 const openTonight = (caller = noor): Promise<Night> =>
   openNight(caller, { telescope: 'larkspur', date: nextDate() });
-
-/** The fault that an act ends with; anything else fails the test. */
-async function faultOf(work: Promise<unknown>): Promise<Fault> {
-  try {
-    await work;
-  } catch (error) {
-    if (isFault(error)) return error;
-    throw error;
-  }
-  throw new Error('The act went through.');
-}
 
 async function auditOf(
   subjectId: string,

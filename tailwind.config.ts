@@ -42,12 +42,12 @@ const config: Config = {
       mono: ['"IBM Plex Mono"', 'ui-monospace', 'monospace'],
     },
     fontSize: {
-      fine: ['11px', '1.35'],
-      small: ['12px', '1.4'],
-      table: ['13px', '1.45'],
-      body: ['14px', '1.45'],
-      lead: ['17px', '1.35'],
-      title: ['22px', '1.25'],
+      fine: ['0.6875rem', '1.35'],
+      small: ['0.75rem', '1.4'],
+      table: ['0.8125rem', '1.45'],
+      body: ['0.875rem', '1.45'],
+      lead: ['1.0625rem', '1.35'],
+      title: ['1.375rem', '1.25'],
     },
     screens: { sm: '480px', md: '760px', lg: '1040px', xl: '1400px' },
     extend: {

@@ -6,6 +6,7 @@ import '@fontsource/ibm-plex-mono/500.css';
 import '@fontsource/ibm-plex-sans/400.css';
 import '@fontsource/ibm-plex-sans/500.css';
 import '@fontsource/ibm-plex-sans/600.css';
+import { last_hours } from '@/lib/astro/sidereal-time';
 import { lightCookie, lightOf } from '@/lib/contracts/light';
 import { currentCaller } from '@/lib/server/identity/current-caller';
 import { shellState } from '@/lib/server/reads/shell';
@@ -49,11 +50,16 @@ export default async function RootLayout({ children }: { readonly children: Reac
   const [light, now, caller] = await Promise.all([chosenLight(), presentTime(), currentCaller()]);
   const { site, roles, isDemo } = await shellState(caller);
   const person = caller && { name: caller.name, email: caller.email, roles, menu: <PersonMenu /> };
+  const clocks = site && {
+    name: site.name,
+    timezone: site.timezone,
+    siderealAtServerNow_hours: last_hours(now, site.longitude),
+  };
   const places = caller ? placesFor([...caller.roles], isDemo) : [];
   return (
     <html lang="en-GB" data-light={light} suppressHydrationWarning>
       <body>
-        <Shell light={light} places={places} person={person} site={site} serverNow={now}>
+        <Shell light={light} places={places} person={person} site={clocks} serverNow={now}>
           {children}
         </Shell>
       </body>

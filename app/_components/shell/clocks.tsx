@@ -1,14 +1,15 @@
 'use client';
 
-import { useEffect, useState } from 'react';
+import { formatHours } from '@/lib/astro/format-sexagesimal';
+import { useNow } from '../hooks/use-now';
 import { formatClock, formatLocalMinutes } from '../ui/format-time';
 
 /** What the clocks need to know of a place. */
 export interface ClockSite {
   readonly name: string;
   readonly timezone: string;
-  /** deg, east positive */
-  readonly longitude: number;
+  /** Local apparent sidereal time when the server made the page, hours. */
+  readonly siderealAtServerNow_hours: number;
 }
 
 interface ClocksProps {
@@ -17,21 +18,8 @@ interface ClocksProps {
   readonly serverNow: number;
 }
 
-/** The present second, from the server's first figure on; ticks on the full second. */
-function useNow(serverNow: number): number {
-  const [now, setNow] = useState(serverNow);
-  useEffect(() => {
-    let timer: ReturnType<typeof setTimeout>;
-    const tick = () => {
-      const present = Date.now();
-      setNow(present);
-      timer = setTimeout(tick, 1000 - (present % 1000));
-    };
-    tick();
-    return () => clearTimeout(timer);
-  }, []);
-  return now;
-}
+/** Hours of the stars' day per millisecond of the clock. */
+const siderealRate_hours = 1.002_737_909_35 / 3_600_000;
 
 /** UTC first, the place's own time and the stars' second. */
 export function Clocks({ site, serverNow }: ClocksProps) {
@@ -46,9 +34,20 @@ export function Clocks({ site, serverNow }: ClocksProps) {
         <b className="font-mono font-medium text-ink">{formatClock(now)}</b> UTC
       </span>
       {site === null ? null : (
-        <span>
-          <span className="font-mono">{formatLocalMinutes(now, site.timezone)}</span> {site.name}
-        </span>
+        <>
+          <span>
+            <span className="font-mono">{formatLocalMinutes(now, site.timezone)}</span> {site.name}
+          </span>
+          <span>
+            <span className="font-mono">
+              {formatHours(site.siderealAtServerNow_hours + (now - serverNow) * siderealRate_hours).slice(
+                0,
+                5,
+              )}
+            </span>{' '}
+            sidereal
+          </span>
+        </>
       )}
     </p>
   );

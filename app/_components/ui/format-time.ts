@@ -70,9 +70,3 @@ export function formatLocalMinutes(instant: Instant, timeZone: string): string {
     timeZone,
   }).format(new Date(instant));
 }
-
-/** Sidereal or other hours of a day as a clock shows them: 4.3 as `04:18`. */
-export function formatHours(hours: number): string {
-  const minutes = Math.floor((((hours % 24) + 24) % 24) * 60);
-  return `${String(Math.floor(minutes / 60)).padStart(2, '0')}:${String(minutes % 60).padStart(2, '0')}`;
-}

@@ -35,11 +35,15 @@ export function StateTag({ state, tone = tones[state] ?? 'plain' }: StateTagProp
   return (
     <span
       className={classNames(
-        'inline-flex items-center gap-1 rounded-tag border px-2 py-px text-small font-medium whitespace-nowrap',
+        'inline-block rounded-tag border px-2 py-px text-small font-medium whitespace-nowrap',
         looks[tone],
       )}
     >
-      {tone === 'plain' ? null : <ToneMark tone={tone} />}
+      {tone === 'plain' ? null : (
+        <>
+          <ToneMark tone={tone} />{' '}
+        </>
+      )}
       {state}
     </span>
   );

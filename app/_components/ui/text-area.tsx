@@ -11,7 +11,7 @@ export function TextArea({ mono = false, className, rows = 4, ...rest }: TextAre
     <textarea
       {...rest}
       rows={rows}
-      className={classNames(controlClass, 'resize-y', mono && 'font-mono', className)}
+      className={classNames(controlClass, 'field-sizing-content resize-none', mono && 'font-mono', className)}
     />
   );
 }

@@ -3,7 +3,6 @@ import {
   formatClock,
   formatDateInWords,
   formatDuration,
-  formatHours,
   formatInstant,
   formatLocalMinutes,
   formatMinutes,
@@ -33,14 +32,5 @@ describe('a time', () => {
     [0, '0 h 00 min'],
   ])('lost, of %s minutes, is %s', (minutes, text) => {
     expect(formatDuration(minutes)).toBe(text);
-  });
-
-  it.each([
-    [4.3, '04:18'],
-    [23.9999, '23:59'],
-    [24, '00:00'],
-    [-1, '23:00'],
-  ])('in hours %s shows as %s on a clock', (hours, text) => {
-    expect(formatHours(hours)).toBe(text);
   });
 });

@@ -1,10 +1,13 @@
+import type { SpawnOptions } from 'node:child_process';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 import type { DatabaseAddress } from '@/db/connection';
-import { runChild } from './child';
+import { runChild, startChild, type Child } from './child';
 import { databaseEnvironment } from './environment';
 
 export const root = path.resolve(path.dirname(fileURLToPath(import.meta.url)), '../..');
+
+type Variables = Readonly<Record<string, string>>;
 
 /** Arguments that run one of the project's TypeScript files the way the start script does. */
 export const script = (file: string, ...args: readonly string[]): readonly string[] => [
@@ -15,11 +18,18 @@ export const script = (file: string, ...args: readonly string[]): readonly strin
   ...args,
 ];
 
-const run = (database: DatabaseAddress, args: readonly string[], extra: Record<string, string> = {}) =>
-  runChild(process.execPath, args, {
-    cwd: root,
-    env: { ...process.env, NODE_ENV: 'production', ...databaseEnvironment(database), ...extra },
-  });
+const optionsFor = (database: DatabaseAddress, env: Variables): SpawnOptions => ({
+  cwd: root,
+  env: { ...process.env, NODE_ENV: 'production', ...databaseEnvironment(database), ...env },
+});
+
+const run = (database: DatabaseAddress, args: readonly string[], env: Variables = {}): Promise<string> =>
+  runChild(process.execPath, args, optionsFor(database, env));
+
+/** Starts one of the project's programs that run until they are stopped. */
+export function startProgram(database: DatabaseAddress, file: string, env: Variables): Child {
+  return startChild(process.execPath, script(file), optionsFor(database, env));
+}
 
 /** Applies every migration to an empty database. */
 export async function migrateDatabase(database: DatabaseAddress): Promise<void> {
@@ -27,7 +37,7 @@ export async function migrateDatabase(database: DatabaseAddress): Promise<void> 
 }
 
 /** Loads the reference data, then the demo, as the start script does. */
-export async function seedDatabase(database: DatabaseAddress, env: Record<string, string>): Promise<void> {
+export async function seedDatabase(database: DatabaseAddress, env: Variables): Promise<void> {
   await run(database, script('db/seeders/main.ts', 'reference'), env);
   await run(database, script('db/seeders/main.ts', 'demo'), env);
 }

@@ -2,7 +2,9 @@ import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import type { TestProject } from 'vitest/node';
-import { migrateDatabase, seedDatabase } from './scripts';
+import { stopChild } from './child';
+import { freePort } from './free-port';
+import { migrateDatabase, seedDatabase, startProgram } from './scripts';
 import { startApplication } from './server';
 import { returnDatabaseServer, takeDatabaseServer } from './shared-database-server';
 
@@ -13,9 +15,17 @@ export default async function setup(project: TestProject): Promise<() => Promise
   const server = await takeDatabaseServer();
   const database = await server.createDatabase(`evenfall_${project.name}`);
   const dataFolder = await mkdtemp(path.join(tmpdir(), 'evenfall-data-'));
-  const env = { EVENFALL_DEMO: '1', DEMO_PASSWORD: demoPassword, DATA_DIR: dataFolder };
+  const mailPort = String(await freePort());
+  const env = {
+    EVENFALL_DEMO: '1',
+    DEMO_PASSWORD: demoPassword,
+    DATA_DIR: dataFolder,
+    MAIL_CATCHER_PORT: mailPort,
+    SMTP_URL: `smtp://127.0.0.1:${mailPort}`,
+  };
   await migrateDatabase(database);
   await seedDatabase(database, env);
+  const catcher = startProgram(database, 'workers/mail-catcher.ts', env);
   const application = await startApplication({ database, dataFolder, env });
 
   project.provide('baseUrl', application.baseUrl);
@@ -24,6 +34,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
   project.provide('demoPassword', demoPassword);
   return async () => {
     await application.stop();
+    await stopChild(catcher);
     await rm(dataFolder, { recursive: true, force: true });
     await returnDatabaseServer();
   };

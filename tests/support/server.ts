@@ -54,6 +54,8 @@ export async function startApplication(options: ApplicationOptions): Promise<Run
       PORT: String(port),
       BIND: '127.0.0.1',
       BASE_URL: baseUrl,
+      // Where nobody listens: a test's mail goes nowhere unless the test says where.
+      SMTP_URL: 'smtp://127.0.0.1:9',
       ...options.env,
     },
   });

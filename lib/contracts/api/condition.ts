@@ -96,7 +96,7 @@ export const ConditionCorrection = z
   .refine((patch) => Object.keys(patch).length > 0, {
     message: 'Nothing to change: send at least one field.',
   })
-  .meta({ id: 'ConditionCorrection' });
+  .meta({ id: 'ConditionCorrection', example: { cloud: 3 } });
 export type ConditionCorrection = z.infer<typeof ConditionCorrection>;
 
 export const ConditionParams = NightParams.extend({

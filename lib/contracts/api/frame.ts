@@ -217,7 +217,10 @@ export const FrameCorrection = z
   .refine((patch) => Object.keys(patch).some((key) => key !== 'version' && key !== 'reason'), {
     message: 'Nothing to change: send at least one field beside the version.',
   })
-  .meta({ id: 'FrameCorrection' });
+  .meta({
+    id: 'FrameCorrection',
+    example: { exposure: 90, version: 1, reason: 'exposure time mistyped' },
+  });
 export type FrameCorrection = z.infer<typeof FrameCorrection>;
 
 export const NextFrame = z

@@ -74,7 +74,7 @@ export const OpenNight = z
     date: CalendarDate.meta({ description: 'Local date of the evening' }),
     observers: Observers.optional().meta({ description: 'Ids of the observers; you, if you name nobody' }),
   })
-  .meta({ id: 'OpenNight' });
+  .meta({ id: 'OpenNight', example: { telescope: 'larkspur', date: '2026-11-03' } });
 export type OpenNight = z.infer<typeof OpenNight>;
 
 const version = z.number().int().optional().meta({
@@ -108,7 +108,10 @@ export const PatchNight = z
       wrong('summary', 'cannot be changed while the night is being opened again: send it afterwards');
     }
   })
-  .meta({ id: 'PatchNight' });
+  .meta({
+    id: 'PatchNight',
+    example: { state: 'closed', summary: 'Thin cirrus until 23 UTC, clear afterwards.' },
+  });
 export type PatchNight = z.infer<typeof PatchNight>;
 
 export const CloseNight = z.strictObject({ summary: Summary.optional(), version });

@@ -56,7 +56,8 @@ const methods = ['get', 'post', 'put', 'patch', 'delete'] as const;
 
 /** The OpenAPI document as the reference page shows it. */
 export function referenceOf(document: OpenApiDocument): Reference {
-  const operations = Object.entries(document.paths ?? {}).flatMap(([path, item]) =>
+  const paths = Object.entries(document.paths ?? {}).sort(([a], [b]) => (a < b ? -1 : 1));
+  const operations = paths.flatMap(([path, item]) =>
     methods.flatMap((method) => {
       const operation = item[method];
       return operation
@@ -139,6 +140,10 @@ function fieldsOf(schema: Schema): readonly ReferenceField[] {
     in: '',
     isRequired: schema.required?.includes(name) ?? false,
     type: typeWords(field),
-    description: (!isReference(field) && field.description) || '',
+    description: isReference(field) ? '' : ownDescription(field),
   }));
 }
+
+/** What a type says already is not said again. */
+const ownDescription = ({ description = '' }: oas31.SchemaObject): string =>
+  description === 'Instant, ISO 8601 UTC with Z' || description === 'Opaque identifier' ? '' : description;

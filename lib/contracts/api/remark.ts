@@ -23,7 +23,7 @@ export type RemarkInput = z.infer<typeof RemarkInput>;
 export const RemarkCorrection = z
   .strictObject({ utc: Utc.optional(), text: text.optional() })
   .refine((patch) => Object.keys(patch).length > 0, { message: 'Nothing to change: send utc or text.' })
-  .meta({ id: 'RemarkCorrection' });
+  .meta({ id: 'RemarkCorrection', example: { text: 'Dome slit at 35° because of wind from the north.' } });
 export type RemarkCorrection = z.infer<typeof RemarkCorrection>;
 
 export const Remark = z

@@ -24,7 +24,7 @@ export const TimeLossCorrection = z
   .refine((patch) => Object.keys(patch).length > 0, {
     message: 'Nothing to change: send at least one field.',
   })
-  .meta({ id: 'TimeLossCorrection' });
+  .meta({ id: 'TimeLossCorrection', example: { minutes: 30 } });
 export type TimeLossCorrection = z.infer<typeof TimeLossCorrection>;
 
 export const TimeLoss = z

@@ -26,7 +26,7 @@ export function typeWords(schema: Schema): readonly TypeWord[] {
   const [type] = types.filter((each) => each !== 'null');
   if (type === 'array')
     return [word('list of '), ...typeWords(own.items ?? {}), word(counts(own)), ...orNull];
-  if (type === 'object') return [word(own.properties ? fieldNames(own) : 'object'), ...orNull];
+  if (type === 'object') return [...objectWords(own), ...orNull];
   return [word(`${scalar(own, type)}${range(own)}`), ...orNull];
 }
 
@@ -36,8 +36,16 @@ const choices = (values: readonly unknown[]): string =>
     .map(String)
     .join(' · ');
 
-const fieldNames = (schema: oas31.SchemaObject): string =>
-  `{${Object.keys(schema.properties ?? {}).join(', ')}}`;
+/** An object without a name of its own by its fields; a page of a list by what it lists. */
+function objectWords({ properties }: oas31.SchemaObject): readonly TypeWord[] {
+  if (!properties) return [word('object')];
+  const names = Object.keys(properties);
+  const items = properties['items'];
+  if (items && names.length === 2 && 'next' in properties) {
+    return [word('{items: '), ...typeWords(items), word(', next}')];
+  }
+  return [word(`{${names.join(', ')}}`)];
+}
 
 function scalar(schema: oas31.SchemaObject, type: string | undefined): string {
   if (schema.format === 'date-time') return 'instant, ISO 8601 UTC with Z';

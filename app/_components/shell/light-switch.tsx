@@ -58,7 +58,7 @@ export function LightSwitch({ initial, isSignedIn }: LightSwitchProps) {
           name="light"
           value={each}
           aria-pressed={each === light}
-          className="min-h-6 border border-l-0 border-rule-strong px-2 text-small text-ink-2 first:rounded-l-control first:border-l last:rounded-r-control hover:text-ink focus-visible:relative focus-visible:z-10 aria-pressed:bg-accent aria-pressed:font-medium aria-pressed:text-accent-ink"
+          className="min-h-6 border border-l-0 border-rule-strong px-2 text-small text-ink-2 last:rounded-r-control first-of-type:rounded-l-control first-of-type:border-l hover:text-ink focus-visible:relative focus-visible:z-10 aria-pressed:bg-accent aria-pressed:font-medium aria-pressed:text-accent-ink"
         >
           {lightNames[each]}
         </button>

@@ -13,7 +13,10 @@ export interface Place {
 }
 
 /** Every place of the bar, in its order. A place is added together with its page: a link without one does not compile. */
-export const places: readonly Place[] = [];
+export const places: readonly Place[] = [
+  { label: 'Tonight', href: '/', part: 'bar' },
+  { label: 'Nights', href: '/nights', part: 'bar' },
+];
 
 /** The places that a person sees. */
 export function placesFor(roles: readonly ObservatoryRole[], isDemo: boolean): readonly Place[] {

@@ -39,6 +39,16 @@ export function MarkPaths({ marks, size }: { readonly marks: readonly Mark[]; re
     paths.set(key, path);
   }
   return [...paths].map(([key, { row, shape, d }]) => (
-    <path key={key} d={d} strokeWidth="1.4" className={classNames('stroke-sky-ink', look(shape, row))} />
+    <path
+      key={key}
+      d={d}
+      strokeWidth="1.4"
+      className={classNames(
+        'stroke-sky-ink',
+        // One red for all: a dark edge keeps neighbours apart.
+        shape === 'full' && 'dark-site:stroke-sky-night',
+        look(shape, row),
+      )}
+    />
   ));
 }

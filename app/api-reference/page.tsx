@@ -30,7 +30,7 @@ export default async function ApiReferencePage() {
           </a>
         </span>
       </PageHead>
-      <div className="grid gap-4">
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-4">
         <Basics address={address} />
         <ReferenceView sections={reference.sections} />
         <SchemaList schemas={reference.schemas} />

@@ -1,4 +1,5 @@
 import type { Metadata } from 'next';
+import Link from 'next/link';
 import { ActButton } from '@/app/_components/ui/act-button';
 import { PageHead } from '@/app/_components/ui/page-head';
 import { Panel } from '@/app/_components/ui/panel';
@@ -42,7 +43,16 @@ export default async function AccountPage() {
           </Panel>
         </div>
         <div className="grid gap-4">
-          <Panel title="API tokens" note="Keys for programs that act for you" flush>
+          <Panel
+            title="API tokens"
+            note="Keys for programs that act for you"
+            flush
+            actions={
+              <Link href="/api-reference" className="text-small underline">
+                HTTP interface
+              </Link>
+            }
+          >
             {own.tokens.length === 0 ? (
               <p className="px-3.5 pt-3 text-ink-2">You have none.</p>
             ) : (

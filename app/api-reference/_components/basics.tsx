@@ -3,14 +3,15 @@ import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table'
 import { Panel } from '@/app/_components/ui/panel';
 import { problems } from '@/lib/contracts/api/problem';
 import { CodeBlock } from './code-block';
+import { Prose } from './prose';
 
 /** What holds for every call. */
 export function Basics({ address }: { readonly address: string }) {
   const setUp = `export EVENFALL=${address}\nexport TOKEN=evf_…   # made on the account page, or by POST /tokens`;
   return (
-    <div className="grid items-start gap-4 lg:grid-cols-2">
+    <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-4 lg:grid-cols-2">
       <Panel title="In every call">
-        <div className="grid gap-3">
+        <div className="grid grid-cols-[minmax(0,1fr)] gap-3">
           <CodeBlock label="Setting the address and the token" code={setUp} />
           <dl className="grid gap-2.5">
             <Basic term="Who you are">
@@ -55,7 +56,7 @@ export function Basics({ address }: { readonly address: string }) {
                 {title}
               </Cell>
               <Cell wrap className="text-ink-2">
-                {meaning}
+                <Prose text={meaning} />
               </Cell>
             </Row>
           ))}

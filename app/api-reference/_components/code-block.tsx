@@ -19,7 +19,7 @@ export function CodeBlock({ label, code }: { readonly label: string; readonly co
     timer.current = setTimeout(() => setSaid(''), 2500);
   };
   return (
-    <div className="rounded-control border border-rule bg-sunk">
+    <div className="min-w-0 rounded-control border border-rule bg-sunk">
       <div className="flex items-center gap-2 border-b border-rule px-2.5 py-1">
         <span className="text-small text-ink-2">{label}</span>
         <span role="status" className="ml-auto text-small text-ink-2">

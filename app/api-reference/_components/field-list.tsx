@@ -1,5 +1,6 @@
 import { Fragment } from 'react';
 import type { ReferenceField } from '@/lib/contracts/api/reference';
+import { Prose } from './prose';
 import { TypeText } from './type-text';
 
 interface FieldListProps {
@@ -11,7 +12,7 @@ interface FieldListProps {
 /** Names, types and meanings: side by side where there is room, under each other where there is not. */
 export function FieldList({ fields, marksRequired = true }: FieldListProps) {
   return (
-    <dl className="grid gap-x-4 text-table md:grid-cols-[minmax(8rem,auto)_minmax(0,1fr)]">
+    <dl className="grid grid-cols-[minmax(0,1fr)] gap-x-4 text-table md:grid-cols-[minmax(8rem,max-content)_minmax(0,1fr)]">
       {fields.map((field) => (
         <Fragment key={`${field.in} ${field.name}`}>
           <dt className="border-t border-rule pt-1.5 font-mono wrap-anywhere md:pb-1.5">
@@ -25,7 +26,11 @@ export function FieldList({ fields, marksRequired = true }: FieldListProps) {
               <TypeText type={field.type} />
               {marksRequired ? (field.isRequired ? ' · required' : ' · optional') : null}
             </span>
-            {field.description === '' ? null : <span className="block">{field.description}</span>}
+            {field.description === '' ? null : (
+              <span className="block">
+                <Prose text={field.description} />
+              </span>
+            )}
           </dd>
         </Fragment>
       ))}

@@ -3,6 +3,7 @@ import type { ReferenceOperation } from '@/lib/contracts/api/reference';
 import { CodeBlock } from './code-block';
 import { Disclosure } from './disclosure';
 import { FieldList } from './field-list';
+import { Prose } from './prose';
 import { TypeText } from './type-text';
 
 /** One call: what it does, what it takes, what it answers, what it refuses, and how to try it. */
@@ -25,8 +26,12 @@ export function OperationItem({ operation }: { readonly operation: ReferenceOper
         </span>
       }
     >
-      <div className="grid gap-4">
-        {description === '' ? null : <p className="max-w-prose">{description}</p>}
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-4">
+        {description === '' ? null : (
+          <p className="max-w-prose">
+            <Prose text={description} />
+          </p>
+        )}
         {parameters.length === 0 ? null : (
           <Part title="Parameters">
             <FieldList fields={parameters} />

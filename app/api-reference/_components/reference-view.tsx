@@ -25,7 +25,7 @@ export function ReferenceView({ sections }: { readonly sections: readonly Refere
     .filter(({ operations }) => operations.length > 0);
   const count = found.reduce((sum, { operations }) => sum + operations.length, 0);
   return (
-    <div className="grid gap-4">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-4">
       <Field label="Search the calls" hint={`Words of a path, a summary or a field. ${count} found.`}>
         {(control) => (
           <TextInput

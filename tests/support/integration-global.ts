@@ -10,7 +10,8 @@ export default async function setup(project: TestProject): Promise<() => Promise
   const server = await takeDatabaseServer();
   await migrateDatabase(await server.createDatabase(template));
   const root = await server.administrator();
-  const workers = Number(project.config.maxWorkers);
+  // One more than workers: the process of a finished file may not be quite gone yet.
+  const workers = Number(project.config.maxWorkers) + 1;
   const names = Array.from({ length: workers }, (_, index) => `evenfall_worker_${index + 1}`);
   for (const name of names) await copyTables(root, template, name);
   await root.end();

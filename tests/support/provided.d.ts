@@ -3,7 +3,7 @@ import type { DatabaseAddress } from '@/db/connection';
 declare module 'vitest' {
   /** What the global setups tell the test files; read it with `inject('baseUrl')`. */
   interface ProvidedContext {
-    /** integration: one database per worker, in the order of the workers' numbers. */
+    /** integration: the databases that test files claim, one each. */
     readonly workerDatabases: readonly DatabaseAddress[];
     /** api, browser: address of the running application, without a slash at the end. */
     readonly baseUrl: string;

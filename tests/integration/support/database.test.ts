@@ -1,6 +1,7 @@
-import { describe, expect, it } from 'vitest';
+import { describe, expect, inject, it } from 'vitest';
 import { QueryTypes } from 'sequelize';
-import { database } from '@/db/connection';
+import { addressFromEnvironment, database } from '@/db/connection';
+import { claimDatabase, lockOf } from '@/tests/support/claim-database';
 import { emptyTables } from '@/tests/support/database';
 
 const count = async (sql: string): Promise<number> => {
@@ -9,11 +10,13 @@ const count = async (sql: string): Promise<number> => {
 };
 
 describe('the database of a test', () => {
-  it('belongs to this worker alone', async () => {
-    const [row] = await database().query<{ name: string }>('SELECT DATABASE() AS name', {
-      type: QueryTypes.SELECT,
-    });
-    expect(row?.name).toBe(`evenfall_worker_${process.env['VITEST_POOL_ID']}`);
+  it('belongs to this test file alone', async () => {
+    const address = addressFromEnvironment();
+    expect(await count(`SELECT IS_USED_LOCK('${lockOf(address)}') IS NOT NULL AS n`)).toBe(1);
+    const others = inject('workerDatabases').filter(({ database: name }) => name !== address.database);
+    const claimed = await claimDatabase(others);
+    expect(claimed.address.database).not.toBe(address.database);
+    await claimed.release();
   });
 
   it('has the foreign keys and checks of the migrations', async () => {

@@ -76,7 +76,20 @@ const allow = {
     'plumbing',
     ...science,
   ],
-  worker: ['worker', 'queue', 'mail', 'act', 'read', 'policy', 'contract', 'fault', 'format', 'plumbing', ...science],
+  worker: [
+    'worker',
+    'thread',
+    'queue',
+    'mail',
+    'act',
+    'read',
+    'policy',
+    'contract',
+    'fault',
+    'format',
+    'plumbing',
+    ...science,
+  ],
   thread: ['thread', 'contract', 'fault', 'format', ...science],
   fixture: ['fixture'],
 };
@@ -90,7 +103,10 @@ const policies = [
   { from: { element: { type: 'test' } }, allow: { to: { element: { type: '*' } } } },
   // A server action is the one door from a component to the server.
   { from: { element: { type: 'component' } }, allow: { to: { file: { categories: 'action' } } } },
-  { from: { file: { categories: 'action' } }, allow: { to: anyOf(['http', 'act', 'read', 'identity', 'format']) } },
+  {
+    from: { file: { categories: 'action' } },
+    allow: { to: anyOf(['http', 'act', 'read', 'identity', 'format']) },
+  },
   { from: { file: { categories: 'action' } }, disallow: { to: anyOf(['component', ...science]) } },
   // Packages: free, except where a folder is to stay movable, or a package has one place.
   { allow: { to: { module: { origin: 'external' } } } },

@@ -23,6 +23,8 @@ export interface MeasurementRow {
   exposure_s: number;
   band: Band | '';
   type: FrameType | '';
+  /** Whether what the row says of its exposure can be relied on. */
+  isExposureReadable: boolean;
   /** Values of the columns that are only kept, as decimal numbers in text; '' for absent. */
   readonly kept: Record<KeptColumn, string>;
 }
@@ -53,6 +55,7 @@ export function emptyRow(): MeasurementRow {
     exposure_s: NaN,
     band: '',
     type: '',
+    isExposureReadable: true,
     kept: { x: '', y: '', fwhm: '', sky: '', peak: '' },
   };
 }
@@ -75,7 +78,11 @@ export function fillRow(row: MeasurementRow, text: Text, report: Report): void {
     row.kept[column] = value;
     if (value !== '') readNumber(column, value, report, 1e30);
   }
-  readExposure(row, text, report);
+  row.isExposureReadable = true;
+  readExposure(row, text, (column, issue) => {
+    row.isExposureReadable = false;
+    report(column, issue);
+  });
 }
 
 const missing = (what: string): IssueText => ({

@@ -14,8 +14,8 @@ export type MappingFor = (headers: readonly string[]) => ColumnMapping;
 export interface TableSink {
   /** The header was understood: which header stands for which column. */
   readonly header?: (columns: ReadonlyMap<MeasurementColumn, string>) => void;
-  /** A row without a fault of its own. */
-  readonly row: (row: MeasurementRow) => void;
+  /** A row that could be read; `isFaulty` when something in it has been reported already. */
+  readonly row: (row: MeasurementRow, isFaulty: boolean) => void;
 }
 
 export interface MeasurementTable extends CsvSink {
@@ -82,7 +82,7 @@ export function measurementTable(
     row.line = line;
     current = fields;
     fillRow(row, text, reportHere);
-    if (issues.total() === before) sink.row(row);
+    sink.row(row, issues.total() > before);
   }
 
   return {

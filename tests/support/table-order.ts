@@ -2,7 +2,8 @@ import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { starKey } from '@/lib/contracts/star-name';
-import type { CheckOrder, CheckResult, LoggedFrame } from '@/workers/threads/check-measurements/messages';
+import type { CheckResult } from '@/lib/contracts/measurement-check';
+import type { CheckOrder, LoggedFrame } from '@/workers/threads/check-measurements/messages';
 import { tableCheck } from '@/workers/threads/check-measurements/table-check';
 
 export interface OrderedStar {
@@ -50,6 +51,9 @@ export const order = ({ stars, isOpen, ...rest }: TestOrder): CheckOrder => ({
   remembered: [],
   frames: [loggedFrame({ number: 1 }), loggedFrame({ number: 2, band: 'B' })],
   standards: standards(stars ?? [{ name: '114-750', ra: 340.436, dec: 1.21 }]),
+  site: { longitude: -17.25, latitude: 28.31, elevation: 2300 },
+  name: 'test table',
+  targets: [],
   night: {
     startsAt: Date.UTC(2026, 10, 3, 12),
     endsAt: Date.UTC(2026, 10, 4, 12),

@@ -3,6 +3,7 @@ import * as frame from './frame';
 import * as health from './health';
 import * as job from './job';
 import * as me from './me';
+import * as measurementSet from './measurement-set';
 import * as night from './night';
 import * as objectName from './object-name';
 import * as openapi from './openapi';
@@ -30,6 +31,7 @@ const files = [
   job,
   health,
   openapi,
+  measurementSet,
 ] as const;
 
 const isOperation = (value: unknown): value is Operation =>

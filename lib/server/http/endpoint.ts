@@ -18,8 +18,15 @@ export interface Call<O extends Operation> {
   readonly body: BodyOf<O>;
   readonly request: Request;
   readonly requestId: string;
+  /**
+   * For a raw body, which cannot be compared before it has been read: runs the work once for the Idempotency-Key, if
+   * there is one, and these words about the body, such as its hash. Other operations are kept so by themselves.
+   */
+  readonly once: (content: string, work: () => Promise<AnswerOf<O>>) => Promise<Kept<O>>;
 }
-type Handler<O extends Operation> = (call: Call<O>) => Promise<AnswerOf<O>>;
+/** What `once` gives is a response already. */
+type Kept<O extends Operation> = O['raw'] extends readonly string[] ? Response : never;
+type Handler<O extends Operation> = (call: Call<O>) => Promise<AnswerOf<O> | Kept<O>>;
 interface RouteContext {
   readonly params: Promise<Record<string, string | string[] | undefined>>;
 }
@@ -58,21 +65,26 @@ async function answer<O extends Operation>(
     throw new Fault('not-signed-in', 'Sign in, or send an API token as “Authorization: Bearer …”.');
   }
   const url = new URL(request.url);
-  const text = operation.body && !operation.raw ? await readText(request) : '';
+  const isRaw = operation.raw !== undefined;
+  const text = operation.body && !isRaw ? await readText(request) : '';
+  const isKept = operation.method !== 'get' && !operation.stream && !operation.secret;
+  const key = isKept && caller ? { personId: caller.personId, key: idempotencyKey(request.headers) } : null;
+  const keep = (about: string, work: () => Promise<Response>): Promise<Response> => {
+    if (!key?.key) return work();
+    const content = `${operation.method} ${url.pathname}${url.search}\n${about}`;
+    return idempotent({ personId: key.personId, key: key.key, content }, work);
+  };
   const call = {
     caller: caller && { ...caller, requestId },
     params: operation.params && parseInput(operation.params, incoming.params, 'path'),
     query: operation.query && parseInput(operation.query, queryValues(url.searchParams), 'query'),
-    body: operation.body && !operation.raw ? parseInput(operation.body, parseJson(text), 'body') : undefined,
+    body: operation.body && !isRaw ? parseInput(operation.body, parseJson(text), 'body') : undefined,
     request,
     requestId,
+    once: (about, work) => keep(about, async () => toResponse(operation, await work(), requestId)),
   } as Call<O>;
   const run = async (): Promise<Response> => toResponse(operation, await handler(call), requestId);
-  const isKept = operation.method !== 'get' && !operation.stream && !operation.secret;
-  const key = isKept ? idempotencyKey(request.headers) : null;
-  if (!key || !caller) return run();
-  const content = `${operation.method} ${url.pathname}${url.search}\n${text}`;
-  return idempotent({ personId: caller.personId, key, content }, run);
+  return isRaw ? run() : keep(text, run);
 }
 
 /** One value a name; a repeated name is refused by the schemas, which expect no list. */

@@ -47,6 +47,7 @@ const rules = {
   'night.close': any(manager, photometrist, ownNight),
   'night.reopen': any(manager, photometrist, ownNight),
   'measurements.upload': any(photometrist, ownNight, pi),
+  'measurements.refuse': any(photometrist, owner),
   'measurements.see': any(manager, photometrist, ownNight, investigator),
   'mapping.save': any(photometrist, ownNight, pi),
   'solution.see': any(manager, photometrist, ownNight, investigator),

@@ -1,7 +1,8 @@
-import { directionOf, placeOf } from '@/lib/astro/vector';
 import { standardMatcher, type StandardMatch } from '@/lib/photometry/match-standards';
 import { frameField, type RegisteredFrame } from './frame-register';
-import type { CheckOrder, LoadPlan, NewFrame } from './messages';
+import type { LoadPlan } from '@/lib/contracts/measurement-check';
+import type { CheckOrder } from './messages';
+import { newFrames } from './new-frames';
 import { numberField, rowFile, textField } from './row-files';
 import type { StarRegister } from './star-register';
 
@@ -110,64 +111,4 @@ function usedFrames(
     frame: frameField(frames[index]?.id, index, order.frames.length),
     rows: count,
   }));
-}
-
-interface Seen {
-  readonly sum: { x: number; y: number; z: number };
-  readonly fields: Map<string, number>;
-}
-
-/** The frames that are to be created, with the middle of their stars and the field of their standards. */
-function newFrames(
-  order: CheckOrder,
-  stars: StarRegister,
-  {
-    frames,
-    matches,
-  }: { readonly frames: readonly RegisteredFrame[]; readonly matches: readonly StandardMatch[] },
-): readonly NewFrame[] {
-  const first = order.frames.length;
-  if (frames.length === first) return [];
-  const seen = frames.slice(first).map((): Seen => ({ sum: { x: 0, y: 0, z: 0 }, fields: new Map() }));
-  for (let row = 0; row < stars.rows(); row += 1) {
-    const frame = seen[stars.frameOfRow(row) - first];
-    if (frame) look(frame, stars.starOfRow(row));
-  }
-
-  function look(frame: Seen, star: number): void {
-    const match = matches[star];
-    const standard = match?.kind === 'matched' ? match.standard : -1;
-    const hasPlace = !Number.isNaN(stars.ra(star));
-    const ra = hasPlace ? stars.ra(star) : (order.standards.ra[standard] ?? NaN);
-    const dec = hasPlace ? stars.dec(star) : (order.standards.dec[standard] ?? NaN);
-    if (!Number.isNaN(ra)) {
-      const { x, y, z } = directionOf(ra, dec);
-      frame.sum.x += x;
-      frame.sum.y += y;
-      frame.sum.z += z;
-    }
-    const field = order.standards.fields[standard];
-    if (field !== undefined) frame.fields.set(field, (frame.fields.get(field) ?? 0) + 1);
-  }
-
-  return seen.flatMap(({ sum, fields }, index): NewFrame[] => {
-    const frame = frames[first + index];
-    if (!frame?.band) return []; // the register creates no frame without its band
-    const place = Math.hypot(sum.x, sum.y, sum.z) > 0 ? placeOf(sum) : null;
-    const field = [...fields].sort((a, b) => b[1] - a[1])[0]?.[0] ?? null;
-    const usual = order.kind === 'mixed' ? (field === null ? 'target' : 'standard') : order.kind;
-    return [
-      {
-        number: frame.number,
-        file: frame.file,
-        type: frame.type === '' ? usual : frame.type,
-        band: frame.band,
-        utcStart: frame.utcStart,
-        exposure_s: frame.exposure_s,
-        ra: place?.ra ?? null,
-        dec: place?.dec ?? null,
-        field,
-      },
-    ];
-  });
 }

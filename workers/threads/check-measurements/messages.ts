@@ -1,7 +1,8 @@
+import type { Site } from '@/lib/astro/site';
 import type { Band, FrameType } from '@/lib/contracts/bands';
 import type { ColumnMapping } from '@/lib/contracts/measurement-columns';
+import type { CheckResult } from '@/lib/contracts/measurement-check';
 import type { MeasurementKind } from '@/lib/contracts/measurement-kinds';
-import type { Issue } from '@/lib/faults/fault';
 import type { StandardTable } from '@/lib/photometry/match-standards';
 
 /** A frame of the night's log, as far as checking a table needs it. */
@@ -30,6 +31,19 @@ export interface CheckOrder {
   readonly frames: readonly LoggedFrame[];
   readonly standards: StandardTable & { readonly ids: Int32Array; readonly fields: readonly string[] };
   readonly night: NightBounds;
+  readonly site: Site;
+  /** Name of the set, for frames that show nothing with a name. */
+  readonly name: string;
+  readonly targets: readonly Target[];
+}
+
+/** A programme's target that the uploader's frames could show. */
+export interface Target {
+  readonly programmeId: number;
+  readonly name: string;
+  /** J2000 [deg] */
+  readonly ra: number;
+  readonly dec: number;
 }
 
 export interface RememberedMapping {
@@ -48,46 +62,6 @@ export interface NightBounds {
   /** Bands that the telescope has filters for. */
   readonly bands: readonly Band[];
   readonly telescope: string;
-}
-
-/** A frame that the log does not have and the table tells enough of. */
-export interface NewFrame {
-  /** Null where the table names it by its file: the log gives the next free number. */
-  readonly number: number | null;
-  readonly file: string | null;
-  readonly type: FrameType;
-  readonly band: Band;
-  readonly utcStart: number;
-  readonly exposure_s: number;
-  /** Middle of its stars, J2000; null where the table and the standards give no position. [deg] */
-  readonly ra: number | null;
-  readonly dec: number | null;
-  /** Field of the standards that were found on it. */
-  readonly field: string | null;
-}
-
-/** What was found in a table, and what of it is to be loaded. */
-export interface CheckResult {
-  readonly rows: number;
-  readonly comments: string;
-  /** Column → header in the file, as applied. */
-  readonly columns: ColumnMapping;
-  readonly faults: readonly Issue[];
-  readonly nFaults: number;
-  /** Null when there are faults. */
-  readonly load: LoadPlan | null;
-}
-
-/** Tab-separated files in the order of the tables' columns; see row-files.ts. */
-export interface LoadPlan {
-  readonly slices: readonly { readonly file: string; readonly rows: number }[];
-  readonly stars: { readonly file: string; readonly rows: number };
-  readonly flags: { readonly file: string; readonly rows: number };
-  readonly matchedRows: number;
-  /** In the rows, a frame that is to be created stands as −1 for the first of these, −2 for the second, … */
-  readonly newFrames: readonly NewFrame[];
-  /** The frames that the rows name: ids of the log, or −1, −2, … as above, with their numbers of rows. */
-  readonly usedFrames: readonly { readonly frame: number; readonly rows: number }[];
 }
 
 export type CheckMessage =

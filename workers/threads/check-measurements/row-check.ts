@@ -8,7 +8,8 @@ import { numberField, type RowFile } from './row-files';
 import type { StarRegister } from './star-register';
 
 export interface RowCheck {
-  readonly check: (row: MeasurementRow) => void;
+  /** A row with faults of its own is still checked against the log, so that all its faults come at once. */
+  readonly check: (row: MeasurementRow, isFaulty: boolean) => void;
   /** Distinct flags and their numbers, from 1. */
   readonly flags: () => ReadonlyMap<string, number>;
 }
@@ -30,12 +31,14 @@ const mostFlags = 65_535;
 export function rowCheck({ frames, stars, nLogged, report, issues, slices }: RowCheckParts): RowCheck {
   const flags = new Map<string, number>();
 
-  function check(row: MeasurementRow): void {
+  function check(row: MeasurementRow, isFaulty: boolean): void {
+    if (isFaulty && (row.frame === '' || !row.isExposureReadable)) return;
     const frame = frames.find(row);
     if (typeof frame !== 'number') {
       for (const { column, ...text } of frame) report(row.line, column, valueOf(row, column), text);
       return;
     }
+    if (isFaulty) return;
     const { id, exposure_s } = frames.frame(frame);
     const needsExposure = Number.isNaN(row.mag);
     if (needsExposure && !(exposure_s > 0)) {

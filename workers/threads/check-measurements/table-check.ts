@@ -6,7 +6,8 @@ import { issueList } from '@/lib/formats/issue-list';
 import { measurementTable } from '@/lib/formats/measurement-table';
 import { frameRegister } from './frame-register';
 import { matchStars } from './match-stars';
-import type { CheckOrder, CheckResult } from './messages';
+import type { CheckResult } from '@/lib/contracts/measurement-check';
+import type { CheckOrder } from './messages';
 import { rowCheck } from './row-check';
 import { rowFile, textField } from './row-files';
 import { starRegister } from './star-register';
@@ -37,7 +38,7 @@ export function tableCheck(order: CheckOrder): TableCheck {
     header: (found) => {
       columns = Object.fromEntries(found);
     },
-    row: (row) => rows.check(row),
+    row: (row, isFaulty) => rows.check(row, isFaulty),
   });
   const rows = rowCheck({
     frames,

@@ -67,6 +67,13 @@ describe('a fault of one field', () => {
     ]);
   });
 
+  it('a row with a fault of its own is held against the log all the same', () => {
+    expect(faultsOf(`${header}\n47,A,1,1,12,0\n`)).toEqual([
+      [2, 'inst_err', '0', expect.any(String)],
+      [2, 'Frame', '47', 'This frame is not in the night log.'],
+    ]);
+  });
+
   it('a remedy stands with every fault', () => {
     const { faults } = checkTable(`${header}\n47,,x,100,NaN,0\n1,A\n`).result;
     expect(faults.length).toBeGreaterThan(4);

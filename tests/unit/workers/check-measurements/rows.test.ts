@@ -191,9 +191,17 @@ describe('frames that the log does not have', () => {
         band: 'V',
         utcStart: night + 21 * 3_600_000,
         exposure_s: 60,
-        ra: expect.closeTo(340.437, 6) as number,
-        dec: expect.closeTo(1.21, 6) as number,
-        field: 'SA 114',
+        place: {
+          object: 'SA 114',
+          field: 'SA 114',
+          programmeId: null,
+          ra: expect.closeTo(340.437, 6) as number,
+          decl: expect.closeTo(1.21, 6) as number,
+        },
+        geometry: expect.objectContaining({
+          utcMid: night + 21 * 3_600_000 + 30_000,
+          airmass: expect.closeTo(1.1215, 4) as number,
+        }) as object,
       },
       expect.objectContaining({
         number: null,

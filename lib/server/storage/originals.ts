@@ -1,0 +1,144 @@
+import 'server-only';
+import { createHash, randomUUID } from 'node:crypto';
+import { createReadStream } from 'node:fs';
+import { mkdir, open, readdir, rename, rm, stat, utimes, type FileHandle } from 'node:fs/promises';
+import path from 'node:path';
+import { Readable } from 'node:stream';
+import { Fault } from '@/lib/faults/fault';
+import { environment } from '@/lib/server/settings/environment';
+
+/** Originals lie under the SHA-256 of their bytes: the same bytes are kept once, and a name cannot lie about its content. */
+const folder = (): string => path.join(environment().dataDir, 'originals');
+const incoming = (): string => path.join(folder(), 'incoming');
+const sha256Name = /^[0-9a-f]{64}$/;
+
+export function originalPath(sha256: string): string {
+  if (!sha256Name.test(sha256)) throw new Error('This is not the SHA-256 of an original.');
+  return path.join(folder(), sha256.slice(0, 2), sha256);
+}
+
+export interface StoredOriginal {
+  readonly sha256: string;
+  /** [bytes] */
+  readonly size: number;
+}
+
+/**
+ * Takes a stream to disk while counting and hashing it: under a temporary name until its last byte, then under its hash.
+ * Whatever ends early leaves nothing behind.
+ */
+export async function storeOriginal(
+  stream: AsyncIterable<Uint8Array>,
+  limit_bytes: number,
+): Promise<StoredOriginal> {
+  await mkdir(incoming(), { recursive: true });
+  const temporary = path.join(incoming(), randomUUID());
+  try {
+    const stored = await write(stream, temporary, limit_bytes);
+    await putInPlace(temporary, stored.sha256);
+    return stored;
+  } catch (error) {
+    await rm(temporary, { force: true });
+    throw toFault(error);
+  }
+}
+
+async function write(
+  stream: AsyncIterable<Uint8Array>,
+  temporary: string,
+  limit_bytes: number,
+): Promise<StoredOriginal> {
+  const hash = createHash('sha256');
+  let size = 0;
+  const file: FileHandle = await open(temporary, 'wx', 0o600);
+  try {
+    for await (const chunk of stream) {
+      size += chunk.byteLength;
+      if (size > limit_bytes) throw tooLarge(limit_bytes);
+      hash.update(chunk);
+      await file.writeFile(chunk);
+    }
+    // The name says that the bytes are there: after a power cut too.
+    await file.datasync();
+  } finally {
+    await file.close();
+  }
+  if (size === 0) throw new Fault('invalid-input', 'The body is empty: there is no table in it.');
+  return { sha256: hash.digest('hex'), size };
+}
+
+async function putInPlace(temporary: string, sha256: string): Promise<void> {
+  const place = originalPath(sha256);
+  await mkdir(path.dirname(place), { recursive: true });
+  // Over a file of the same bytes nothing changes but its time, which keeps it from being tidied away.
+  await rename(temporary, place);
+}
+
+export const tooLarge = (limit_bytes: number): Fault =>
+  new Fault(
+    'too-large',
+    `The file is larger than ${Math.floor(limit_bytes / 1024 / 1024)} MiB, which is the limit here.`,
+  );
+
+const noSpace = new Set(['ENOSPC', 'EDQUOT', 'EFBIG']);
+
+/** A client that went away and a full disk are not bugs of ours. */
+function toFault(error: unknown): unknown {
+  const { code, name } = error as { code?: unknown; name?: unknown };
+  if (typeof code === 'string' && noSpace.has(code)) {
+    return new Fault(
+      'unavailable',
+      'There is no space left for the file. The observatory’s manager must make room.',
+      {
+        cause: error,
+      },
+    );
+  }
+  if (name === 'AbortError' || code === 'ECONNRESET' || code === 'ABORT_ERR') {
+    return new Fault('invalid-input', 'The upload ended before the file was complete.', { cause: error });
+  }
+  return error;
+}
+
+/** The original's bytes, from the first to the last. */
+export async function openOriginal(
+  sha256: string,
+): Promise<{ readonly size: number; readonly body: ReadableStream }> {
+  const place = originalPath(sha256);
+  const { size } = await stat(place);
+  return { size, body: Readable.toWeb(createReadStream(place)) as ReadableStream };
+}
+
+/** Marks an original as wanted again, so that tidying leaves it alone. */
+export async function touchOriginal(sha256: string): Promise<void> {
+  const now = new Date();
+  await utimes(originalPath(sha256), now, now);
+}
+
+/** Files under their hash and temporary ones that nothing has touched since an instant. */
+export async function staleOriginals(before: Date): Promise<{
+  readonly originals: readonly string[];
+  readonly unfinished: readonly string[];
+}> {
+  const originals: string[] = [];
+  const unfinished: string[] = [];
+  for (const part of await names(folder())) {
+    for (const name of await names(path.join(folder(), part))) {
+      const place = path.join(folder(), part, name);
+      if ((await stat(place)).mtime >= before) continue;
+      if (part === 'incoming') unfinished.push(place);
+      else if (sha256Name.test(name)) originals.push(name);
+    }
+  }
+  return { originals, unfinished };
+}
+
+async function names(place: string): Promise<readonly string[]> {
+  try {
+    return await readdir(place);
+  } catch (error) {
+    // Before the first upload there is no folder.
+    if ((error as { code?: unknown }).code === 'ENOENT') return [];
+    throw error;
+  }
+}

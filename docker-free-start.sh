@@ -49,8 +49,8 @@ die_with_log() {
       printf '  The disk is full: make room on the one that holds %s and on the one that holds %s.\n' \
         "$DATA_DIR" "$HOME_DIR" >&2
     fi
-    printf '  The last lines of %s:\n' "$log" >&2
-    tail -n 15 "$log" | sed 's/^/    /' >&2
+    printf '  Its errors, and the last lines of %s:\n' "$log" >&2
+    { grep -E '\bERROR\b' "$log" | tail -n 5 || true; tail -n 15 "$log"; } | awk '!seen[$0]++ { print "    " $0 }' >&2
   fi
   exit 1
 }
@@ -336,6 +336,13 @@ database_password() {
 
 as_mysql() { if is_root; then printf '%s' --user=mysql; else printf '%s' --user="$(id -un)"; fi; }
 
+# MariaDB clears its folder for temporary tables when it starts, so no two servers may share one.
+make_database_tmp() {
+  rm -rf "$DATA_DIR/db-tmp"
+  mkdir -m 700 "$DATA_DIR/db-tmp"
+  ! is_root || chown mysql: "$DATA_DIR/db-tmp"
+}
+
 # The data files appear under their final name only when they are complete.
 install_database() {
   [[ ! -d $DATA_DIR/db/mysql ]] || return 0
@@ -344,8 +351,8 @@ install_database() {
   rm -rf "$DATA_DIR/db.new"
   mkdir -p "$DATA_DIR/db.new"
   ! is_root || chown mysql: "$DATA_DIR/db.new"
-  step mariadb-install-db --no-defaults "$(as_mysql)" --datadir="$DATA_DIR/db.new" --skip-test-db \
-    >"$log" 2>&1 || die_with_log "MariaDB's data folder could not be made." "$log"
+  step mariadb-install-db --no-defaults "$(as_mysql)" --datadir="$DATA_DIR/db.new" --tmpdir="$DATA_DIR/db-tmp" \
+    --skip-test-db >"$log" 2>&1 || die_with_log "MariaDB's data folder could not be made." "$log"
   rm -rf "$DATA_DIR/db"
   mv "$DATA_DIR/db.new" "$DATA_DIR/db"
 }
@@ -354,6 +361,7 @@ administer() { mariadb --no-defaults --socket="$SOCKET" --user="$(id -un)" --bat
 
 start_database() {
   need_free_port DB_PORT 127.0.0.1
+  make_database_tmp
   install_database
   database_password
   # A socket's path may be 107 bytes long, so it does not lie in DATA_DIR.
@@ -363,8 +371,8 @@ start_database() {
   ! is_root || chown mysql: "$SOCKET_DIR"
   say "Starting MariaDB on 127.0.0.1:$DB_PORT"
   start_program mariadb mariadbd --no-defaults "$(as_mysql)" --datadir="$DATA_DIR/db" --socket="$SOCKET" \
-    --port="$DB_PORT" --bind-address=127.0.0.1 --pid-file="$SOCKET_DIR/pid" --default-time-zone=+00:00 \
-    --character-set-server=utf8mb4 --collation-server=utf8mb4_unicode_ci \
+    --port="$DB_PORT" --bind-address=127.0.0.1 --pid-file="$SOCKET_DIR/pid" --tmpdir="$DATA_DIR/db-tmp" \
+    --default-time-zone=+00:00 --character-set-server=utf8mb4 --collation-server=utf8mb4_unicode_ci \
     --innodb-buffer-pool-size="${DB_MEMORY_MB:-512}M" --max-connections=200
   local tenths=900
   until mariadb-admin --no-defaults --socket="$SOCKET" --user="$(id -un)" ping >/dev/null 2>&1; do
@@ -539,7 +547,7 @@ command_first_manager() {
 
 # What of DATA_DIR a backup holds beside the database: not the database's own files, nor what belongs to one run.
 kept_entries() {
-  find "$DATA_DIR" -mindepth 1 -maxdepth 1 -printf '%f\0' | grep -zvxE 'db|db\.new|db-password|lock|log|run|tmp|backup-.*' || true
+  find "$DATA_DIR" -mindepth 1 -maxdepth 1 -printf '%f\0' | grep -zvxE 'db|db\.new|db-tmp|db-password|lock|log|run|tmp|backup-.*' || true
 }
 
 command_backup() {

@@ -120,7 +120,7 @@ describe('a start that cannot go on says why and what to do, when', () => {
     await mkdir(path.join(copy.DATA_DIR, 'db/mysql'), { recursive: true });
     await writeFile(path.join(copy.DATA_DIR, 'db/ibdata1'), 'not a table space');
     if (isRoot) execFileSync('chown', ['-R', 'mysql:', path.join(copy.DATA_DIR, 'db')]);
-    await expectRefusal(copy, ['MariaDB did not start', 'The last lines of', 'InnoDB']);
+    await expectRefusal(copy, ['MariaDB did not start', 'the last lines of', 'InnoDB']);
   });
 
   it('the disk fills up while MariaDB starts', async () => {

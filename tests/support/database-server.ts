@@ -1,4 +1,4 @@
-import { chown, mkdtemp, rm } from 'node:fs/promises';
+import { chown, mkdir, mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { createConnection, type Connection } from 'mariadb';
@@ -38,6 +38,7 @@ function daemon(folder: string, socket: string, port: number): Child {
   const options = [
     `--datadir=${path.join(folder, 'data')}`,
     `--socket=${socket}`,
+    `--tmpdir=${path.join(folder, 'tmp')}`,
     `--port=${port}`,
     '--bind-address=127.0.0.1',
     `--pid-file=${path.join(folder, 'pid')}`,
@@ -77,8 +78,18 @@ async function createAccount(root: Connection): Promise<void> {
 export async function startDatabaseServer(): Promise<DatabaseServer> {
   const folder = await mkdtemp(path.join(tmpdir(), 'evenfall-db-'));
   await giveToMysql(folder);
+  // MariaDB clears its folder for temporary tables when it starts, so no two servers may share one.
+  const temporary = path.join(folder, 'tmp');
+  await mkdir(temporary);
+  await giveToMysql(temporary);
   const socket = path.join(folder, 'sock');
-  const install = ['--no-defaults', ...asUser, `--datadir=${path.join(folder, 'data')}`, '--skip-test-db'];
+  const install = [
+    '--no-defaults',
+    ...asUser,
+    `--datadir=${path.join(folder, 'data')}`,
+    '--skip-test-db',
+    `--tmpdir=${temporary}`,
+  ];
   await runChild('mariadb-install-db', [...install, '--auth-root-authentication-method=normal'], { env });
   const port = await freePort();
   let child = daemon(folder, socket, port);

@@ -70,8 +70,7 @@ function utcOfWallTime(wall: number, timezone: string): number {
   const candidates = [wall - offsetBefore, wall - offsetAfter].sort((a, b) => a - b);
   const [early = NaN, late = NaN] = candidates;
   if (wallTime(early, timezone) === wall) return early;
-  if (wallTime(late, timezone) === wall) return late;
-  // The clocks jumped over this time (a zone that crossed the date line skips a whole day): find the jump.
+  // The clocks change within a day of it, or jump over it (a zone that crossed the date line skips a whole day).
   let [before, after] = [early - 1, late];
   while (after - before > 1) {
     const middle = Math.floor((before + after) / 2);

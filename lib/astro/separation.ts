@@ -31,15 +31,22 @@ export function positionAngle(from: EquatorialPlace, to: EquatorialPlace): numbe
 }
 
 function anglesOf(from: EquatorialPlace, to: EquatorialPlace) {
-  // The difference is wrapped before it becomes radians: 359.9999 to 0.0001 is a small angle with all its digits.
-  const dRa = normaliseRightAscension(normaliseRightAscension(to.ra) - normaliseRightAscension(from.ra));
+  // Wrapped before it becomes radians: 359.9999 to 0.0001 is a small angle with all its digits.
+  const dRa = requireFinite(to.ra) - requireFinite(from.ra);
+  const dRa_rad = (dRa - 360 * Math.round(dRa / 360)) * radPerDeg;
   const dec1_rad = requireDeclination(from.dec) * radPerDeg;
   const dec2_rad = requireDeclination(to.dec) * radPerDeg;
   return {
-    dRa_rad: (dRa > 180 ? dRa - 360 : dRa) * radPerDeg,
+    dRa_rad,
     sin1: Math.sin(dec1_rad),
     cos1: Math.cos(dec1_rad),
     sin2: Math.sin(dec2_rad),
     cos2: Math.cos(dec2_rad),
   };
+}
+
+function requireFinite(ra: number): number {
+  if (!Number.isFinite(ra))
+    throw new RangeError(`Right ascension must be a finite number of degrees, not ${ra}.`);
+  return ra;
 }

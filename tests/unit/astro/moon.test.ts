@@ -64,6 +64,9 @@ describe('the Moon', () => {
     for (let i = 0; i < 30; i += 1) {
       const moon = moonPlace(skyMoment(siteOf('south'), Date.UTC(2026, 8, 1) + i * day));
       expectWithin(moon.semidiameter * 60, 15.8, { absolute: 1.2, unit: 'arcmin' });
+      // 15.54 arcmin at the mean distance of 384,400 km.
+      const atMeanDistance = (moon.semidiameter * 60 * moon.distance_km) / 384_400;
+      expectWithin(atMeanDistance, 15.54, { absolute: 0.01, unit: 'arcmin' });
       expectWithin(moon.distance_km, 381_000, { absolute: 31_000, unit: 'km' });
     }
   });

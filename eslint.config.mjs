@@ -181,7 +181,10 @@ const config = [
       '@typescript-eslint/consistent-type-imports': ['error', { fixStyle: 'inline-type-imports' }],
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/no-non-null-assertion': 'error',
-      '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
+      '@typescript-eslint/no-unused-vars': [
+        'error',
+        { argsIgnorePattern: '^_', varsIgnorePattern: '^_', ignoreRestSiblings: true },
+      ],
       // A unit stands at a name's end, after an underscore: `hourAngle_hours`, `mid_jdTdb`.
       '@typescript-eslint/naming-convention': [
         'error',
@@ -311,6 +314,8 @@ const config = [
     rules: {
       ...vitest.configs.recommended.rules,
       'vitest/expect-expect': ['error', { assertFunctionNames: ['expect*', 'assert*', 'fc.assert'] }],
+      // The second argument is the message of a failure.
+      'vitest/valid-expect': ['error', { maxArgs: 2 }],
       'vitest/no-focused-tests': 'error',
       'vitest/no-disabled-tests': 'error',
       'no-restricted-syntax': [

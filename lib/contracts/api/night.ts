@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { CalendarDate, line, listOf, Page, PathId, PublicId, Reason, Utc } from '@/lib/contracts/common';
+import { CalendarDate, listOf, Page, PathId, PublicId, Reason, Utc } from '@/lib/contracts/common';
 import { operation } from './operation';
 
 /** `calibrated` is reached by the approval of a solution only. */

@@ -46,7 +46,7 @@ export interface NightPage {
   };
 }
 
-/** All that the page of a night shows: seven statements, however much was logged. */
+/** All that the page of a night shows: eight statements, however much was logged. */
 export async function nightPage(caller: Caller, id: string): Promise<NightPage> {
   const scope = nightScope(caller);
   const row = await requireNight(scope, id);

@@ -1,14 +1,12 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { FrameInput, type Frame } from '@/lib/contracts/api/frame';
 import type { Night } from '@/lib/contracts/api/night';
-import { isFault } from '@/lib/faults/fault';
 import { closeNight } from '@/lib/server/acts/close-night';
 import { correctFrame } from '@/lib/server/acts/correct-frame';
 import { logFrames } from '@/lib/server/acts/log-frames';
 import { openNight } from '@/lib/server/acts/open-night';
 import { removeFrame } from '@/lib/server/acts/remove-frame';
-import { execute, insert, select } from '@/lib/server/data/database';
-import { newPublicId } from '@/lib/server/data/public-id';
+import { execute, select } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { nextFrame } from '@/lib/server/reads/next-frame';
 import { nightFrames } from '@/lib/server/reads/night-frames';
@@ -297,132 +295,6 @@ describe('many frames at once', () => {
   it('tells no more than a thousand faults', async () => {
     const wrong = Array.from({ length: 1200 }, () => target({ utc_start: '2026-01-01T00:00:00Z' }));
     expect((await faultOf(logAll(wrong))).issues).toHaveLength(1000);
-  });
-});
-
-describe('correcting a frame', () => {
-  it('keeps the earlier values in the audit trail and derives the geometry anew', async () => {
-    await freshNight();
-    const frame = await log();
-    const corrected = await correct(frame, {
-      utc_start: at('22:00:00'),
-      exposure: 120,
-      reason: 'clock was an hour off',
-    });
-    expect(corrected).toMatchObject({ version: 2, utc_mid: `${night.date}T22:01:00.000Z`, exposure: 120 });
-    expect(corrected.hour_angle).not.toBe(frame.hour_angle);
-    const last = (await trail(frame.id)).at(-1);
-    expect(last).toMatchObject({
-      act: 'frame.correct',
-      reason: 'clock was an hour off',
-      before: { utc_start: frame.utc_start, exposure: 60, airmass: frame.airmass },
-      after: { utc_start: corrected.utc_start, exposure: 120, airmass: corrected.airmass },
-    });
-    // Only what changed is told.
-    expect(Object.keys(last?.before ?? {})).not.toContain('object');
-  });
-
-  it('moves coordinates and programme with a corrected object', async () => {
-    const frame = await log({ object: 'LV Marrow' });
-    expect(frame.programme).toBe('MH26B-11');
-    expect(await correct(frame, { object: 'Thistle 3' })).toMatchObject({
-      programme: 'MH26B-04',
-      ra: 83.5,
-      dec: 22.1,
-    });
-  });
-
-  it('keeps coordinates when the new name is not known, and when only the programme changes', async () => {
-    const frame = await log({ object: 'LV Marow', ra: 12.2, dec: 41.1 });
-    const renamed = await correct(frame, { object: 'LV Marrow B' });
-    expect(renamed).toMatchObject({ ra: 12.2, dec: 41.1, programme: null });
-    expect(await correct(renamed, { programme: 'MH26B-11' })).toMatchObject({
-      ra: 12.2,
-      programme: 'MH26B-11',
-    });
-  });
-
-  it('refuses who has not seen the present version, with the present values', async () => {
-    const frame = await log();
-    await correct(frame, { comment: 'cloud', exposure: 90 }, bram);
-    const fault = await faultOf(correct(frame, { exposure: 30 }));
-    expect(fault.code).toBe('stale');
-    expect(fault.message).toContain('Bram Oyelaran');
-    expect(fault.issues).toEqual([
-      { path: 'exposure', value: '90', message: 'is the present value' },
-      { path: 'version', value: '2', message: 'is the present version' },
-    ]);
-  });
-
-  it('lets one of two win who correct one frame at once', async () => {
-    const frame = await log();
-    const both = await Promise.allSettled([
-      correct(frame, { comment: 'a' }),
-      correct(frame, { comment: 'b' }, bram),
-    ]);
-    expect(both.filter(({ status }) => status === 'fulfilled')).toHaveLength(1);
-    expect(both.some((result) => result.status === 'rejected' && isFault(result.reason, 'stale'))).toBe(true);
-  });
-
-  it.each([
-    ['a start outside the night', { utc_start: '2026-01-01T00:00:00Z' }, 'utc_start'],
-    ['a target without a band', { band: null }, 'band'],
-    ['one coordinate without the other', { ra: 10, dec: null }, 'dec'],
-    ['an unknown programme', { programme: 'NO-1' }, 'programme'],
-    ['the number of another frame', { number: 1 }, 'number'],
-  ])('refuses %s', async (_, patch, path) => {
-    const frame = await log();
-    const fault = await faultOf(correct(frame, patch));
-    expect(fault.code).toBe('invalid-input');
-    expect(fault.issues.map((issue) => issue.path)).toContain(path);
-  });
-
-  it('refuses a frame of another night', async () => {
-    const frame = await log();
-    await freshNight();
-    expect((await faultOf(correct(frame, { comment: 'x' }))).code).toBe('not-found');
-  });
-});
-
-describe('withdrawing a frame', () => {
-  const remove = (frame: Frame, reason = 'logged twice'): Promise<void> =>
-    removeFrame(noor, { night: night.id, frame: frame.id }, reason);
-
-  it('keeps the whole frame and the reason in the audit trail', async () => {
-    const frame = await log({ comment: 'mistyped' });
-    await remove(frame);
-    expect((await nightFrames(noor, night.id, { limit: 100 })).items.map(({ id }) => id)).not.toContain(
-      frame.id,
-    );
-    expect((await trail(frame.id)).at(-1)).toMatchObject({
-      act: 'frame.remove',
-      reason: 'logged twice',
-      before: frame,
-    });
-  });
-
-  it('is refused once something was measured on it, naming the set', async () => {
-    const frame = await log();
-    const [row] = await select<{ id: number; night: number }>(
-      'SELECT id, night_id AS night FROM frames WHERE public_id = :id',
-      {
-        id: frame.id,
-      },
-    );
-    const set = await insert(
-      `INSERT INTO measurement_sets (public_id, night_id, kind, name, file_name, content_type, size, sha256, tolerance, mapping, comments, uploaded_by_id)
-       VALUES (:publicId, :night, 'target', 'cluster, V', 'a.csv', 'text/csv', 1, :sha, 2, '{}', '', :person)`,
-      { publicId: newPublicId(), night: row?.night ?? 0, sha: 'a'.repeat(64), person: noor.personId },
-      null,
-    );
-    await execute(
-      'INSERT INTO measurement_set_frames (set_id, frame_id, n_rows) VALUES (:set, :frame, 1)',
-      { set, frame: row?.id ?? 0 },
-      null,
-    );
-    const fault = await faultOf(remove(frame));
-    expect(fault.code).toBe('conflict');
-    expect(fault.message).toContain('“cluster, V”');
   });
 });
 

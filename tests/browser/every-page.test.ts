@@ -1,0 +1,98 @@
+import AxeBuilder from '@axe-core/playwright';
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { launchBrowser } from '../support/browser';
+import { demoAccounts, signedIn } from '../support/signed-in';
+
+let browser: Browser;
+beforeAll(async () => {
+  browser = await launchBrowser();
+});
+afterAll(() => browser.close());
+
+/** Pages of one kind differ by ids, dates, numbers and queries; one of each kind is opened. */
+const kindOf = (address: string): string =>
+  new URL(address).pathname
+    .split('/')
+    .map((part) => (/^([0-9a-hjkmnp-tv-z]{12}|[\d-]+)$/.test(part) ? '…' : part))
+    .join('/');
+
+/** Addresses of pages that a page links to: not of downloads, nor of the HTTP interface. */
+const linksOf = (page: Page): Promise<readonly string[]> =>
+  page.$$eval('a[href]:not([download])', (anchors) =>
+    anchors
+      .map((anchor) => (anchor as HTMLAnchorElement).href.replace(/#.*$/, ''))
+      .filter(
+        (href) => href.startsWith(`${location.origin}/`) && !href.startsWith(`${location.origin}/api/`),
+      ),
+  );
+
+interface Crawl {
+  readonly kinds: readonly string[];
+  readonly faults: readonly string[];
+}
+
+/** Opens one page of each kind that links lead to, beginning with the first page, and looks at each. */
+async function crawl(page: Page, look: (kind: string) => Promise<readonly string[]>): Promise<Crawl> {
+  const faults: string[] = [];
+  let kind = '';
+  page.on('console', (message) => {
+    if (message.type() === 'error')
+      faults.push(`${kind}: console: ${message.text()} ${message.location().url}`);
+  });
+  page.on('pageerror', (error) => faults.push(`${kind}: error: ${error.message}`));
+  page.on('requestfailed', (request) => {
+    // A page that is left does not wait for what it had begun to load.
+    if (request.failure()?.errorText !== 'net::ERR_ABORTED') faults.push(`${kind}: failed: ${request.url()}`);
+  });
+  const waiting = new Map<string, string>();
+  const seen = new Set<string>();
+  const add = (address: string): void => {
+    if (!seen.has(kindOf(address)) && !waiting.has(kindOf(address))) waiting.set(kindOf(address), address);
+  };
+  add(new URL('/', page.url()).href);
+  for (const [next, address] of waiting) {
+    waiting.delete(next);
+    seen.add(next);
+    kind = next;
+    const answer = await page.goto(address, { waitUntil: 'load' });
+    if (!answer?.ok()) faults.push(`${kind}: answered ${answer?.status()} at ${address}`);
+    await page.locator('main').first().waitFor();
+    faults.push(...(await look(kind)).map((fault) => `${kind}: ${fault}`));
+    (await linksOf(page)).forEach(add);
+  }
+  return { kinds: [...seen], faults };
+}
+
+const looked = new Set<string>();
+
+/** What assistive technology, a narrow screen or a reader of the heading would miss; once for each kind of page. */
+async function lookAt(page: Page, kind: string): Promise<readonly string[]> {
+  if (looked.has(kind)) return [];
+  looked.add(kind);
+  const faults: string[] = [];
+  const { violations } = await new AxeBuilder({ page })
+    .withTags(['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa'])
+    .analyze();
+  for (const { id, nodes } of violations) faults.push(`${id}: ${nodes[0]?.html.slice(0, 200)}`);
+  if ((await page.locator('h1').count()) !== 1) faults.push('has not exactly one first heading');
+  await page.setViewportSize({ width: 390, height: 844 });
+  const width = await page.evaluate(() => document.documentElement.scrollWidth);
+  if (width > 390) faults.push(`is ${width} px wide on a screen of 390 px`);
+  await page.setViewportSize({ width: 1280, height: 900 });
+  return faults;
+}
+
+describe('every page that links lead to opens without a fault', () => {
+  it.each(demoAccounts)(
+    'for %s',
+    async (account) => {
+      const page = await signedIn(browser, account);
+      const { kinds, faults } = await crawl(page, (kind) => lookAt(page, kind));
+      await page.context().close();
+      expect(faults).toEqual([]);
+      expect(kinds.length).toBeGreaterThan(3);
+    },
+    240_000,
+  );
+});

@@ -547,7 +547,8 @@ command_first_manager() {
 
 # What of DATA_DIR a backup holds beside the database: not the database's own files, nor what belongs to one run.
 kept_entries() {
-  find "$DATA_DIR" -mindepth 1 -maxdepth 1 -printf '%f\0' | grep -zvxE 'db|db\.new|db-tmp|db-password|lock|log|run|tmp|backup-.*' || true
+  local unwanted='db|db\.new|db-tmp|db-password|lock|log|run|work|backup-.*'
+  find "$DATA_DIR" -mindepth 1 -maxdepth 1 -printf '%f\0' | grep -zvxE "$unwanted" || true
 }
 
 command_backup() {
@@ -571,10 +572,14 @@ command_backup() {
   say 'Packing the archive'
   kept_entries >"$work/entries"
   (umask 077 && : >"$target.part") || die "the archive $target cannot be written."
-  step tar -cf "$target.part" -C "$work" database.sql -C "$DATA_DIR" --null -T "$work/entries" || {
+  local code=0
+  step tar -cf "$target.part" --exclude=originals/incoming -C "$work" database.sql \
+    -C "$DATA_DIR" --null -T "$work/entries" || code=$?
+  # 1 only tells that files came or went meanwhile, which an upload does.
+  if ((code > 1)); then
     rm -rf "$work" "$target.part"
     die "the archive $target could not be written."
-  }
+  fi
   rm -rf "$work"
   mv "$target.part" "$target"
   printf 'Backup written: %s\n' "$target"

@@ -1,7 +1,9 @@
-import { readFile, writeFile } from 'node:fs/promises';
+import { existsSync } from 'node:fs';
+import { mkdir, readFile, stat, writeFile } from 'node:fs/promises';
 import path from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Child } from '@/tests/support/child';
+import { root } from '@/tests/support/scripts';
 import {
   ownCopy,
   processesOf,
@@ -68,9 +70,7 @@ describe('two copies of the demo side by side', () => {
   });
 
   it('keep the generated password of the database to their owner', async () => {
-    const { mode } = await import('node:fs/promises').then(({ stat }) =>
-      stat(path.join(first.DATA_DIR, 'db-password')),
-    );
+    const { mode } = await stat(path.join(first.DATA_DIR, 'db-password'));
     expect(mode & 0o777).toBe(0o600);
     const passwords = await Promise.all(
       [first, second].map((copy) => readFile(path.join(copy.DATA_DIR, 'db-password'), 'utf8')),
@@ -123,6 +123,21 @@ describe('two copies of the demo side by side', () => {
     expect(await processesOf(first.DATA_DIR)).toEqual([]);
   });
 
+  it('refuse to rebuild under the feet of the one that runs', async () => {
+    const stamp = path.join(root, '.next/evenfall-sources');
+    const built = await readFile(stamp, 'utf8');
+    await writeFile(stamp, 'of other sources');
+    try {
+      const { code, output } = await runScript([], await ownCopy());
+      expect(output).toContain(
+        'another copy runs from this folder, and its sources changed since it was built',
+      );
+      expect(code).toBe(1);
+    } finally {
+      await writeFile(stamp, built);
+    }
+  });
+
   it('stop by Ctrl-C', async () => {
     expect(await signal(other.child, 'SIGINT')).toBe(0);
     expect(await processesOf(second.DATA_DIR)).toEqual([]);
@@ -153,7 +168,11 @@ describe('a start for real use', () => {
   });
 
   it('is backed up while it runs', async () => {
-    await writeFile(path.join(copy.DATA_DIR, 'kept-by-the-backup'), 'as it was');
+    const originals = path.join(copy.DATA_DIR, 'originals');
+    await mkdir(path.join(originals, 'ab'), { recursive: true });
+    await mkdir(path.join(originals, 'incoming'), { recursive: true });
+    await writeFile(path.join(originals, 'ab/whole'), 'byte for byte');
+    await writeFile(path.join(originals, 'incoming/half'), 'byte');
     const { code, output } = await runScript(['backup', archive], copy);
     expect(output).toContain(`Backup written: ${archive}`);
     expect(code).toBe(0);
@@ -163,7 +182,9 @@ describe('a start for real use', () => {
     const restored = await ownCopy();
     const { code } = await runScript(['restore', archive], restored);
     expect(code).toBe(0);
-    expect(await readFile(path.join(restored.DATA_DIR, 'kept-by-the-backup'), 'utf8')).toBe('as it was');
+    const originals = path.join(restored.DATA_DIR, 'originals');
+    expect(await readFile(path.join(originals, 'ab/whole'), 'utf8')).toBe('byte for byte');
+    expect(existsSync(path.join(originals, 'incoming/half'))).toBe(false);
     const { line } = await startCopy(['--no-demo'], restored);
     expect(line).not.toContain('no manager yet');
     expect((await fetch(link.replace(`:${copy.PORT}/`, `:${restored.PORT}/`))).status).toBe(200);

@@ -40,10 +40,10 @@ const pure = ['contract', 'fault', 'policy', ...science];
 
 /** Who may import whom; everything else is an error. */
 const allow = {
-  page: ['page', 'component', 'act', 'read', 'identity', 'contract', 'fault', ...science],
+  page: ['http', 'page', 'component', 'act', 'read', 'identity', 'contract', 'fault', ...science],
   component: ['component', 'contract', 'fault', ...science],
   endpoint: ['endpoint', 'http', 'act', 'read', 'contract', 'fault', 'format'],
-  contract: ['contract', 'fault'],
+  contract: ['contract', 'fault', 'astro'],
   fault: ['fault'],
   numerics: ['numerics', 'fault'],
   astro: ['astro', 'numerics', 'fault'],

@@ -21,3 +21,15 @@ export const ProgrammeMember = z.object({ person: PublicId, role: ProgrammeRole 
 
 /** Hours for which a one-time link works. */
 export const linkLife_hours = 72;
+
+/** A person as the people page lists them. */
+export interface PersonListed {
+  readonly publicId: string;
+  readonly name: string;
+  readonly email: string;
+  readonly roles: readonly ObservatoryRole[];
+  readonly programmes: readonly { readonly code: string; readonly role: ProgrammeRole }[];
+  /** Invited: no password yet. */
+  readonly state: 'active' | 'invited' | 'disabled';
+  readonly lastSignIn: string | null;
+}

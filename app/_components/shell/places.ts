@@ -16,6 +16,8 @@ export interface Place {
 export const places: readonly Place[] = [
   { label: 'Tonight', href: '/', part: 'bar' },
   { label: 'Nights', href: '/nights', part: 'bar' },
+  { label: 'People', href: '/people', part: 'office', roles: ['manager', 'photometrist'] },
+  { label: 'Audit trail', href: '/audit', part: 'office' },
 ];
 
 /** The places that a person sees. */

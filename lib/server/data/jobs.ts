@@ -1,5 +1,5 @@
 import 'server-only';
-import type { JobScope } from '@/lib/server/policy/scope';
+import type { OwnScope } from '@/lib/server/policy/scope';
 import { execute, select, selectOne, type Tx } from './database';
 
 export interface NewJobRow {
@@ -103,7 +103,7 @@ export interface JobFilter {
 }
 
 /** Jobs within the scope, the newest first. */
-export function listJobs(scope: JobScope, filter: JobFilter): Promise<readonly JobRow[]> {
+export function listJobs(scope: OwnScope, filter: JobFilter): Promise<readonly JobRow[]> {
   const where = ['(:all OR j.created_by_id = :owner OR j.programme_id IN (:programmes))'];
   if (filter.state !== undefined) where.push('j.state = :state');
   if (filter.kind !== undefined) where.push('j.kind = :kind');
@@ -121,7 +121,7 @@ export function listJobs(scope: JobScope, filter: JobFilter): Promise<readonly J
 }
 
 /** How many jobs within the scope are in each state. */
-export function countJobs(scope: JobScope): Promise<readonly { state: JobState; n: number }[]> {
+export function countJobs(scope: OwnScope): Promise<readonly { state: JobState; n: number }[]> {
   return select(
     `SELECT state, COUNT(*) AS n FROM jobs
       WHERE :all OR created_by_id = :owner OR programme_id IN (:programmes) GROUP BY state`,

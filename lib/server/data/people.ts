@@ -1,5 +1,6 @@
 import 'server-only';
-import type { ObservatoryRole } from '@/lib/contracts/roles';
+import type { PersonListed } from '@/lib/contracts/people';
+import type { ObservatoryRole, ProgrammeRole } from '@/lib/contracts/roles';
 import { execute, insert, select, selectOne, type Tx } from './database';
 
 export interface PersonRow {
@@ -111,4 +112,34 @@ export async function managerExists(tx: Tx): Promise<boolean> {
     tx,
   );
   return row !== null;
+}
+
+/** Everybody with an account: roles, programmes, state and last sign-in, by name. */
+export async function listPeople(): Promise<readonly PersonListed[]> {
+  const [rows, roles, memberships] = await Promise.all([
+    select<
+      Omit<PersonListed, 'roles' | 'programmes' | 'lastSignIn'> & { id: number; lastSignIn: Date | null }
+    >(
+      `SELECT p.id, p.public_id AS publicId, p.name, p.email,
+              CASE WHEN p.disabled_at IS NOT NULL THEN 'disabled'
+                   WHEN p.password_hash IS NULL THEN 'invited' ELSE 'active' END AS state,
+              (SELECT MAX(e.utc) FROM audit_events e WHERE e.person_id = p.id AND e.act = 'sign-in') AS lastSignIn
+         FROM people p ORDER BY p.name, p.id`,
+    ),
+    select<{ personId: number; role: ObservatoryRole }>(
+      'SELECT person_id AS personId, role FROM person_roles ORDER BY role',
+    ),
+    select<{ personId: number; code: string; role: ProgrammeRole }>(
+      `SELECT m.person_id AS personId, g.code, m.role
+         FROM programme_members m JOIN programmes g ON g.id = m.programme_id ORDER BY g.code`,
+    ),
+  ]);
+  return rows.map(({ id, lastSignIn, ...person }) => ({
+    ...person,
+    lastSignIn: lastSignIn?.toISOString() ?? null,
+    roles: roles.filter(({ personId }) => personId === id).map(({ role }) => role),
+    programmes: memberships
+      .filter(({ personId }) => personId === id)
+      .map(({ code, role }) => ({ code, role })),
+  }));
 }

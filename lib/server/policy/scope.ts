@@ -33,14 +33,14 @@ export function nightScope(caller: Caller): Scope {
   return dataScope(caller);
 }
 
-/** Which jobs a caller may see: the matrix's `job.see`, as a value for lists. */
-export interface JobScope {
+/** Which jobs and audit rows a caller may see: the matrix's `job.see` and `audit.see`, as a value for lists. */
+export interface OwnScope {
   readonly all: boolean;
   readonly ownerId: number;
   readonly programmeIds: readonly number[];
 }
 
-export function jobScope(caller: Caller): JobScope {
+export function ownScope(caller: Caller): OwnScope {
   // No person has the id 0.
   if (caller.kind === 'job') return { all: true, ownerId: 0, programmeIds: [] };
   return {

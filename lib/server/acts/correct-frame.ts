@@ -6,6 +6,7 @@ import { recordAudit } from '@/lib/server/data/audit';
 import { completeFrames, type Completed } from '@/lib/server/data/complete-frames';
 import { inTransaction, type Tx } from '@/lib/server/data/database';
 import { differences } from '@/lib/server/data/differences';
+import { rescaleFluxMagnitudes } from '@/lib/server/data/flux-magnitudes';
 import { framesInTheWay, toFrameValues, updateFrame } from '@/lib/server/data/frame-writes';
 import { findFrame, toFrame, type FrameRow } from '@/lib/server/data/frames';
 import { instrumentOf, type InstrumentRow } from '@/lib/server/data/instruments';
@@ -16,7 +17,10 @@ import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { nightScope } from '@/lib/server/policy/scope';
 
-/** Corrects a frame of an open night; the earlier values stay in the audit trail, the geometry is derived anew. */
+/**
+ * Corrects a frame of an open night; the earlier values stay in the audit trail, the geometry is derived anew,
+ * and magnitudes that were made from counts follow a corrected exposure.
+ */
 export async function correctFrame(
   caller: PersonCaller,
   ids: { readonly night: string; readonly frame: string },
@@ -47,6 +51,7 @@ export async function correctFrame(
     await lockOpenNight(tx, night);
     await present(tx);
     refuse(await clashes(tx, night.id, seen.id, merged));
+    await rescaleFluxMagnitudes(tx, seen, merged.exposure);
     const values = toFrameValues(merged, place, geometry, merged.number);
     // Cannot fail under the night's lock; if it does, nothing may go on.
     if (!(await updateFrame(tx, seen, values))) throw await stale(tx, seen, patch);

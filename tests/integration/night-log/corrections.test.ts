@@ -137,6 +137,81 @@ describe('correcting a frame', () => {
   });
 });
 
+describe('correcting the exposure of a frame that was measured', () => {
+  async function measured(mapping: object, state = 'matched') {
+    const frame = await log();
+    const [row] = await select<{ id: number; night: number }>(
+      'SELECT id, night_id AS night FROM frames WHERE public_id = :id',
+      { id: frame.id },
+    );
+    const set = await insert(
+      `INSERT INTO measurement_sets (public_id, night_id, kind, name, state, file_name, content_type, size, sha256, tolerance, mapping, comments, uploaded_by_id)
+       VALUES (:publicId, :night, 'target', 'cluster', :state, 'a.csv', 'text/csv', 1, :sha, 2, :mapping, '', :person)`,
+      {
+        publicId: newPublicId(),
+        night: row?.night ?? 0,
+        state,
+        sha: 'a'.repeat(64),
+        mapping: JSON.stringify(mapping),
+        person: noor.personId,
+      },
+      null,
+    );
+    const values = { set, frame: row?.id ?? 0, other: (row?.id ?? 0) + 1000 };
+    await execute(
+      'INSERT INTO measurement_set_frames (set_id, frame_id, n_rows) VALUES (:set, :frame, 1)',
+      values,
+      null,
+    );
+    await execute(
+      `INSERT INTO measurements (set_id, row_no, frame_id, star_no, inst_mag, inst_err)
+       VALUES (:set, 1, :frame, 1, 14, 0.01), (:set, 2, :other, 1, 15, 0.01)`,
+      values,
+      null,
+    );
+    const magnitudes = async (): Promise<readonly number[]> =>
+      (
+        await select<{ mag: number }>(
+          'SELECT inst_mag AS mag FROM measurements WHERE set_id = :set ORDER BY row_no',
+          values,
+        )
+      ).map(({ mag }) => mag);
+    return { frame, magnitudes };
+  }
+
+  it('takes magnitudes that were made from counts along: they are of counts per second', async () => {
+    const { frame, magnitudes } = await measured({ frame: 'frame', flux: 'flux', flux_err: 'flux_err' });
+    await correct(frame, { exposure: 600 });
+    // Ten times the exposure for the same counts: 2.5 mag fainter.
+    expect(await magnitudes()).toEqual([16.5, 15]);
+    await correct({ ...frame, version: 2 }, { comment: 'checked' });
+    expect(await magnitudes()).toEqual([16.5, 15]);
+  });
+
+  it('leaves magnitudes that were given as they are', async () => {
+    const { frame, magnitudes } = await measured({ frame: 'frame', inst_mag: 'inst_mag' });
+    await correct(frame, { exposure: 600 });
+    expect(await magnitudes()).toEqual([14, 15]);
+  });
+
+  it.each([
+    ['a solution stands on magnitudes from counts', { flux: 'flux' }, 'in use', 'a solution stands on them'],
+    [
+      'counts and magnitudes stand beside each other',
+      { flux: 'flux', inst_mag: 'm' },
+      'matched',
+      'not known which rows',
+    ],
+  ])('is refused where %s', async (_, mapping, state, words) => {
+    const { frame, magnitudes } = await measured(mapping, state);
+    const fault = await faultOf(correct(frame, { exposure: 600 }));
+    expect(fault.code).toBe('conflict');
+    expect(fault.message).toContain(words);
+    expect(await magnitudes()).toEqual([14, 15]);
+    expect((await correct(frame, { comment: 'hazy' })).comment).toBe('hazy');
+  });
+});
+
 describe('withdrawing a frame', () => {
   const remove = (frame: Frame, reason = 'logged twice'): Promise<void> =>
     removeFrame(noor, { night: night.id, frame: frame.id }, reason);

@@ -1,6 +1,6 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
-import { formatDeclination, formatRightAscension } from '@/app/_components/ui/format-angle';
+import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { PageHead } from '@/app/_components/ui/page-head';
 import { callerOrSignIn } from '@/lib/server/identity/current-caller';
@@ -43,7 +43,7 @@ export default async function FieldPage(props: PageProps<'/standards/[field]'>) 
         <span className="text-ink-2">
           {field.nStars === 1 ? 'One standard star' : `${field.nStars} standard stars`} around{' '}
           <span className="font-mono">
-            {formatRightAscension(field.ra, 0)} {formatDeclination(field.dec)}
+            {formatRightAscension(field.ra, 0)} {formatDeclination(field.dec, 0)}
           </span>
         </span>
       </PageHead>

@@ -1,7 +1,7 @@
 import Link from 'next/link';
 import type { Route } from 'next';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatDeclination, formatRightAscension } from '@/app/_components/ui/format-angle';
+import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { formatFixed, noValue } from '@/app/_components/ui/format-figure';
 import { formatDateInWords, formatMinutes } from '@/app/_components/ui/format-time';
 import { Panel } from '@/app/_components/ui/panel';
@@ -97,7 +97,7 @@ export function FieldTable({ fields, list, telescope }: FieldTableProps) {
               ) : null}
             </Cell>
             <Cell numeric>{formatRightAscension(field.ra, 0)}</Cell>
-            <Cell numeric>{formatDeclination(field.dec)}</Cell>
+            <Cell numeric>{formatDeclination(field.dec, 0)}</Cell>
             <Cell numeric>{range(field.V, 1)}</Cell>
             <Cell numeric>{range(field.BV, 2)}</Cell>
             <TonightCells tonight={field.tonight} />

@@ -1,5 +1,5 @@
 import { Figure } from '@/app/_components/ui/figure';
-import { formatDeclination, formatRightAscension } from '@/app/_components/ui/format-angle';
+import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { formatFixed, formatSigned } from '@/app/_components/ui/format-figure';
 import { KeyValues } from '@/app/_components/ui/key-values';
 import type { FieldStar } from './field-star';

@@ -27,11 +27,10 @@ export function PeopleTable({ people, mayManage, own }: PeopleTableProps) {
         head={
           <tr>
             <HeadCell>Name</HeadCell>
-            <HeadCell>E-mail</HeadCell>
             <HeadCell>Roles</HeadCell>
             <HeadCell>Programmes</HeadCell>
             <HeadCell>State</HeadCell>
-            <HeadCell unit="UTC">Last sign-in</HeadCell>
+            <HeadCell>Last sign-in</HeadCell>
             {mayManage ? (
               <HeadCell>
                 <span className="sr-only">Actions</span>
@@ -44,8 +43,8 @@ export function PeopleTable({ people, mayManage, own }: PeopleTableProps) {
           <Row key={person.publicId} className={person.state === 'disabled' ? 'text-ink-2' : undefined}>
             <Cell heading className="font-medium">
               {person.name}
+              <span className="block text-small font-normal text-ink-2">{person.email}</span>
             </Cell>
-            <Cell>{person.email}</Cell>
             <Cell>{person.roles.map((role) => roleNames[role]).join(', ')}</Cell>
             <Cell wrap>
               {person.programmes.map(({ code, role }) => (

@@ -52,8 +52,14 @@ export function faultsOf(operation: Operation): readonly FaultCode[] {
   return [...codes].sort((a, b) => problems[a].status - problems[b].status);
 }
 
+/** Bytes as they are, or as the one file of a form. */
 const contentOf = (types: readonly string[]) =>
-  Object.fromEntries(types.map((type) => [type, { schema: binary }] as const));
+  Object.fromEntries(
+    types.map((type) => {
+      const form = { type: 'object' as const, properties: { file: binary }, required: ['file'] };
+      return [type, { schema: type === 'multipart/form-data' ? form : binary }] as const;
+    }),
+  );
 
 function responses(operation: Operation): ZodOpenApiResponsesObject {
   const status = operation.status ?? (operation.answer || operation.stream ? 200 : 204);

@@ -38,4 +38,3 @@ export function problemResponse(fault: Fault | null, requestId: string): Respons
   return new Response(JSON.stringify(body), { status, headers });
 }
 
-export const problemStatus = (code: FaultCode): number => problems[code].status;

@@ -45,7 +45,7 @@ export function HeadCell({ numeric = false, unit, className, children, ...rest }
       scope="col"
       {...rest}
       className={classNames(
-        'border-b border-rule-strong px-2.5 py-1.5 align-bottom text-small font-medium whitespace-nowrap text-ink-2',
+        'border-b border-rule-strong px-2 py-1.5 align-bottom text-small font-medium whitespace-nowrap text-ink-2 first:pl-3.5 last:pr-3.5',
         numeric ? 'text-right' : 'text-left',
         className,
       )}
@@ -98,10 +98,10 @@ export function Cell({
   ...rest
 }: CellProps) {
   const classes = classNames(
-    'border-b border-rule px-2.5 py-1.5 text-left font-normal',
+    'border-b border-rule px-2 py-1.5 first:pl-3.5 last:pr-3.5 text-left font-normal',
     numeric && 'text-right font-mono',
     mono && 'font-mono',
-    wrap ? 'min-w-40' : 'whitespace-nowrap',
+    wrap ? 'min-w-32' : 'whitespace-nowrap',
     className,
   );
   return heading ? <th scope="row" {...rest} className={classes} /> : <td {...rest} className={classes} />;

@@ -30,7 +30,13 @@ export function Dialog({
   useEffect(() => {
     const dialog = ref.current;
     if (dialog === null) return;
-    if (open && !dialog.open) dialog.showModal();
+    if (open && !dialog.open) {
+      dialog.showModal();
+      // The browser's own choice is the first field; some forms begin at another.
+      const first = dialog.querySelector<HTMLInputElement>('input[data-first]');
+      first?.focus();
+      first?.select();
+    }
     if (!open && dialog.open) dialog.close();
   }, [open]);
   return (

@@ -1,0 +1,20 @@
+'use client';
+
+import type { Route } from 'next';
+import { usePathname } from 'next/navigation';
+import { Tabs } from '@/app/_components/ui/tabs';
+import { useNight } from './night-provider';
+
+/** Parts of the night. Each is added here together with its page. */
+export function NightTabs() {
+  const { log } = useNight();
+  const pathname = usePathname();
+  const home = `/nights/${log.night.id}`;
+  const tabs = [{ href: home as Route, label: 'Log', count: String(log.frames.length) }];
+  return (
+    <Tabs
+      label="Parts of the night"
+      tabs={tabs.map((tab) => ({ ...tab, isCurrent: pathname === tab.href }))}
+    />
+  );
+}

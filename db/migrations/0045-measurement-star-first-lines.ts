@@ -7,4 +7,5 @@ ALTER TABLE measurement_stars
   ADD COLUMN IF NOT EXISTS first_line INT UNSIGNED NOT NULL DEFAULT 0 COMMENT 'line of the file' AFTER n_rows
 `);
 
-export const down: Migration = ({ run }) => run('ALTER TABLE measurement_stars DROP COLUMN IF EXISTS first_line');
+export const down: Migration = ({ run }) =>
+  run('ALTER TABLE measurement_stars DROP COLUMN IF EXISTS first_line');

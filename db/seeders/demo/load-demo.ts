@@ -16,14 +16,6 @@ import { loadNight } from './load-night';
 import { loadPeople, type PersonIds } from './load-people';
 import { clockTime, minute_ms } from './night-time';
 
-/** Internal ids of what the nights refer to. */
-export interface DemoIds {
-  readonly telescope: number;
-  readonly people: PersonIds;
-  /** By programme code. */
-  readonly programmes: ReadonlyMap<string, number>;
-}
-
 /** The night in progress, as it was put into the log, and the frames that its log misses. */
 export interface LoadedDemo {
   readonly tonight: ObservedNight;

@@ -9,7 +9,7 @@ import { TimeLoss } from '../../models/time-loss';
 import { newPublicId } from '@/lib/server/data/public-id';
 import type { DemoNight } from './demo-world';
 import type { ObservedNight } from './demo-nights';
-import type { DemoIds } from './load-demo';
+import type { DemoIds } from './demo-ids';
 import { minute_ms } from './night-time';
 import { conditionTimes, type DemoFrame } from './plan-frames';
 import { weatherOf } from './weather';

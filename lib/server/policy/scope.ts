@@ -51,4 +51,6 @@ export function ownScope(caller: Caller): OwnScope {
 }
 
 /** Scope for programmes themselves: the observatory's staff see all, investigators their own. */
-export const programmeScope = nightScope;
+export function programmeScope(caller: Caller): Scope {
+  return nightScope(caller);
+}

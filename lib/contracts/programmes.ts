@@ -51,3 +51,8 @@ export const SaveTarget = z.object({
 });
 
 export const RemoveTarget = z.object({ programme: ProgrammeCode, target: z.string().min(1).max(80) });
+
+export const ArchiveProgramme = z.object({
+  programme: ProgrammeCode,
+  isArchived: z.enum(['yes', 'no']).transform((value) => value === 'yes'),
+});

@@ -16,6 +16,7 @@ export interface Place {
 export const places: readonly Place[] = [
   { label: 'Tonight', href: '/', part: 'bar' },
   { label: 'Nights', href: '/nights', part: 'bar' },
+  { label: 'Programmes', href: '/programmes', part: 'bar' },
   { label: 'Standards', href: '/standards', part: 'bar' },
   { label: 'People', href: '/people', part: 'office', roles: ['manager', 'photometrist'] },
   { label: 'Settings', href: '/settings', part: 'office', roles: ['manager'] },

@@ -232,3 +232,35 @@ export async function updateTarget(id: number, target: NewTarget, tx: Tx): Promi
 export async function deleteTarget(id: number, tx: Tx): Promise<boolean> {
   return (await execute('DELETE FROM programme_targets WHERE id = :id', { id }, tx)) === 1;
 }
+
+/** Archives or takes back; false when it is so already. */
+export async function setArchived(id: number, isArchived: boolean, tx: Tx): Promise<boolean> {
+  const changed = await execute(
+    `UPDATE programmes SET archived_at = IF(:isArchived, NOW(3), NULL)
+      WHERE id = :id AND (archived_at IS NOT NULL) <> :isArchived`,
+    { id, isArchived },
+    tx,
+  );
+  return changed === 1;
+}
+
+export interface ProgrammeNight {
+  readonly night: string;
+  readonly date: string;
+  readonly telescope: string;
+  readonly state: string;
+  /** The programme's own. */
+  readonly frames: number;
+}
+
+/** Nights with frames of the programme, the latest first. */
+export async function nightsWith(programmeId: number): Promise<readonly ProgrammeNight[]> {
+  return select<ProgrammeNight>(
+    `SELECT n.public_id AS night, DATE_FORMAT(n.date, '%Y-%m-%d') AS date, t.name AS telescope, n.state,
+            f.frames
+       FROM (SELECT night_id, COUNT(*) AS frames FROM frames WHERE programme_id = :programmeId GROUP BY night_id) f
+       JOIN nights n ON n.id = f.night_id JOIN telescopes t ON t.id = n.telescope_id
+      ORDER BY n.date DESC, t.code`,
+    { programmeId },
+  );
+}

@@ -1,4 +1,5 @@
 import 'server-only';
+import { AsyncLocalStorage } from 'node:async_hooks';
 import { QueryTypes, Transaction } from 'sequelize';
 import { database } from '@/db/connection';
 
@@ -8,11 +9,23 @@ export type Tx = Transaction;
 export type SqlValue = string | number | boolean | Date | Buffer | null | readonly (string | number)[];
 export type SqlValues = Readonly<Record<string, SqlValue>>;
 
+type InTransaction = (tx: Tx) => Promise<void>;
+const companion = new AsyncLocalStorage<InTransaction>();
+
+/** Runs `work`; every transaction within it also does `also`, just before it commits. */
+export function withCompanion<T>(also: InTransaction, work: () => Promise<T>): Promise<T> {
+  return companion.run(also, work);
+}
+
 /** Runs `work` in one transaction: all of it happens, or nothing. */
 export function inTransaction<T>(work: (tx: Tx) => Promise<T>): Promise<T> {
   return database().transaction(
     { isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED },
-    work,
+    async (tx) => {
+      const result = await work(tx);
+      await companion.getStore()?.(tx);
+      return result;
+    },
   ) as Promise<T>;
 }
 

@@ -1,12 +1,15 @@
 import 'server-only';
-import { execute, selectOne } from './database';
+import { execute, selectOne, type Tx } from './database';
 
 export interface StoredAnswer {
   readonly fingerprint: string;
-  /** Null while the first request still runs. */
+  /** Null while the first request still runs; `doneUnanswered` once its change is in and its answer is not. */
   readonly status: number | null;
   readonly body: string | null;
 }
+
+/** The status of a request whose change has been committed and whose answer has not been kept. */
+export const doneUnanswered = 0;
 
 /** Kept for two days: longer than any link stays down in a night. */
 const keep_hours = 48;
@@ -37,6 +40,19 @@ export async function takeKey(
   return selectOne<StoredAnswer>(
     'SELECT fingerprint, status, body FROM idempotency_keys WHERE person_id = :person AND idempotency_key = :key',
     values,
+  );
+}
+
+/**
+ * Notes, in the transaction of the change itself, that the request is done. From then on the key is not free, even if
+ * the process dies before the answer is kept: the change is never made twice.
+ */
+export async function markDone(tx: Tx, personId: number, key: string): Promise<void> {
+  await execute(
+    `UPDATE idempotency_keys SET status = :status
+      WHERE person_id = :person AND idempotency_key = :key AND status IS NULL`,
+    { person: personId, key, status: doneUnanswered },
+    tx,
   );
 }
 

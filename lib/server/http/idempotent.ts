@@ -1,7 +1,8 @@
 import 'server-only';
 import { createHash } from 'node:crypto';
 import { Fault } from '@/lib/faults/fault';
-import { freeKey, storeAnswer, takeKey } from '@/lib/server/data/idempotency';
+import { withCompanion } from '@/lib/server/data/database';
+import { doneUnanswered, freeKey, markDone, storeAnswer, takeKey } from '@/lib/server/data/idempotency';
 
 /** The header's value is a structured-field string; a bare one is taken as well. */
 export function idempotencyKey(headers: Headers): string | null {
@@ -30,12 +31,13 @@ export async function idempotent(keyed: Keyed, work: () => Promise<Response>): P
   const earlier = await takeKey(personId, key, fingerprint);
   if (earlier) return replay(earlier, fingerprint);
   try {
-    const response = await work();
+    const response = await withCompanion((tx) => markDone(tx, personId, key), work);
     const body = await response.clone().text();
     await storeAnswer(personId, key, response.status, body);
     return response;
   } catch (error) {
-    // A refused request changed nothing: the sender may mend it or try again under the same key.
+    // A refused request changed nothing: the sender may mend it or try again under the same key. One whose change is
+    // in keeps the key.
     await freeKey(personId, key);
     throw error;
   }
@@ -52,6 +54,12 @@ function replay(
     throw new Fault('conflict', 'The first request with this Idempotency-Key is still running.', {
       retryAfter_s: 2,
     });
+  }
+  if (earlier.status === doneUnanswered) {
+    throw new Fault(
+      'conflict',
+      'The first request with this Idempotency-Key was done, but its answer is lost. Read what it made; do not send it again.',
+    );
   }
   return new Response(earlier.status === 204 ? null : earlier.body, {
     status: earlier.status,

@@ -1,6 +1,6 @@
 import 'server-only';
 import { problems } from '@/lib/contracts/api/problem';
-import { Fault, isFault, type FaultCode } from '@/lib/faults/fault';
+import { Fault, isFault } from '@/lib/faults/fault';
 import { isOutage } from '@/lib/server/data/outage';
 import { logger } from '@/lib/server/log/logger';
 

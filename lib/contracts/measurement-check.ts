@@ -44,13 +44,19 @@ export interface CheckResult {
   readonly load: LoadPlan | null;
 }
 
-/** Tab-separated files in the order of the tables' columns; see lib/server/data/measurement-loads.ts. */
+/** A tab-separated file in the order of a table's columns; see lib/server/data/measurement-loads.ts. */
+export interface Slice {
+  readonly file: string;
+  readonly rows: number;
+}
+
+/** What is to be loaded when a table has no fault, beside the slices of rows that were handed over before. */
 export interface LoadPlan {
-  readonly slices: readonly { readonly file: string; readonly rows: number }[];
-  readonly stars: { readonly file: string; readonly rows: number };
-  readonly flags: { readonly file: string; readonly rows: number };
+  /** Slices with rows on frames that are yet to be created: −1 stands for the first of these, −2 for the second, … */
+  readonly slices: readonly Slice[];
+  readonly stars: readonly Slice[];
+  readonly flags: readonly Slice[];
   readonly matchedRows: number;
-  /** In the rows, a frame that is to be created stands as −1 for the first of these, −2 for the second, … */
   readonly newFrames: readonly NewFrame[];
   /** The frames that the rows name: ids of the log, or −1, −2, … as above, with their numbers of rows. */
   readonly usedFrames: readonly { readonly frame: number; readonly rows: number }[];

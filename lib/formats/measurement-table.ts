@@ -6,7 +6,7 @@ import {
 import type { CsvFault, CsvSink } from './csv-reader';
 import { excerpt, type IssueList, type IssueText } from './issue-list';
 import { fieldCountText, headerIssues } from './measurement-header';
-import { emptyRow, fillRow, type MeasurementRow } from './measurement-row';
+import { columnPlaces, emptyRow, fillRow, takeTexts, type MeasurementRow } from './measurement-row';
 
 /** Which header stands for which column, once the headers are known. */
 export type MappingFor = (headers: readonly string[]) => ColumnMapping;
@@ -38,16 +38,12 @@ export function measurementTable(
   let positions: ReadonlyMap<MeasurementColumn, number> = new Map();
   let usable = false;
   let rows = 0;
+  let places = columnPlaces(positions);
   const row = emptyRow();
-  let current: readonly string[] = [];
 
   // One closure for all rows: a million of them would keep the collector busy.
-  const text = (column: MeasurementColumn): string => {
-    const position = positions.get(column);
-    return position === undefined ? '' : (current[position]?.trim() ?? '');
-  };
   const reportHere = (column: MeasurementColumn, issue: IssueText): void => {
-    report(row.line, column, text(column), issue);
+    report(row.line, column, row.texts[column], issue);
   };
   const headerOf = (column: MeasurementColumn): string =>
     headers?.[positions.get(column) ?? -1]?.trim() ?? column;
@@ -59,6 +55,7 @@ export function measurementTable(
     headers = fields;
     const mapping = mappingFor(fields);
     positions = columnPositions(fields, mapping);
+    places = columnPlaces(positions);
     const found = headerIssues(fields, mapping, positions);
     found.forEach((issue) => issues.add({ path: '', line, ...issue }));
     usable = found.length === 0;
@@ -80,8 +77,8 @@ export function measurementTable(
     const before = issues.total();
     row.rowNo = rows;
     row.line = line;
-    current = fields;
-    fillRow(row, text, reportHere);
+    takeTexts(row.texts, fields, places);
+    fillRow(row, reportHere);
     sink.row(row, issues.total() > before);
   }
 

@@ -37,9 +37,6 @@ export function angleOf(
   text: string,
 ): number | { readonly message: string; readonly remedy: string } {
   const isRa = column === 'ra';
-  const decimal = numberOf(text);
-  // Nearly every table has decimal degrees; the full reading is for the rest and for saying what is wrong.
-  if (decimal !== null && (isRa ? decimal >= 0 && decimal < 360 : Math.abs(decimal) <= 90)) return decimal;
   const parsed = isRa ? parseRightAscension(text) : parseDeclination(text);
   if (parsed.ok) return parsed.degrees;
   return {

@@ -36,8 +36,13 @@ export async function migrateDatabase(database: DatabaseAddress): Promise<void> 
   await run(database, script('db/migrate.ts'));
 }
 
+/** Loads the reference data, as the start script does. */
+export async function seedReferenceData(database: DatabaseAddress): Promise<void> {
+  await run(database, script('db/seeders/main.ts', 'reference'));
+}
+
 /** Loads the reference data, then the demo, as the start script does. */
 export async function seedDatabase(database: DatabaseAddress, env: Variables): Promise<void> {
-  await run(database, script('db/seeders/main.ts', 'reference'), env);
+  await seedReferenceData(database);
   await run(database, script('db/seeders/main.ts', 'demo'), env);
 }

@@ -2,7 +2,7 @@ import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { starKey } from '@/lib/contracts/star-name';
-import type { CheckResult } from '@/lib/contracts/measurement-check';
+import type { CheckResult, Slice } from '@/lib/contracts/measurement-check';
 import type { CheckOrder, LoggedFrame } from '@/workers/threads/check-measurements/messages';
 import { tableCheck } from '@/workers/threads/check-measurements/table-check';
 
@@ -81,23 +81,21 @@ export function checkTable(
 ): CheckedTable {
   const folder = mkdtempSync(path.join(tmpdir(), 'evenfall-table-'));
   try {
-    const check = tableCheck(order({ ...given, folder }));
+    const slices: Slice[] = [];
+    const check = tableCheck(order({ ...given, folder }), (slice) => slices.push(slice));
     const bytes = typeof content === 'string' ? Buffer.from(content) : content;
     for (let at = 0; at < bytes.length; at += pieceSize) check.push(bytes.subarray(at, at + pieceSize));
     const result = check.finish(() => undefined);
-    const read = (file: string | undefined): string[][] =>
-      file
-        ? readFileSync(file, 'utf8')
-            .split('\n')
-            .slice(0, -1)
-            .map((line) => line.split('\t'))
-        : [];
-    return {
-      result,
-      rows: result.load?.slices.flatMap(({ file }) => read(file)) ?? [],
-      stars: read(result.load?.stars.file),
-      flags: read(result.load?.flags.file),
-    };
+    const read = (files: readonly Slice[] = []): string[][] =>
+      files.flatMap(({ file }) =>
+        readFileSync(file, 'utf8')
+          .split('\n')
+          .slice(0, -1)
+          .map((line) => line.split('\t')),
+      );
+    const { load } = result;
+    const rows = load === null ? [] : read([...slices, ...load.slices]);
+    return { result, rows, stars: read(load?.stars), flags: read(load?.flags) };
   } finally {
     rmSync(folder, { recursive: true, force: true });
   }

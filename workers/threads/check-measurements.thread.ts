@@ -4,7 +4,7 @@ import type { CheckMessage, CheckOrder } from './check-measurements/messages';
 import { tableCheck } from './check-measurements/table-check';
 
 /** Bytes that are read at once: rows of one piece live together, so this bounds memory. */
-const piece = 512 * 1024;
+const piece = 128 * 1024;
 /** Time between two messages about progress. [ms] */
 const pause_ms = 250;
 
@@ -12,7 +12,7 @@ const send = (message: CheckMessage): void => parentPort?.postMessage(message);
 
 /** Reads the original from its first byte to its last. The thread has nothing else to do, so it reads without waiting. */
 function check(order: CheckOrder): void {
-  const run = tableCheck(order);
+  const run = tableCheck(order, (slice) => send({ kind: 'slice', slice }));
   const descriptor = openSync(order.original, 'r');
   const { size } = fstatSync(descriptor);
   const buffer = Buffer.allocUnsafe(piece);

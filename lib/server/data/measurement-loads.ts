@@ -1,15 +1,9 @@
 import 'server-only';
 import { database } from '@/db/connection';
+import type { LoadPlan, Slice } from '@/lib/contracts/measurement-check';
 import type { Issue } from '@/lib/faults/fault';
 import { execute, type Tx } from './database';
 import { loadRows } from './load-rows';
-
-/** Files that a check has written, in the order of the tables' columns. */
-export interface LoadFiles {
-  readonly slices: readonly { readonly file: string; readonly rows: number }[];
-  readonly stars: { readonly file: string; readonly rows: number };
-  readonly flags: { readonly file: string; readonly rows: number };
-}
 
 const rowColumns = ['row_no', '@frame', 'star_no', 'inst_mag', 'inst_err', 'ra', 'decl'];
 const keptColumns = ['x', 'y', 'fwhm', 'sky', 'peak', 'flag_no'];
@@ -26,26 +20,37 @@ const starColumns = [
   'reason',
 ];
 
-/** Loads the rows, stars and flags of a set. In the files a frame that was just created stands as −1, −2, …, for the first, second, … of `created`. */
-export async function loadMeasurements(
-  tx: Tx,
-  load: { readonly setId: number; readonly files: LoadFiles; readonly created: readonly number[] },
-  onSlice: (rows: number) => void,
-): Promise<void> {
-  const { setId, files, created } = load;
-  const set = { set_id: String(setId) };
-  if (files.flags.rows > 0) {
-    await loadRows(tx, { ...files.flags, table: 'measurement_flags', columns: ['flag_no', 'text'], set });
-  }
-  await loadRows(tx, { ...files.stars, table: 'measurement_stars', columns: starColumns, set });
+export interface SliceLoad {
+  readonly setId: number;
+  readonly slice: Slice;
+  /** Ids of the frames that the file calls −1, −2, … */
+  readonly created: readonly number[];
+}
+
+/** Loads a slice of a set's rows. */
+export async function loadRowSlice(tx: Tx, { setId, slice, created }: SliceLoad): Promise<void> {
   const frame =
     created.length === 0 ? '@frame' : `IF(@frame > 0, @frame, ELT(-@frame, ${created.join(', ')}))`;
-  let rows = 0;
-  for (const slice of files.slices) {
-    const columns = [...rowColumns, ...keptColumns];
-    await loadRows(tx, { ...slice, table: 'measurements', columns, set: { ...set, frame_id: frame } });
-    rows += slice.rows;
-    onSlice(rows);
+  await loadRows(tx, {
+    ...slice,
+    table: 'measurements',
+    columns: [...rowColumns, ...keptColumns],
+    set: { set_id: String(setId), frame_id: frame },
+  });
+}
+
+/** Loads the stars and flags that a set's rows name by number. */
+export async function loadStarsAndFlags(
+  tx: Tx,
+  setId: number,
+  plan: Pick<LoadPlan, 'stars' | 'flags'>,
+): Promise<void> {
+  const set = { set_id: String(setId) };
+  for (const slice of plan.flags) {
+    await loadRows(tx, { ...slice, table: 'measurement_flags', columns: ['flag_no', 'text'], set });
+  }
+  for (const slice of plan.stars) {
+    await loadRows(tx, { ...slice, table: 'measurement_stars', columns: starColumns, set });
   }
 }
 

@@ -139,17 +139,6 @@ function looseFile(file: string): string {
 /** Where a row contradicts the frame that it names. */
 function disagreements(frame: RegisteredFrame, row: FrameRow): readonly FrameIssue[] {
   const issues: FrameIssue[] = [];
-  const where = frame.line === 0 ? 'in the night log' : `in line ${frame.line}`;
-  const differs = (column: MeasurementColumn, there: string): void => {
-    issues.push({
-      column,
-      message: `This frame has ${there} ${where}.`,
-      remedy:
-        frame.line === 0
-          ? 'Correct the table, or the frame in the log.'
-          : 'Write one value for the whole frame.',
-    });
-  };
   if (noStars.has(frame.type)) {
     const message = `This frame is a ${frame.type}: no star is measured on it.`;
     issues.push({ column: 'frame', message, remedy: 'Correct the frame’s number, or its type in the log.' });
@@ -161,18 +150,29 @@ function disagreements(frame: RegisteredFrame, row: FrameRow): readonly FrameIss
       remedy: 'Enter its band in the log, then upload the table again.',
     });
   }
-  if (row.band !== '' && frame.band !== null && row.band !== frame.band)
-    differs('band', `the band ${frame.band}`);
-  const slack = Math.max(exposureSlack_s, exposureSlack * frame.exposure_s);
-  if (Math.abs(row.exposure_s - frame.exposure_s) > slack)
-    differs('exposure', `an exposure of ${frame.exposure_s} s`);
+  if (row.band !== '' && frame.band !== null && row.band !== frame.band) {
+    issues.push(differs(frame, 'band', `the band ${frame.band}`));
+  }
+  if (!Number.isNaN(row.exposure_s)) {
+    const slack = Math.max(exposureSlack_s, exposureSlack * frame.exposure_s);
+    if (Math.abs(row.exposure_s - frame.exposure_s) > slack) {
+      issues.push(differs(frame, 'exposure', `an exposure of ${frame.exposure_s} s`));
+    }
+  }
   if (frame.line > 0 && Math.abs(row.utcStart - frame.utcStart) > sameStart_ms) {
-    differs('utc_start', `the start ${new Date(frame.utcStart).toISOString()}`);
+    issues.push(differs(frame, 'utc_start', `the start ${new Date(frame.utcStart).toISOString()}`));
   }
   if (frame.line > 0 && row.type !== '' && row.type !== frame.type) {
-    differs('type', frame.type === '' ? 'no type' : `the type ${frame.type}`);
+    issues.push(differs(frame, 'type', frame.type === '' ? 'no type' : `the type ${frame.type}`));
   }
   return issues;
+}
+
+function differs(frame: RegisteredFrame, column: MeasurementColumn, there: string): FrameIssue {
+  const where = frame.line === 0 ? 'in the night log' : `in line ${frame.line}`;
+  const remedy =
+    frame.line === 0 ? 'Correct the table, or the frame in the log.' : 'Write one value for the whole frame.';
+  return { column, message: `This frame has ${there} ${where}.`, remedy };
 }
 
 /** Why a frame that the log does not have cannot be created from a row. */

@@ -1,6 +1,6 @@
 import { standardMatcher, type StandardMatch } from '@/lib/photometry/match-standards';
 import { frameField, type RegisteredFrame } from './frame-register';
-import type { LoadPlan } from '@/lib/contracts/measurement-check';
+import type { LoadPlan, Slice } from '@/lib/contracts/measurement-check';
 import type { CheckOrder } from './messages';
 import { newFrames } from './new-frames';
 import { numberField, rowFile, textField } from './row-files';
@@ -15,16 +15,17 @@ export function matchStars(
   frames: readonly RegisteredFrame[],
 ): Matched {
   const matches = order.kind === 'target' ? [] : matchAll(order, stars);
-  const file = rowFile(order.folder, 'stars');
+  const files: Slice[] = [];
+  const file = rowFile(order.folder, 'stars', (slice) => files.push(slice));
   for (let star = 0; star < stars.stars(); star += 1)
     file.write(starLine(order, stars, { star, match: matches[star] }));
   let matchedRows = 0;
   matches.forEach((match, star) => {
     if (match.kind === 'matched') matchedRows += stars.rowsOf(star);
   });
-  const written = file.close();
+  file.close();
   return {
-    stars: written[0] ?? { file: '', rows: 0 },
+    stars: files,
     matchedRows,
     newFrames: newFrames(order, stars, { frames, matches }),
     usedFrames: usedFrames(order, stars, frames),

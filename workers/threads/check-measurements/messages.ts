@@ -1,7 +1,7 @@
 import type { Site } from '@/lib/astro/site';
 import type { Band, FrameType } from '@/lib/contracts/bands';
 import type { ColumnMapping } from '@/lib/contracts/measurement-columns';
-import type { CheckResult } from '@/lib/contracts/measurement-check';
+import type { CheckResult, Slice } from '@/lib/contracts/measurement-check';
 import type { MeasurementKind } from '@/lib/contracts/measurement-kinds';
 import type { StandardTable } from '@/lib/photometry/match-standards';
 
@@ -66,5 +66,6 @@ export interface NightBounds {
 
 export type CheckMessage =
   | { readonly kind: 'reading'; readonly bytes: number; readonly size: number; readonly rows: number }
+  | { readonly kind: 'slice'; readonly slice: Slice }
   | { readonly kind: 'matching'; readonly rows: number }
   | { readonly kind: 'end'; readonly result: CheckResult };

@@ -1,6 +1,6 @@
 import type { MeasurementColumn } from '@/lib/contracts/measurement-columns';
 import type { IssueList } from '@/lib/formats/issue-list';
-import { keptColumns, type MeasurementRow } from '@/lib/formats/measurement-row';
+import type { MeasurementRow } from '@/lib/formats/measurement-row';
 import type { MeasurementTable } from '@/lib/formats/measurement-table';
 import { magnitudeErrorOfFlux, magnitudeOfFlux } from '@/lib/photometry/instrumental-magnitude';
 import { frameField, type FrameRegister } from './frame-register';
@@ -52,9 +52,7 @@ export function rowCheck({ frames, stars, nLogged, report, issues, slices }: Row
     const star = starOf(row, frame);
     const flag = flagNumber(row);
     if (star === null || issues.total() > 0) return; // nothing will be loaded: only faults are still looked for
-    const mag = needsExposure ? magnitudeOfFlux(row.flux, exposure_s) : row.mag;
-    const err = Number.isNaN(row.err) ? magnitudeErrorOfFlux(row.flux, row.fluxErr) : row.err;
-    slices.write(rowLine(row, { frame: frameField(id, frame, nLogged), star, mag, err, flag }));
+    slices.write(rowLine(row, { frame: frameField(id, frame, nLogged), star, flag, exposure_s }));
   }
 
   function starOf(row: MeasurementRow, frame: number): number | null {
@@ -105,14 +103,21 @@ interface RowValues {
   readonly frame: number;
   /** From 0. */
   readonly star: number;
-  readonly mag: number;
-  readonly err: number;
   readonly flag: number;
+  readonly exposure_s: number;
 }
 
-/** row_no, frame, star_no, inst_mag, inst_err, ra, decl, x, y, fwhm, sky, peak, flag_no */
-function rowLine(row: MeasurementRow, { frame, star, mag, err, flag }: RowValues): string {
-  let line = `${row.rowNo}\t${frame}\t${star + 1}\t${mag}\t${err}\t${numberField(row.ra)}\t${numberField(row.dec)}`;
-  for (const column of keptColumns) line += `\t${row.kept[column] || '\\N'}`;
-  return `${line}\t${numberField(flag)}`;
+/**
+ * row_no, frame, star_no, inst_mag, inst_err, ra, decl, x, y, fwhm, sky, peak, flag_no. A number that was read as a plain
+ * decimal goes on as it stands in the file: writing it anew costs time and cannot make it truer.
+ */
+function rowLine(row: MeasurementRow, { frame, star, flag, exposure_s }: RowValues): string {
+  const { texts } = row;
+  const mag = texts.inst_mag || String(magnitudeOfFlux(row.flux, exposure_s));
+  const err = texts.inst_err || String(magnitudeErrorOfFlux(row.flux, row.fluxErr));
+  const ra = row.isPlaceDecimal ? texts.ra || '\\N' : numberField(row.ra);
+  const dec = row.isPlaceDecimal ? texts.dec || '\\N' : numberField(row.dec);
+  const head = `${row.rowNo}\t${frame}\t${star + 1}\t${mag}\t${err}\t${ra}\t${dec}`;
+  const kept = `${texts.x || '\\N'}\t${texts.y || '\\N'}\t${texts.fwhm || '\\N'}\t${texts.sky || '\\N'}\t${texts.peak || '\\N'}`;
+  return `${head}\t${kept}\t${Number.isNaN(flag) ? '\\N' : flag}`;
 }

@@ -1,52 +1,63 @@
 import { closeSync, openSync, writeSync } from 'node:fs';
 import path from 'node:path';
+import type { Slice } from '@/lib/contracts/measurement-check';
 
-/** Tab-separated lines as LOAD DATA reads them, written in pieces; one file, or one for every so many rows. */
+/** Tab-separated lines as LOAD DATA reads them, in files of limited size. */
 export interface RowFile {
   /** A line without its end; its fields are already safe. */
   readonly write: (line: string) => void;
-  readonly close: () => readonly { readonly file: string; readonly rows: number }[];
+  /** After the last line. */
+  readonly close: () => void;
 }
 
+/**
+ * What one statement loads. The connector takes a file into memory whole and sends it as one packet of the protocol: one
+ * larger than the server's limit, usually 16 MiB, ends in a lost connection. [characters]
+ */
+const largestFile = 4 * 1024 * 1024;
 /** Text that is written at once. [characters] */
 const piece = 256 * 1024;
 
-export function rowFile(folder: string, name: string, rowsPerFile = Infinity): RowFile {
-  const files: { file: string; rows: number }[] = [];
+/** Files `NAME-0000.tsv`, …; each is handed over when it is complete. */
+export function rowFile(folder: string, name: string, onFile: (slice: Slice) => void): RowFile {
+  let file = '';
   let descriptor: number | null = null;
+  let count = 0;
   let rows = 0;
+  let written = 0;
   let text = '';
 
+  function begin(): number {
+    file = path.join(folder, `${name}-${String(count).padStart(4, '0')}.tsv`);
+    count += 1;
+    rows = 0;
+    written = 0;
+    return openSync(file, 'wx', 0o600);
+  }
   function flush(): void {
-    if (text !== '' && descriptor !== null) writeSync(descriptor, text);
+    if (text === '') return;
+    descriptor ??= begin();
+    writeSync(descriptor, text);
+    written += text.length;
     text = '';
   }
   function finish(): void {
     flush();
-    if (descriptor !== null) closeSync(descriptor);
+    if (descriptor === null) return;
+    closeSync(descriptor);
     descriptor = null;
-    const last = files.at(-1);
-    if (last) last.rows = rows;
-  }
-  function begin(): void {
-    finish();
-    const file = path.join(folder, `${name}-${String(files.length).padStart(4, '0')}.tsv`);
-    descriptor = openSync(file, 'wx', 0o600);
-    files.push({ file, rows: 0 });
-    rows = 0;
+    onFile({ file, rows });
   }
 
   return {
     write: (line) => {
-      if (descriptor === null || rows === rowsPerFile) begin();
+      if (descriptor === null) descriptor = begin();
       rows += 1;
       text += line + '\n';
       if (text.length > piece) flush();
+      if (written > largestFile) finish();
     },
-    close: () => {
-      finish();
-      return files;
-    },
+    close: finish,
   };
 }
 

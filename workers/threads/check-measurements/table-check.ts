@@ -6,14 +6,12 @@ import { issueList } from '@/lib/formats/issue-list';
 import { measurementTable } from '@/lib/formats/measurement-table';
 import { frameRegister } from './frame-register';
 import { matchStars } from './match-stars';
-import type { CheckResult } from '@/lib/contracts/measurement-check';
+import type { CheckResult, Slice } from '@/lib/contracts/measurement-check';
 import type { CheckOrder } from './messages';
 import { rowCheck } from './row-check';
 import { rowFile, textField } from './row-files';
 import { starRegister } from './star-register';
 
-/** Rows that are loaded by one statement; between two of them a job can be cancelled. */
-const rowsPerSlice = 100_000;
 /** Comments that are kept. [characters]; the original holds them all */
 const longestComments = 200_000;
 
@@ -24,12 +22,21 @@ export interface TableCheck {
   readonly finish: (onMatching: () => void) => CheckResult;
 }
 
-/** Checks a table from its bytes to the files that are loaded: every row against the rules, the log and the other rows. */
-export function tableCheck(order: CheckOrder): TableCheck {
+/**
+ * Checks a table from its bytes to the files that are loaded: every row against the rules, the log and the other rows.
+ * Slices of rows are handed over as they fill, so that loading goes on meanwhile; those that name frames which are yet
+ * to be created wait for the end.
+ */
+export function tableCheck(order: CheckOrder, onSlice: (slice: Slice) => void): TableCheck {
   const issues = issueList();
   const frames = frameRegister(order.frames, order.night);
   const stars = starRegister(order.tolerance);
-  const slices = rowFile(order.folder, 'rows', rowsPerSlice);
+  const waiting: Slice[] = [];
+  const slices = rowFile(order.folder, 'rows', (slice) => {
+    if (issues.total() > 0) return;
+    if (frames.frames().length > order.frames.length) waiting.push(slice);
+    else onSlice(slice);
+  });
   let columns: ColumnMapping = {};
   let atStart = true;
   let isForeign = false;
@@ -70,7 +77,7 @@ export function tableCheck(order: CheckOrder): TableCheck {
   function finish(onMatching: () => void): CheckResult {
     if (!isForeign) reader.end();
     table.finish();
-    const written = slices.close();
+    slices.close();
     const found = {
       rows: table.rows(),
       comments: table.comments().join('\n').slice(0, longestComments),
@@ -80,10 +87,11 @@ export function tableCheck(order: CheckOrder): TableCheck {
     };
     if (issues.total() > 0) return { ...found, load: null };
     onMatching();
-    const flagFile = rowFile(order.folder, 'flags');
+    const flags: Slice[] = [];
+    const flagFile = rowFile(order.folder, 'flags', (slice) => flags.push(slice));
     for (const [text, number] of rows.flags()) flagFile.write(`${number}\t${textField(text)}`);
-    const flags = flagFile.close()[0] ?? { file: '', rows: 0 };
-    return { ...found, load: { ...matchStars(order, stars, frames.frames()), slices: written, flags } };
+    flagFile.close();
+    return { ...found, load: { ...matchStars(order, stars, frames.frames()), slices: waiting, flags } };
   }
 
   return { push, rows: table.rows, finish };

@@ -1,0 +1,110 @@
+import { createReadStream } from 'node:fs';
+import { rm } from 'node:fs/promises';
+import path from 'node:path';
+import { UploadQuery } from '@/lib/contracts/api/measurement-set';
+import { receiveMeasurements } from '@/lib/server/acts/receive-measurements';
+import { storeMeasurements } from '@/lib/server/acts/store-measurements';
+import { execute, inTransaction } from '@/lib/server/data/database';
+import type { PersonCaller } from '@/lib/server/policy/caller';
+import { checkMeasurements } from '@/workers/handlers/check-measurements';
+import type { Bench, BenchWorld, Figure } from './bench';
+import { loadPlainly } from './plain-load';
+import { peakMemory } from './peak-memory';
+import { benchNight, type BenchNight } from './bench-night';
+import { writeTable } from './write-table';
+
+/** A night of a small camera with names, and one of a wide-field camera with positions only. */
+const named = { frames: 100, stars: 10_000, hasNames: true };
+const wideField = { frames: 20, stars: 100_000, hasNames: false };
+
+/** An upload from its first byte to the matched set, as a worker's process does it, against LOAD DATA of the same file. */
+export const upload: Bench = {
+  name: 'upload',
+  run: async (world) => {
+    const night = await benchNight(named.frames);
+    await warmUp(world, night);
+    const file = path.join(world.folder, 'million.csv');
+    await writeTable(file, named);
+    const before_s = await loadPlainly(file);
+    const { seconds, growth_MiB } = await uploadAndCheck(night, file);
+    const after_s = await loadPlainly(file);
+    await rm(file);
+    const wide = await wideFieldFigures(world, night);
+    return [
+      {
+        name: 'upload of 1,000,000 rows, checked and matched, against LOAD DATA of the file',
+        measured: seconds,
+        baseline: (before_s + after_s) / 2,
+        unit: 's',
+        aim: 2.5,
+      },
+      {
+        name: 'peak growth of memory meanwhile',
+        measured: growth_MiB,
+        baseline: null,
+        unit: 'MiB',
+        aim: 200,
+      },
+      ...wide,
+    ];
+  },
+};
+
+async function wideFieldFigures(world: BenchWorld, night: BenchNight): Promise<readonly Figure[]> {
+  const file = path.join(world.folder, 'wide-field.csv');
+  await writeTable(file, wideField);
+  const { seconds, growth_MiB } = await uploadAndCheck(night, file);
+  await rm(file);
+  return [
+    { name: 'upload of 2,000,000 rows by position', measured: seconds, baseline: null, unit: 's', aim: null },
+    { name: 'peak growth of memory meanwhile', measured: growth_MiB, baseline: null, unit: 'MiB', aim: null },
+  ];
+}
+
+/** What is loaded once and stays: modules, compiled code, connections. */
+async function warmUp(world: BenchWorld, night: BenchNight): Promise<void> {
+  const file = path.join(world.folder, 'small.csv');
+  await writeTable(file, { frames: 2, stars: 1000, hasNames: true });
+  await uploadAndCheck(night, file);
+}
+
+async function uploadAndCheck(
+  { caller, id }: { readonly caller: PersonCaller; readonly id: string },
+  file: string,
+): Promise<{ readonly seconds: number; readonly growth_MiB: number }> {
+  const memory = peakMemory();
+  const begun_ms = performance.now();
+  const stored = await storeMeasurements(caller, id, createReadStream(file));
+  const received = { ...stored, fileName: path.basename(file), contentType: 'text/csv' };
+  const { set } = await receiveMeasurements(caller, id, UploadQuery.parse({}), received);
+  const result = await checkMeasurements({
+    id: 'bench',
+    payload: { set },
+    caller: { kind: 'job', jobId: 'bench', personId: caller.personId, requestId: 'bench' },
+    attempt: 1,
+    maxTries: 1,
+    signal: new AbortController().signal,
+    progress: () => undefined,
+  });
+  const seconds = (performance.now() - begun_ms) / 1000;
+  const growth_MiB = memory.stop();
+  if (result.state !== 'matched') throw new Error(`The table was refused: ${result.faults} faults.`);
+  await forget(set);
+  return { seconds, growth_MiB };
+}
+
+/** The next table is to find the database as this one did. */
+async function forget(set: string): Promise<void> {
+  await inTransaction(async (tx) => {
+    const ofSet = 'WHERE set_id = (SELECT id FROM measurement_sets WHERE public_id = :set)';
+    for (const table of [
+      'measurements',
+      'measurement_stars',
+      'measurement_flags',
+      'measurement_set_frames',
+    ]) {
+      await execute(`DELETE FROM ${table} ${ofSet}`, { set }, tx);
+    }
+    await execute('DELETE FROM measurement_sets WHERE public_id = :set', { set }, tx);
+  });
+}

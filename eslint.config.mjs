@@ -200,6 +200,20 @@ const config = [
     },
   },
   {
+    name: 'evenfall/no-unchecked-values',
+    files: ['{app,lib,db,workers}/**/*.{ts,tsx}'],
+    rules: {
+      '@typescript-eslint/no-unsafe-assignment': 'error',
+      '@typescript-eslint/no-unsafe-argument': 'error',
+      '@typescript-eslint/no-unsafe-call': 'error',
+      '@typescript-eslint/no-unsafe-member-access': 'error',
+      '@typescript-eslint/no-unsafe-return': 'error',
+      '@typescript-eslint/no-implied-eval': 'error',
+      '@typescript-eslint/no-redundant-type-constituents': 'error',
+      '@typescript-eslint/restrict-plus-operands': 'error',
+    },
+  },
+  {
     name: 'evenfall/sizes',
     files: [source],
     rules: {

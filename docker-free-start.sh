@@ -239,6 +239,7 @@ stop_program() {
   local name=$1
   [[ -n ${PIDS[$name]:-} ]] || return 0
   stop_pid "${PIDS[$name]}" "${PATIENCE[$name]}"
+  say "Stopped: $name"
   unset "PIDS[$name]"
   rm -f "$DATA_DIR/run/$name.pid"
 }
@@ -256,7 +257,7 @@ stop_all() {
 }
 
 stop_asked() {
-  say 'Stopping'
+  say 'Asked to stop'
   exit 0
 }
 

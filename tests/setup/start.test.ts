@@ -23,6 +23,8 @@ const status = async (copy: Copy, page: string): Promise<number> =>
 const health = async (copy: Copy): Promise<unknown> =>
   (await fetch(`http://127.0.0.1:${copy.PORT}/api/v1/health`)).json();
 
+const pageOf = async (address: string): Promise<string> => (await fetch(address)).text();
+
 const stepsOf = (child: Child): readonly string[] =>
   child
     .output()
@@ -87,8 +89,14 @@ describe('two copies of the demo side by side', () => {
     expect(Number(user)).not.toBe(0);
   });
 
-  it('stop by SIGTERM one at a time, leaving no process and no harm to the other', async () => {
+  it('stop by SIGTERM one at a time and in order, leaving no process and no harm to the other', async () => {
     expect(await signal(one.child, 'SIGTERM')).toBe(0);
+    expect(stepsOf(one.child).slice(-4)).toEqual([
+      'Asked to stop',
+      'Stopped: app',
+      'Stopped: mail-catcher',
+      'Stopped: mariadb',
+    ]);
     expect(await processesOf(first.DATA_DIR)).toEqual([]);
     expect(await health(second)).toMatchObject({ status: 'ok' });
     expect(await readFile(path.join(first.DATA_DIR, 'log/mariadb.log'), 'utf8')).toMatch(
@@ -164,7 +172,8 @@ describe('a start for real use', () => {
     expect(code).toBe(0);
     link = /http:\/\/127\.0\.0\.1:\d+\/\S+/.exec(output)?.[0] ?? '';
     expect(link).toContain(`:${copy.PORT}/`);
-    expect((await fetch(link)).status).toBe(200);
+    expect(await pageOf(link)).toContain('Welcome, Ada Marsh');
+    expect(await pageOf(`${link}x`)).toContain('This link does not work');
   });
 
   it('is backed up while it runs', async () => {
@@ -187,7 +196,9 @@ describe('a start for real use', () => {
     expect(existsSync(path.join(originals, 'incoming/half'))).toBe(false);
     const { line } = await startCopy(['--no-demo'], restored);
     expect(line).not.toContain('no manager yet');
-    expect((await fetch(link.replace(`:${copy.PORT}/`, `:${restored.PORT}/`))).status).toBe(200);
+    expect(await pageOf(link.replace(`:${copy.PORT}/`, `:${restored.PORT}/`))).toContain(
+      'Welcome, Ada Marsh',
+    );
   });
 
   it('does not let a backup replace data that are in use', async () => {

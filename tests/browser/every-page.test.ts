@@ -1,7 +1,10 @@
 import AxeBuilder from '@axe-core/playwright';
+import { readFileSync } from 'node:fs';
+import path from 'node:path';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { launchBrowser } from '../support/browser';
+import { root } from '../support/scripts';
 import { demoAccounts, signedIn } from '../support/signed-in';
 
 let browser: Browser;
@@ -10,12 +13,21 @@ beforeAll(async () => {
 });
 afterAll(() => browser.close());
 
-/** Pages of one kind differ by ids, dates, numbers and queries; one of each kind is opened. */
-const kindOf = (address: string): string =>
-  new URL(address).pathname
-    .split('/')
-    .map((part) => (/^([0-9a-hjkmnp-tv-z]{12}|[\d-]+)$/.test(part) ? '…' : part))
-    .join('/');
+/** The pages of the built application, as its own manifest lists them. */
+interface Manifest {
+  readonly staticRoutes: readonly { readonly page: string; readonly regex: string }[];
+  readonly dynamicRoutes: readonly { readonly page: string; readonly regex: string }[];
+}
+const manifest = JSON.parse(readFileSync(path.join(root, '.next/routes-manifest.json'), 'utf8')) as Manifest;
+const pages = [...manifest.staticRoutes, ...manifest.dynamicRoutes]
+  .filter(({ page }) => !page.startsWith('/api/') && !page.startsWith('/_'))
+  .map(({ page, regex }) => ({ page, pattern: new RegExp(regex) }));
+
+/** The page that answers at an address: one address of each is opened. */
+function kindOf(address: string): string {
+  const { pathname } = new URL(address);
+  return pages.find(({ pattern }) => pattern.test(pathname))?.page ?? pathname;
+}
 
 /** Addresses of pages that a page links to: not of downloads, nor of the HTTP interface. */
 const linksOf = (page: Page): Promise<readonly string[]> =>
@@ -83,9 +95,12 @@ async function lookAt(page: Page, kind: string): Promise<readonly string[]> {
   return faults;
 }
 
-describe('every page that links lead to opens without a fault', () => {
+/** Reached otherwise than by a link of a person who is signed in. */
+const elsewhere = ['/sign-in', '/welcome/[token]'];
+
+describe('every page that links lead to', () => {
   it.each(demoAccounts)(
-    'for %s',
+    'opens without a fault for %s',
     async (account) => {
       const page = await signedIn(browser, account);
       const { kinds, faults } = await crawl(page, (kind) => lookAt(page, kind));
@@ -95,4 +110,10 @@ describe('every page that links lead to opens without a fault', () => {
     },
     240_000,
   );
+
+  it('is every page there is: none is out of everybody’s reach', () => {
+    expect(
+      pages.map(({ page }) => page).filter((page) => !looked.has(page) && !elsewhere.includes(page)),
+    ).toEqual([]);
+  });
 });

@@ -37,4 +37,3 @@ export function problemResponse(fault: Fault | null, requestId: string): Respons
   if (status === 401) headers.set('www-authenticate', 'Bearer');
   return new Response(JSON.stringify(body), { status, headers });
 }
-

@@ -1,4 +1,5 @@
 import { memo } from 'react';
+import { placeNames, type ChartDot, type NamePlace } from '@/app/_components/charts/place-names';
 import type { FieldStar } from './field-star';
 
 interface SkyChartProps {
@@ -9,8 +10,8 @@ interface SkyChartProps {
 }
 
 /** Side of the drawing; it is scaled to the room there is. */
-const side = 440;
-const margin = 26;
+const side = 360;
+const margin = 24;
 const smallestHalf = 0.06;
 /** With more stars their names would cover each other: then only the star pointed at has its name. */
 const mostNames = 10;
@@ -40,13 +41,20 @@ function scaleOf(stars: readonly FieldStar[]): Scale {
 
 const middleOf = (values: readonly number[]): number => (Math.min(...values) + Math.max(...values)) / 2;
 
-/** Bright stars are large dots: 1.7 px at V = 16.5, a little less than one more for each magnitude. */
-const radiusOf = (v: number): number => Math.min(9, Math.max(1.7, 1.7 + 0.9 * (16.5 - v)));
+/** Bright stars are large dots: 1.4 px at V = 16.5, three quarters more for each magnitude. */
+const radiusOf = (v: number): number => Math.min(7.5, Math.max(1.4, 1.4 + 0.75 * (16.5 - v)));
+
+function dotsOf(stars: readonly FieldStar[]): readonly ChartDot[] {
+  const { x, y } = scaleOf(stars);
+  return stars.map((star) => ({ x: x(star), y: y(star), radius: radiusOf(star.v), name: star.name }));
+}
 
 /** The stars of a field as the sky shows them. The table beside it says the same for those who cannot see it. */
 export function SkyChart({ stars, active, onPoint, onPick }: SkyChartProps) {
-  const scale = scaleOf(stars);
   const star = stars[active];
+  const dots = dotsOf(stars);
+  const names = placeNames(dots, side);
+  const [dot, name] = [dots[active], names[active]];
   return (
     <figure>
       <svg
@@ -57,9 +65,14 @@ export function SkyChart({ stars, active, onPoint, onPick }: SkyChartProps) {
       >
         <rect x="0.5" y="0.5" width={side - 1} height={side - 1} className="fill-none stroke-rule" />
         <Compass />
-        <ScaleBar px_perDeg={scale.px_perDeg} />
-        <Stars stars={stars} scale={scale} onPoint={onPoint} onPick={onPick} />
-        {star === undefined ? null : <Mark star={star} scale={scale} hasName={stars.length > mostNames} />}
+        <ScaleBar px_perDeg={scaleOf(stars).px_perDeg} />
+        <Stars stars={stars} onPoint={onPoint} onPick={onPick} />
+        {star === undefined || dot === undefined || name === undefined ? null : (
+          <g pointerEvents="none">
+            <circle cx={dot.x} cy={dot.y} r={dot.radius + 5} className="fill-none stroke-accent stroke-2" />
+            {stars.length > mostNames ? <Name text={star.name} place={name} /> : null}
+          </g>
+        )}
       </svg>
       <figcaption className="mt-2 text-small text-ink-2">
         <Legend />
@@ -70,25 +83,29 @@ export function SkyChart({ stars, active, onPoint, onPick }: SkyChartProps) {
 
 interface StarsProps {
   readonly stars: readonly FieldStar[];
-  readonly scale: Scale;
   readonly onPoint: (index: number) => void;
   readonly onPick: (index: number) => void;
 }
 
 /** Drawn once: pointing at a star moves the mark, not the stars. */
-const Stars = memo(function Stars({ stars, scale, onPoint, onPick }: StarsProps) {
+const Stars = memo(function Stars({ stars, onPoint, onPick }: StarsProps) {
+  const dots = dotsOf(stars);
+  const names = stars.length > mostNames ? [] : placeNames(dots, side);
   return stars.map((star, index) => {
-    const [x, y, radius] = [scale.x(star), scale.y(star), radiusOf(star.v)];
+    const [dot, name] = [dots[index], names[index]];
+    if (dot === undefined) return null;
+    const { x, y, radius } = dot;
     return (
       <g
         key={star.name}
+        data-star={star.name}
         onMouseEnter={() => onPoint(index)}
         onClick={() => onPick(index)}
         className="cursor-pointer"
       >
-        <circle cx={x} cy={y} r={Math.max(9, radius + 3)} className="fill-transparent" />
+        <circle cx={x} cy={y} r={Math.max(8, radius + 3)} className="fill-transparent" />
         <Dot x={x} y={y} radius={radius} isUsable={star.isUsable} hasCaution={star.caution !== ''} />
-        {stars.length > mostNames ? null : <Name star={star} x={x} y={y} radius={radius} />}
+        {name === undefined ? null : <Name text={star.name} place={name} />}
       </g>
     );
   });
@@ -123,43 +140,11 @@ function Dot({ x, y, radius, isUsable, hasCaution }: DotProps) {
   );
 }
 
-interface NameProps {
-  readonly star: FieldStar;
-  readonly x: number;
-  readonly y: number;
-  readonly radius: number;
-}
-
-/** Beside the star, on the side that has room. */
-function Name({ star, x, y, radius }: NameProps) {
-  const isRight = x < side * 0.68;
+function Name({ text, place }: { readonly text: string; readonly place: NamePlace }) {
   return (
-    <text
-      x={isRight ? x + radius + 5 : x - radius - 5}
-      y={y + 4}
-      textAnchor={isRight ? 'start' : 'end'}
-      className="fill-ink text-fine"
-    >
-      {star.name}
+    <text x={place.x} y={place.y} textAnchor={place.anchor} className="fill-ink text-fine">
+      {text}
     </text>
-  );
-}
-
-function Mark({
-  star,
-  scale,
-  hasName,
-}: {
-  readonly star: FieldStar;
-  readonly scale: Scale;
-  readonly hasName: boolean;
-}) {
-  const [x, y, radius] = [scale.x(star), scale.y(star), radiusOf(star.v)];
-  return (
-    <g pointerEvents="none">
-      <circle cx={x} cy={y} r={radius + 6} className="fill-none stroke-accent stroke-2" />
-      {hasName ? <Name star={star} x={x} y={y} radius={radius + 3} /> : null}
-    </g>
   );
 }
 

@@ -84,15 +84,9 @@ export function StarTable({ id, stars, active, onPoint }: StarTableProps) {
               {star.name}
             </button>
           </Cell>
-          <Cell>
-            {star.isUsable ? (
-              <>
-                yes
-                {star.caution === '' ? null : <span className="text-warn"> △ with care</span>}
-              </>
-            ) : (
-              <span className="font-medium text-bad">✕ no</span>
-            )}
+          <Cell className={star.caution === '' ? undefined : 'min-w-48 whitespace-normal'}>
+            {star.isUsable ? 'yes' : <span className="font-medium text-bad">✕ no</span>}
+            {star.caution === '' ? null : <span className="block text-small text-ink-2">{star.caution}</span>}
           </Cell>
           {magnitudes.map(({ label, value, error }) => (
             <Cell key={label} numeric>

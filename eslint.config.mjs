@@ -66,6 +66,7 @@ const allow = {
   seeder: [
     'seeder',
     'db',
+    'act',
     'data',
     'policy',
     'identity',

@@ -21,6 +21,7 @@ export const places: readonly Place[] = [
   { label: 'People', href: '/people', part: 'office', roles: ['manager', 'photometrist'] },
   { label: 'Settings', href: '/settings', part: 'office', roles: ['manager'] },
   { label: 'Audit trail', href: '/audit', part: 'office' },
+  { label: 'Sample files', href: '/demo-files', part: 'office', demoOnly: true },
 ];
 
 /** The places that a person sees. */

@@ -11,29 +11,28 @@ import { Site } from '../../models/site';
 import { Telescope } from '../../models/telescope';
 import { starKey } from '@/lib/contracts/star-name';
 import type { DemoObservatory, DemoWorld } from './demo-world';
-import { observeNight, observeTonight, withHole, type DemoSky, type ObservedNight } from './demo-nights';
+import { observeNight, type DemoSky, type ObservedNight } from './demo-nights';
 import { loadNight } from './load-night';
 import { loadPeople, type PersonIds } from './load-people';
 import { clockTime, minute_ms } from './night-time';
 
-/** The night in progress, as it was put into the log, and the frames that its log misses. */
-export interface LoadedDemo {
+/** The night in progress with the frames that are in its log, and those that its log misses. */
+export interface DemoTonightLog {
   readonly tonight: ObservedNight;
   readonly missing: ObservedNight['frames'];
+}
+
+export interface DemoToLoad extends DemoTonightLog {
+  readonly world: DemoWorld;
+  readonly sky: DemoSky;
+  readonly password: string;
 }
 
 /** Puts the whole demo into an empty database, in one transaction. */
 export async function loadDemo(
   sequelize: Sequelize,
-  {
-    world,
-    sky,
-    now,
-    password,
-  }: { readonly world: DemoWorld; readonly sky: DemoSky; readonly now: number; readonly password: string },
-): Promise<LoadedDemo> {
-  const tonight = observeTonight(world, sky, now);
-  const { logged, missing } = withHole(tonight.frames);
+  { world, sky, password, tonight, missing }: DemoToLoad,
+): Promise<void> {
   await sequelize.transaction(async (transaction) => {
     const telescope = await loadEquipment(world.observatory, transaction);
     const people = await loadPeople(world.observatory.people, password, transaction);
@@ -48,7 +47,7 @@ export async function loadDemo(
     const { observers, remarks } = world.nights.tonight;
     await loadNight(
       {
-        observed: { ...tonight, frames: logged },
+        observed: tonight,
         observers,
         remarks: [
           ...remarks.map((remark) => ({
@@ -65,7 +64,6 @@ export async function loadDemo(
       transaction,
     );
   });
-  return { tonight: { ...tonight, frames: logged }, missing };
 }
 
 function holeRemark(

@@ -12,7 +12,10 @@ import { frameGeometry } from '@/lib/astro/frame-geometry';
 import { select } from '@/lib/server/data/database';
 import { passwordMatches } from '@/lib/server/identity/password';
 import { emptyTables } from '@/tests/support/database';
+import { removeOriginals } from '@/tests/support/measurements';
 import { expectWithin } from '@/tests/support/numbers';
+
+removeOriginals();
 
 const password = 'twilight flats';
 /** Ten in the evening on Marrow Hill. */

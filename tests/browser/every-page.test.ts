@@ -18,9 +18,11 @@ interface Manifest {
   readonly staticRoutes: readonly { readonly page: string; readonly regex: string }[];
   readonly dynamicRoutes: readonly { readonly page: string; readonly regex: string }[];
 }
+/** Downloads, which the manifest does not tell from pages. */
+const downloads = ['/demo-files/[name]'];
 const manifest = JSON.parse(readFileSync(path.join(root, '.next/routes-manifest.json'), 'utf8')) as Manifest;
 const pages = [...manifest.staticRoutes, ...manifest.dynamicRoutes]
-  .filter(({ page }) => !page.startsWith('/api/') && !page.startsWith('/_'))
+  .filter(({ page }) => !page.startsWith('/api/') && !page.startsWith('/_') && !downloads.includes(page))
   .map(({ page, regex }) => ({ page, pattern: new RegExp(regex) }));
 
 /** The page that answers at an address: one address of each is opened. */

@@ -18,9 +18,12 @@ export const script = (file: string, ...args: readonly string[]): readonly strin
   ...args,
 ];
 
+/** vitest sets BASE_URL to a path of its own meaning; here it is the address in links. */
+const { BASE_URL: _ofVitest, ...outer } = process.env;
+
 const optionsFor = (database: DatabaseAddress, env: Variables): SpawnOptions => ({
   cwd: root,
-  env: { ...process.env, NODE_ENV: 'production', ...databaseEnvironment(database), ...env },
+  env: { ...outer, NODE_ENV: 'production', ...databaseEnvironment(database), ...env },
 });
 
 const run = (database: DatabaseAddress, args: readonly string[], env: Variables = {}): Promise<string> =>

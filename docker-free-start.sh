@@ -29,28 +29,30 @@ HELP
 
 # ---- Speaking -------------------------------------------------------------------------------------------------------
 
-say() { printf '%s\n' "· $*" >&2; }
+# Speaks on the script's own standard error also while a step's output goes to a log.
+exec 6>&2
+say() { printf '%s\n' "· $*" >&6; }
 
 # The first argument is what is wrong, the others are what to do about it.
 die() {
-  printf '\nEvenfall cannot go on: %s\n' "$1" >&2
+  printf '\nEvenfall cannot go on: %s\n' "$1" >&6
   shift
   local line
-  for line in "$@"; do printf '  %s\n' "$line" >&2; done
+  for line in "$@"; do printf '  %s\n' "$line" >&6; done
   exit 1
 }
 
 # Shows the end of a log, and names a full disk when that is what it complains about.
 die_with_log() {
   local what=$1 log=$2
-  printf '\nEvenfall cannot go on: %s\n' "$what" >&2
+  printf '\nEvenfall cannot go on: %s\n' "$what" >&6
   if [[ -s $log ]]; then
     if grep -qiE 'no space left|ENOSPC|errno: 28|disk (is )?full' "$log"; then
       printf '  The disk is full: make room on the one that holds %s and on the one that holds %s.\n' \
-        "$DATA_DIR" "$HOME_DIR" >&2
+        "$DATA_DIR" "$HOME_DIR" >&6
     fi
-    printf '  Its errors, and the last lines of %s:\n' "$log" >&2
-    { grep -E '\bERROR\b' "$log" | tail -n 5 || true; tail -n 15 "$log"; } | awk '!seen[$0]++ { print "    " $0 }' >&2
+    printf '  Its errors, and the last lines of %s:\n' "$log" >&6
+    { grep -E '\bERROR\b' "$log" | tail -n 5 || true; tail -n 15 "$log"; } | awk '!seen[$0]++ { print "    " $0 }' >&6
   fi
   exit 1
 }
@@ -176,7 +178,7 @@ need_room() {
 STEP=''
 # Runs a program to its end in a process group of its own; a signal to this script does not wait for it.
 step() {
-  setsid -- "$@" 7>&- 8>&- 9>&- </dev/null &
+  setsid -- "$@" 6>&- 7>&- 8>&- 9>&- </dev/null &
   STEP=$!
   local code=0
   wait "$STEP" || code=$?
@@ -208,7 +210,7 @@ start_program() {
   local name=$1 log=$LOGS/$1.log
   shift
   if [[ -f $log && $(stat -c %s "$log") -gt 20000000 ]]; then mv -f "$log" "$log.1"; fi
-  setsid -- "$@" >>"$log" 2>&1 7>&- 8>&- 9>&- </dev/null &
+  setsid -- "$@" >>"$log" 2>&1 6>&- 7>&- 8>&- 9>&- </dev/null &
   printf '%s\n' $! >"$DATA_DIR/run/$name.pid"
   PIDS[$name]=$!
 }
@@ -247,7 +249,11 @@ stop_program() {
 # Stops what this run started, the application first, the database last. Runs once, at every end of the script.
 stop_all() {
   trap '' INT TERM HUP
-  if [[ -n $STEP ]]; then kill -TERM -- "-$STEP" 2>/dev/null || true; fi
+  if [[ -n $STEP ]]; then
+    kill -TERM -- "-$STEP" 2>/dev/null || true
+    stop_pid "$STEP" 10
+    kill -KILL -- "-$STEP" 2>/dev/null || true
+  fi
   local name
   for name in "${ORDER_OF_STOP[@]}"; do stop_program "$name"; done
   if [[ -n ${SOCKET_DIR:-} ]]; then

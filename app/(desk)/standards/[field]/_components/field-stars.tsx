@@ -1,6 +1,6 @@
 'use client';
 
-import { useId, useState } from 'react';
+import { useEffect, useId, useState } from 'react';
 import { Panel } from '@/app/_components/ui/panel';
 import type { FieldStar } from './field-star';
 import { SkyChart } from './sky-chart';
@@ -23,6 +23,11 @@ export function FieldStars({ stars, initial }: FieldStarsProps) {
   );
   const tableId = useId();
   const star = stars[active];
+  useEffect(() => {
+    // The star that a link leads to may stand far down in its table.
+    const place = stars.findIndex(({ name }) => name === initial);
+    if (place > 0) document.getElementById(`${tableId}-${place}`)?.scrollIntoView({ block: 'nearest' });
+  }, [stars, initial, tableId]);
   const pick = (index: number): void => {
     setActive(index);
     // From the chart to the row that says more: it may be scrolled away.

@@ -40,7 +40,9 @@ export default async function DemoFilesPage() {
                 </a>
               </Cell>
               <Cell>{night === null ? 'in progress' : formatDateInWords(night)}</Cell>
-              <Cell wrap>{about}</Cell>
+              <Cell wrap className="min-w-80">
+                {about}
+              </Cell>
               <Cell numeric>{formatBytes(size_bytes)}</Cell>
             </Row>
           ))}

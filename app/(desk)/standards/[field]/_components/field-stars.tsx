@@ -24,9 +24,8 @@ export function FieldStars({ stars, initial }: FieldStarsProps) {
   const tableId = useId();
   const star = stars[active];
   useEffect(() => {
-    // The star that a link leads to may stand far down in its table.
     const place = stars.findIndex(({ name }) => name === initial);
-    if (place > 0) document.getElementById(`${tableId}-${place}`)?.scrollIntoView({ block: 'nearest' });
+    if (place > 0) scrollWithinTable(document.getElementById(`${tableId}-${place}`));
   }, [stars, initial, tableId]);
   const pick = (index: number): void => {
     setActive(index);
@@ -50,4 +49,12 @@ export function FieldStars({ stars, initial }: FieldStarsProps) {
       </Panel>
     </div>
   );
+}
+
+/** The star that a link leads to may stand far down in its table: the table moves, the page stays. */
+function scrollWithinTable(row: HTMLElement | null): void {
+  const box = row?.closest('[role=region]');
+  if (!row || !box) return;
+  const below = row.getBoundingClientRect().top - box.getBoundingClientRect().top;
+  box.scrollTop += below - box.clientHeight / 2;
 }

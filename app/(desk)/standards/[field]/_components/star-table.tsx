@@ -84,7 +84,7 @@ export function StarTable({ id, stars, active, onPoint }: StarTableProps) {
               {star.name}
             </button>
           </Cell>
-          <Cell className={star.caution === '' ? undefined : 'max-w-40 min-w-32 whitespace-normal'}>
+          <Cell wrap={star.caution !== ''}>
             {star.isUsable ? 'yes' : <span className="font-medium text-bad">✕ no</span>}
             {star.caution === '' ? null : <span className="block text-small text-ink-2">{star.caution}</span>}
           </Cell>

@@ -18,6 +18,7 @@ export const places: readonly Place[] = [
   { label: 'Nights', href: '/nights', part: 'bar' },
   { label: 'Programmes', href: '/programmes', part: 'bar' },
   { label: 'Standards', href: '/standards', part: 'bar' },
+  { label: 'Equipment', href: '/equipment', part: 'bar' },
   { label: 'People', href: '/people', part: 'office', roles: ['manager', 'photometrist'] },
   { label: 'Settings', href: '/settings', part: 'office', roles: ['manager'] },
   { label: 'Audit trail', href: '/audit', part: 'office' },

@@ -250,3 +250,14 @@ export async function updateEpoch(id: number, epoch: NewEpoch, tx: Tx): Promise<
     tx,
   );
 }
+
+/** Bands in which the telescope has frames. */
+export async function bandsWithFrames(telescopeId: number, tx: Tx): Promise<readonly Band[]> {
+  const rows = await select<{ band: Band }>(
+    `SELECT DISTINCT f.band FROM frames f JOIN nights n ON n.id = f.night_id
+      WHERE n.telescope_id = :telescopeId AND f.band IS NOT NULL`,
+    { telescopeId },
+    tx,
+  );
+  return rows.map(({ band }) => band);
+}

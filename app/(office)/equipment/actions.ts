@@ -1,7 +1,13 @@
 'use server';
 
 import { revalidatePath } from 'next/cache';
-import { ChangeCamera, ChangeEpoch, ChangeFilters, ChangeSite, ChangeTelescope } from '@/lib/contracts/equipment';
+import {
+  ChangeCamera,
+  ChangeEpoch,
+  ChangeFilters,
+  ChangeSite,
+  ChangeTelescope,
+} from '@/lib/contracts/equipment';
 import { saveCamera } from '@/lib/server/acts/save-camera';
 import { saveEpoch } from '@/lib/server/acts/save-epoch';
 import { saveSite } from '@/lib/server/acts/save-site';
@@ -20,8 +26,13 @@ export async function saveSiteAction(former: Awaited<ReturnType<typeof site>> | 
   return site(former, form);
 }
 
-const telescope = formAction(ChangeTelescope, async (caller, input) => anew(await saveTelescope(caller, input)));
-export async function saveTelescopeAction(former: Awaited<ReturnType<typeof telescope>> | null, form: FormData) {
+const telescope = formAction(ChangeTelescope, async (caller, input) =>
+  anew(await saveTelescope(caller, input)),
+);
+export async function saveTelescopeAction(
+  former: Awaited<ReturnType<typeof telescope>> | null,
+  form: FormData,
+) {
   return telescope(former, form);
 }
 

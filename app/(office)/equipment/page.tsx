@@ -15,7 +15,14 @@ import { TelescopePanel, type TelescopeOnPage } from './_components/telescope-pa
 export const metadata: Metadata = { title: 'Equipment' };
 
 /** What the browser gets of a site: no internal ids. */
-const siteValues = ({ name, longitude, latitude, elevation, timezone, meanExtinction }: SiteShown): SiteValues => ({
+const siteValues = ({
+  name,
+  longitude,
+  latitude,
+  elevation,
+  timezone,
+  meanExtinction,
+}: SiteShown): SiteValues => ({
   name,
   longitude,
   latitude,
@@ -54,7 +61,9 @@ export default async function EquipmentPage() {
         actions={
           <>
             {mayManageSite ? <SiteDialog site={null} /> : null}
-            {mayManage && siteNames.length > 0 ? <TelescopeDialog telescope={null} sites={siteNames} /> : null}
+            {mayManage && siteNames.length > 0 ? (
+              <TelescopeDialog telescope={null} sites={siteNames} />
+            ) : null}
           </>
         }
       />
@@ -63,7 +72,8 @@ export default async function EquipmentPage() {
           {telescopes.length === 0 ? (
             <Panel>
               <EmptyState title="No telescopes yet">
-                A night belongs to a telescope. Add the site first, then the telescope with camera and filters.
+                A night belongs to a telescope. Add the site first, then the telescope with camera and
+                filters.
               </EmptyState>
             </Panel>
           ) : (

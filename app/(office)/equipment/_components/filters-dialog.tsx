@@ -49,7 +49,9 @@ export function FiltersDialog({ telescope, filters }: FiltersDialogProps) {
                   />
                 </div>
                 {wrong === undefined ? null : (
-                  <p className="mt-1 text-small font-medium text-bad">✕ {band} {wrong}</p>
+                  <p className="mt-1 text-small font-medium text-bad">
+                    ✕ {band} {wrong}
+                  </p>
                 )}
               </div>
             );

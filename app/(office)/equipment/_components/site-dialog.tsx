@@ -40,7 +40,12 @@ export function SiteDialog({ site }: { readonly site: SiteValues | null }) {
               { name: 'longitude', label: 'Longitude, deg, east positive', value: site?.longitude ?? 0 },
               { name: 'latitude', label: 'Latitude, deg, north positive', value: site?.latitude ?? 0 },
               { name: 'elevation', label: 'Elevation, m', value: site?.elevation ?? 0 },
-              { name: 'timezone', label: 'Time zone', value: site?.timezone ?? 'UTC', hint: 'As Atlantic/Canary' },
+              {
+                name: 'timezone',
+                label: 'Time zone',
+                value: site?.timezone ?? 'UTC',
+                hint: 'As Atlantic/Canary',
+              },
             ]}
           />
           <BandPairs
@@ -56,7 +61,12 @@ export function SiteDialog({ site }: { readonly site: SiteValues | null }) {
           <TextFields
             state={state}
             fields={[
-              { name: 'extinctionSource', label: 'Where the extinction comes from', value: source, optional: true },
+              {
+                name: 'extinctionSource',
+                label: 'Where the extinction comes from',
+                value: source,
+                optional: true,
+              },
             ]}
           />
         </>

@@ -39,10 +39,15 @@ export function TelescopeDialog({ telescope, sites }: TelescopeDialogProps) {
           {isNew ? (
             <TextFields
               state={state}
-              fields={[{ name: 'code', label: 'Code', value: '', hint: 'Programs know it by this; it stays.' }]}
+              fields={[
+                { name: 'code', label: 'Code', value: '', hint: 'Programs know it by this; it stays.' },
+              ]}
             />
           ) : null}
-          <TextFields state={state} fields={[{ name: 'name', label: 'Name', value: telescope?.name ?? '' }]} />
+          <TextFields
+            state={state}
+            fields={[{ name: 'name', label: 'Name', value: telescope?.name ?? '' }]}
+          />
           <Field label="Site" required error={state.issue('site')}>
             {(control) => (
               <Select
@@ -141,16 +146,29 @@ export function EpochDialog({ telescope, cameras, epoch }: EpochDialogProps) {
       action={saveEpochAction}
       title={epoch === null ? 'Add an epoch' : `Epoch from ${epoch.startsOn}`}
       button={epoch === null ? 'Add an epoch' : 'Change'}
-      buttonLabel={epoch === null ? `Add an epoch of ${telescope}` : `Change the epoch from ${epoch.startsOn}`}
+      buttonLabel={
+        epoch === null ? `Add an epoch of ${telescope}` : `Change the epoch from ${epoch.startsOn}`
+      }
       hidden={{ telescope, epoch: epoch?.startsOn ?? '' }}
-      fields={['camera', 'startsOn', 'endsOn', 'description', ...bands.flatMap((b) => [`term${b}`, `error${b}`])]}
+      fields={[
+        'camera',
+        'startsOn',
+        'endsOn',
+        'description',
+        ...bands.flatMap((b) => [`term${b}`, `error${b}`]),
+      ]}
     >
       {(state) => (
         <>
           <TextFields
             state={state}
             fields={[
-              { name: 'startsOn', label: 'First evening', value: epoch?.startsOn ?? '', hint: 'As 2026-11-03' },
+              {
+                name: 'startsOn',
+                label: 'First evening',
+                value: epoch?.startsOn ?? '',
+                hint: 'As 2026-11-03',
+              },
               {
                 name: 'endsOn',
                 label: 'First evening that no longer belongs to it',
@@ -172,9 +190,7 @@ export function EpochDialog({ telescope, cameras, epoch }: EpochDialogProps) {
           </Field>
           <TextFields
             state={state}
-            fields={[
-              { name: 'description', label: 'What began with it', value: epoch?.description ?? '' },
-            ]}
+            fields={[{ name: 'description', label: 'What began with it', value: epoch?.description ?? '' }]}
           />
           <BandPairs
             state={state}

@@ -155,12 +155,15 @@ function Epochs({ telescope: { code, cameras }, epochs, mayManage }: EpochsProps
       note="spans in which mirror, camera and filters stayed the same"
       flush
       actions={
-        mayManage && names.length > 0 ? <EpochDialog telescope={code} cameras={names} epoch={null} /> : undefined
+        mayManage && names.length > 0 ? (
+          <EpochDialog telescope={code} cameras={names} epoch={null} />
+        ) : undefined
       }
     >
       {epochs.length === 0 ? (
         <p className="px-3.5 py-3 text-ink-2">
-          None yet. Nights of one epoch share their colour terms; begin one when mirror, camera or filters change.
+          None yet. Nights of one epoch share their colour terms; begin one when mirror, camera or filters
+          change.
         </p>
       ) : (
         <DataTable

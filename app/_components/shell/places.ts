@@ -19,6 +19,7 @@ export const places: readonly Place[] = [
   { label: 'Programmes', href: '/programmes', part: 'bar' },
   { label: 'Standards', href: '/standards', part: 'bar' },
   { label: 'Equipment', href: '/equipment', part: 'bar' },
+  { label: 'Jobs', href: '/jobs', part: 'office' },
   { label: 'People', href: '/people', part: 'office', roles: ['manager', 'photometrist'] },
   { label: 'Settings', href: '/settings', part: 'office', roles: ['manager'] },
   { label: 'Audit trail', href: '/audit', part: 'office' },

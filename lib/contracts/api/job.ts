@@ -20,6 +20,10 @@ export const Job = z
     id: PublicId,
     kind: z.string().meta({ example: 'check-measurements' }),
     title: z.string().meta({ description: 'The kind in words' }),
+    about: z
+      .string()
+      .meta({ description: 'What it works on, in words', example: 'standards before midnight' }),
+    set: PublicId.nullable().meta({ description: 'The measurement set it works on' }),
     state: JobState,
     progress: z.number().min(0).max(1),
     message: z.string().meta({ description: 'What is being done' }),

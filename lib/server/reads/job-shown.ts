@@ -16,6 +16,9 @@ export function shownJob(caller: Caller, row: JobRow): Job {
     id: row.publicId,
     kind: row.kind,
     title: isJobKind(row.kind) ? jobTitles[row.kind] : row.kind,
+    about:
+      row.mailSubject === null ? (row.setName ?? '') : `${row.mailSubject} (to ${row.mailRecipient ?? ''})`,
+    set: row.setPublicId,
     state: row.state,
     progress: row.progress,
     message: row.message,

@@ -32,7 +32,7 @@ export const MeasurementColumn = z.enum(measurementColumnNames);
 /** Which header of the file stands for which column. Columns that the file names as we do need no entry. */
 export const ColumnMapping = z.partialRecord(MeasurementColumn, z.string().trim().min(1).max(120)).meta({
   description: 'Column of the measurement table → header in the file',
-  example: { inst_mag: 'MAG_APER' },
+  example: { inst_mag: 'Magnitude' },
 });
 export type ColumnMapping = z.infer<typeof ColumnMapping>;
 
@@ -94,47 +94,29 @@ export function missingColumns(present: {
   );
 }
 
-/** Headers that other programs commonly give to a column, for a first guess that a person confirms. */
+/**
+ * Plain words of the trade, and keywords of FITS, under which a column may stand: for a first guess that a person
+ * confirms. Common practice, no source.
+ */
 const guesses: Partial<Record<MeasurementColumn, readonly string[]>> = {
-  frame: ['frame_no', 'frame_number', 'frameno', 'image', 'file', 'filename', 'file_name', 'exposure_id'],
-  star: ['name', 'object', 'id', 'star_name', 'star_id', 'source'],
-  ra: ['ra_deg', 'raj2000', 'ra_j2000', 'alpha_j2000', 'right_ascension', 'alpha'],
-  dec: ['dec_deg', 'dej2000', 'decj2000', 'dec_j2000', 'delta_j2000', 'declination', 'delta', 'de'],
-  inst_mag: [
-    'mag',
-    'mag_inst',
-    'instmag',
-    'magnitude',
-    'mag_aper',
-    'mag_auto',
-    'mag_psf',
-    'm_inst',
-    'merge_mag',
-  ],
-  inst_err: [
-    'err',
-    'mag_err',
-    'magerr',
-    'merr',
-    'emag',
-    'e_mag',
-    'magerr_aper',
-    'magerr_auto',
-    'mag_error',
-    'sigma',
-  ],
-  flux: ['counts', 'flux_aper', 'flux_auto', 'flux_psf', 'net_counts'],
-  flux_err: ['fluxerr', 'fluxerr_aper', 'fluxerr_auto', 'counts_err', 'e_flux', 'flux_error'],
-  x: ['x_image', 'xcenter', 'xpos', 'x_pix'],
-  y: ['y_image', 'ycenter', 'ypos', 'y_pix'],
-  fwhm: ['fwhm_image', 'seeing', 'fwhm_pix'],
-  sky: ['background', 'msky', 'bkg', 'sky_counts'],
-  peak: ['flux_max', 'max', 'peak_counts'],
+  frame: ['frame number', 'image', 'picture', 'file', 'file name', 'filename'],
+  star: ['name', 'object', 'star name', 'source'],
+  ra: ['right ascension', 'ra (deg)', 'ra j2000'],
+  dec: ['declination', 'dec (deg)', 'dec j2000'],
+  inst_mag: ['instrumental magnitude', 'magnitude', 'mag'],
+  inst_err: ['error', 'err', 'uncertainty', 'sigma', 'standard error'],
+  flux: ['counts', 'net counts'],
+  flux_err: ['flux error', 'counts error'],
+  x: ['x (pix)', 'column'],
+  y: ['y (pix)', 'row'],
+  fwhm: ['fwhm (pix)', 'seeing'],
+  sky: ['background', 'sky level'],
+  peak: ['maximum', 'brightest pixel'],
   flag: ['flags', 'quality'],
-  utc_start: ['date_obs', 'date-obs', 'utc', 'start', 'time_start', 'ut_start'],
-  exposure: ['exptime', 'exp_time', 'itime', 'exposure_s'],
-  band: ['filter', 'passband', 'ifilter'],
-  type: ['imagetyp', 'frame_type', 'obstype'],
+  utc_start: ['date-obs', 'utc', 'start', 'start of exposure'],
+  exposure: ['exptime', 'exposure time', 'exposure (s)'],
+  band: ['filter', 'passband'],
+  type: ['frame type'],
 };
 
 /** A first guess at the mapping of headers that do not use our names. A header is given to one column only. */

@@ -123,7 +123,7 @@ const MappingText = z
       return JSON.parse(text) as unknown;
     } catch {
       // The reader of the answer sees what was sent; the parser's own words add nothing.
-      context.addIssue({ code: 'custom', message: 'must be JSON, such as {"inst_mag": "MAG_APER"}' });
+      context.addIssue({ code: 'custom', message: 'must be JSON, such as {"inst_mag": "Magnitude"}' });
       return z.NEVER;
     }
   })

@@ -27,24 +27,24 @@ describe('columns of a measurement table', () => {
     expect(missingColumns(new Set())).toHaveLength(4);
   });
 
-  it('a first guess maps headers that other programs use, each once, and leaves ours alone', () => {
+  it('a first guess maps headers in plain words, each once, and leaves ours alone', () => {
     expect(
       guessMapping([
-        'NUMBER',
+        'Line',
         'image',
-        'ALPHA_J2000',
-        'DELTA_J2000',
-        'MAG_AUTO',
-        'MAGERR_AUTO',
+        'Right ascension',
+        'Declination',
+        'MAGNITUDE',
+        'Uncertainty',
         'FLAGS',
         'x',
       ]),
     ).toEqual({
       frame: 'image',
-      ra: 'ALPHA_J2000',
-      dec: 'DELTA_J2000',
-      inst_mag: 'MAG_AUTO',
-      inst_err: 'MAGERR_AUTO',
+      ra: 'Right ascension',
+      dec: 'Declination',
+      inst_mag: 'MAGNITUDE',
+      inst_err: 'Uncertainty',
       flag: 'FLAGS',
     });
     expect(guessMapping(['frame', 'star', 'inst_mag', 'inst_err', 'name'])).toEqual({});

@@ -56,11 +56,11 @@ describe('rows that are to be loaded', () => {
   });
 
   it('read other headers by their mapping', () => {
-    const mapping = { frame: 'image', inst_mag: 'MAG_APER', inst_err: 'err' };
-    const { rows, result } = checkTable('IMAGE,star,mag_aper,Err,inst_mag\n1,A,12,0.1,77\n', { mapping });
+    const mapping = { frame: 'image', inst_mag: 'MAGNITUDE', inst_err: 'err' };
+    const { rows, result } = checkTable('IMAGE,star,magnitude,Err,inst_mag\n1,A,12,0.1,77\n', { mapping });
     expect(result.faults).toEqual([]);
     expect(rows[0]?.slice(3, 5)).toEqual(['12', '0.1']);
-    expect(result.columns).toEqual({ frame: 'IMAGE', star: 'star', inst_mag: 'mag_aper', inst_err: 'Err' });
+    expect(result.columns).toEqual({ frame: 'IMAGE', star: 'star', inst_mag: 'magnitude', inst_err: 'Err' });
   });
 
   it('read remembered headers by the mapping that somebody saved for them, unless the uploader gives another', () => {

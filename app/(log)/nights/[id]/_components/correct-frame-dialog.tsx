@@ -1,5 +1,7 @@
 'use client';
 
+import type { Route } from 'next';
+import Link from 'next/link';
 import { useState } from 'react';
 import { callApi } from '@/app/_components/hooks/call-api';
 import { useApiCall } from '@/app/_components/hooks/use-api-call';
@@ -9,6 +11,7 @@ import { ErrorNotice } from '@/app/_components/ui/error-notice';
 import { Field } from '@/app/_components/ui/field';
 import { TextInput } from '@/app/_components/ui/text-input';
 import { correctFrame, removeFrame, type Frame } from '@/lib/contracts/api/frame';
+import { auditAddress } from '@/lib/contracts/audit';
 import { faultsOf, lineOf, readLine, type LineFaults, type LineField } from './frame-line';
 import { frameChange } from './frame-patch';
 import { LineFields } from './line-fields';
@@ -124,6 +127,11 @@ function Open({ frame, onClose }: { readonly frame: Frame; readonly onClose: () 
             />
           )}
         </Field>
+        <p className="col-span-full text-small">
+          <Link href={auditAddress({ about: 'frame', subject: frame.id }, {}) as Route}>
+            What it said before
+          </Link>
+        </p>
         <button type="submit" hidden>
           Save
         </button>

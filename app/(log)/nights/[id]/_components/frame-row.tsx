@@ -1,3 +1,5 @@
+import type { Route } from 'next';
+import Link from 'next/link';
 import { memo } from 'react';
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Cell, Row } from '@/app/_components/ui/data-table';
@@ -6,6 +8,7 @@ import { formatClock } from '@/app/_components/ui/format-time';
 import { StateTag } from '@/app/_components/ui/state-tag';
 import { ToneMark } from '@/app/_components/ui/tone-mark';
 import type { Frame, FrameInput } from '@/lib/contracts/api/frame';
+import { auditAddress } from '@/lib/contracts/audit';
 import type { Band } from '@/lib/contracts/bands';
 import { cautionWords } from './caution-words';
 
@@ -53,6 +56,14 @@ export const FrameRow = memo(function FrameRow({ frame, isSelected, onCorrect }:
       <Cell mono>{frame.programme}</Cell>
       <Cell wrap>
         {comment}
+        {frame.version === 1 ? null : (
+          <Link
+            href={auditAddress({ about: 'frame', subject: frame.id }, {}) as Route}
+            className="block text-small text-ink-2"
+          >
+            corrected
+          </Link>
+        )}
         {cautions.length === 0 ? null : (
           <span className="block text-small text-warn">
             <ToneMark tone="warn" /> {cautions.map((caution) => cautionWords[caution]).join('; ')}

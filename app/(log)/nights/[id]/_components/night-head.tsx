@@ -7,6 +7,7 @@ import { formatDateInWords, formatInstant } from '@/app/_components/ui/format-ti
 import { PageHead } from '@/app/_components/ui/page-head';
 import { StateTag } from '@/app/_components/ui/state-tag';
 import { AddConditionDialog } from './condition-dialog';
+import { ManyFrames } from './many-frames';
 import { mayWork } from './night-log';
 import { AboutNightDialog, CloseNightDialog, ReopenNightDialog } from './night-dialogs';
 import { useNight } from './night-provider';
@@ -38,6 +39,7 @@ export function NightHead() {
                 Add conditions
               </Button>
             ) : null}
+            {may.log ? <ManyFrames /> : null}
             {mayWork(may) ? <Button onClick={() => setShown('about')}>Observers, account</Button> : null}
             {may.close ? <Button onClick={() => setShown('close')}>Close night</Button> : null}
             {may.reopen ? <Button onClick={() => setShown('reopen')}>Open again</Button> : null}

@@ -119,15 +119,21 @@ const guesses: Partial<Record<MeasurementColumn, readonly string[]>> = {
   type: ['frame type'],
 };
 
+/** What headers and guesses have in common: their words, whatever stands between them. */
+const guessKey = (header: string): string =>
+  headerKey(header)
+    .replace(/[^a-z0-9]+/g, '_')
+    .replace(/^_|_$/g, '');
+
 /** A first guess at the mapping of headers that do not use our names. A header is given to one column only. */
 export function guessMapping(headers: readonly string[]): ColumnMapping {
   const present = columnPositions(headers, {});
-  const byKey = new Map(headers.map((header) => [headerKey(header), header.trim()] as const));
-  const taken = new Set<string>(present.keys());
+  const byKey = new Map(headers.map((header) => [guessKey(header), header.trim()] as const));
+  const taken = new Set<string>([...present.keys()].map(guessKey));
   const mapping: ColumnMapping = {};
   for (const column of measurementColumnNames) {
     if (present.has(column)) continue;
-    const key = guesses[column]?.find((guess) => byKey.has(guess) && !taken.has(guess));
+    const key = guesses[column]?.map(guessKey).find((guess) => byKey.has(guess) && !taken.has(guess));
     const header = key === undefined ? undefined : byKey.get(key);
     if (key === undefined || header === undefined) continue;
     mapping[column] = header;

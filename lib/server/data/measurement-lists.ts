@@ -1,5 +1,6 @@
 import 'server-only';
 import type { Band } from '@/lib/contracts/bands';
+import type { StarTally } from '@/lib/contracts/set-page';
 import type { Scope } from '@/lib/server/policy/scope';
 import { fromCursor, pageOf } from './cursor';
 import { select } from './database';
@@ -106,15 +107,6 @@ export async function listStarRows(list: StarList): Promise<Listed<MeasuredStarR
     },
   );
   return pageOf(rows, list.limit, ({ starNo }) => [starNo]);
-}
-
-export interface StarTally {
-  readonly matchedBy: 'name' | 'position' | null;
-  /** Empty for stars with a reason of their own, such as one that names a separation. */
-  readonly reason: string;
-  readonly nStars: number;
-  readonly nRows: number;
-  readonly nCautions: number;
 }
 
 /** How many stars were matched how, and how many were not for which reason. */

@@ -12,7 +12,7 @@ export async function columnMappings(caller: Caller, nightId: string): Promise<L
   return { items: (await mappingsOf(night.telescopeId)).map(toMapping), next: null };
 }
 
-const toMapping = (row: MappingRow): SavedMapping => ({
+export const toMapping = (row: MappingRow): SavedMapping => ({
   headers: [...row.headers],
   mapping: row.mapping,
   saved_by: row.savedBy,

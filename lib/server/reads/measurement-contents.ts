@@ -6,6 +6,7 @@ import type {
   StarsQuery,
 } from '@/lib/contracts/api/measurement-set';
 import type { List, Page } from '@/lib/contracts/common';
+import type { MeasurementSummary } from '@/lib/contracts/set-page';
 import { Fault } from '@/lib/faults/fault';
 import {
   listFaultRows,
@@ -14,8 +15,6 @@ import {
   setFrames,
   tallyStars,
   type MeasuredStarRow,
-  type SetFrameRow,
-  type StarTally,
 } from '@/lib/server/data/measurement-lists';
 import type { MeasurementSetRow } from '@/lib/server/data/measurement-sets';
 import type { Caller } from '@/lib/server/policy/caller';
@@ -108,11 +107,6 @@ export async function measurementRows(caller: Caller, id: string, page: Page): P
     dec: decl,
   }));
   return { items, next };
-}
-
-export interface MeasurementSummary {
-  readonly frames: readonly Omit<SetFrameRow, 'id'>[];
-  readonly tally: readonly StarTally[];
 }
 
 /** What matched and what did not, in numbers: for the head of a set's page. */

@@ -47,6 +47,11 @@ describe('columns of a measurement table', () => {
       inst_err: 'Uncertainty',
       flag: 'FLAGS',
     });
+    expect(guessMapping(['Right Ascension', 'DEC (deg)', 'Mag.'])).toEqual({
+      ra: 'Right Ascension',
+      dec: 'DEC (deg)',
+      inst_mag: 'Mag.',
+    });
     expect(guessMapping(['frame', 'star', 'inst_mag', 'inst_err', 'name'])).toEqual({});
   });
 });

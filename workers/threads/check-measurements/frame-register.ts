@@ -183,13 +183,13 @@ function whyNotCreated(
 ): readonly FrameIssue[] {
   const has = [!Number.isNaN(row.utcStart), !Number.isNaN(row.exposure_s), row.band !== ''];
   if (!has.every(Boolean)) {
-    const remedy = has.some(Boolean)
-      ? 'Fill utc_start, exposure and band in its first row, so that the frame is created.'
-      : 'Log the frame, or add the columns utc_start, exposure and band, so that it is created.';
+    const remedy = night.isOpen
+      ? 'Correct its number or name, log it, or give its utc_start, exposure and band in the table, so that it is created.'
+      : 'Correct its number or name, or open the night again and log it.';
     return [{ column: 'frame', message: 'This frame is not in the night log.', remedy }];
   }
   if (!night.isOpen) {
-    const remedy = 'Reopen the night with a reason, or log the frame.';
+    const remedy = 'Correct its number or name, or open the night again, so that the upload can create it.';
     return [{ column: 'frame', message: 'This frame is not in the log, and the night is closed.', remedy }];
   }
   const issues: FrameIssue[] = [];

@@ -10,7 +10,10 @@ export function NightTabs() {
   const { log } = useNight();
   const pathname = usePathname();
   const home = `/nights/${log.night.id}`;
-  const tabs = [{ href: home as Route, label: 'Log', count: String(log.frames.length) }];
+  const tabs = [
+    { href: home as Route, label: 'Log', count: String(log.frames.length) },
+    { href: `${home}/measurements` as Route, label: 'Measurements' },
+  ];
   return (
     <Tabs
       label="Parts of the night"

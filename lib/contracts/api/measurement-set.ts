@@ -31,8 +31,19 @@ export const MeasurementSet = z
     tolerance: z.number().meta({ description: 'For matching by position, arcsec' }),
     mapping: ColumnMapping,
     comments: z.string().meta({ description: 'The lines before the header that began with #' }),
-    rows: z.number().int().nullable().meta({ description: 'Rows of the table; null until it has been read' }),
-    matched_rows: z.number().int().nullable().meta({ description: 'Rows matched to a standard star' }),
+    rows: z
+      .number()
+      .int()
+      .nullable()
+      .meta({ description: 'Rows that you may see; null until the table has been read' }),
+    matched_rows: z
+      .number()
+      .int()
+      .nullable()
+      .meta({
+        description:
+          'Rows matched to a standard star; null until then, and where you may not see the whole set',
+      }),
     frames_created: z.number().int().meta({ description: 'Frames that the set brought into the log' }),
     faults: z.number().int().meta({ description: 'All of them; the first 1,000 are kept word for word' }),
     uploaded_by: z.string().meta({ description: 'Name of the person' }),

@@ -36,6 +36,8 @@ export interface MeasurementSetRow {
   readonly createdAt: Date;
   /** 1 when the set has rows on a frame that the scope does not hold. */
   readonly hasHiddenFrames: number;
+  /** Rows on frames that it does hold. */
+  readonly visibleRows: number;
 }
 
 const columns = (frameSql: string): string => `
@@ -45,7 +47,9 @@ const columns = (frameSql: string): string => `
   m.n_rows AS nRows, m.n_matched AS nMatched, m.n_frames_created AS nFramesCreated, m.n_faults AS nFaults,
   m.uploaded_by_id AS uploadedById, p.name AS uploadedBy, m.checked_at AS checkedAt, m.created_at AS createdAt,
   EXISTS (SELECT 1 FROM measurement_set_frames q JOIN frames f ON f.id = q.frame_id
-           WHERE q.set_id = m.id AND NOT ${frameSql}) AS hasHiddenFrames`;
+           WHERE q.set_id = m.id AND NOT ${frameSql}) AS hasHiddenFrames,
+  (SELECT CAST(COALESCE(SUM(q.n_rows), 0) AS INT) FROM measurement_set_frames q JOIN frames f ON f.id = q.frame_id
+    WHERE q.set_id = m.id AND ${frameSql}) AS visibleRows`;
 const tables = `measurement_sets m
   JOIN nights n ON n.id = m.night_id
   JOIN telescopes t ON t.id = n.telescope_id

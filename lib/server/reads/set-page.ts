@@ -31,7 +31,7 @@ export async function setPage(caller: Caller, id: string, query: SetPageQuery): 
 /** The part that is shown when none is asked for: what a person most likely came for. */
 function usualPart(set: MeasurementSet): SetPart {
   if (set.kind === 'target') return 'rows';
-  return (set.matched_rows ?? 0) > 0 ? 'matched' : 'others';
+  return (set.matched_rows ?? 1) > 0 ? 'matched' : 'others';
 }
 
 async function contentsOf(

@@ -71,7 +71,7 @@ function Taken({ page: { set, summary } }: { readonly page: SetPage }) {
       <Finding tone={stars > 0 ? 'good' : 'warn'} word={stars > 0 ? 'Taken' : 'Taken, but'}>
         {stars === 0
           ? `none of its ${many(others, 'star', 'stars')} is a standard star: a calibration can use nothing of it.`
-          : `${many(stars, 'standard star', 'standard stars')} found, ${formatCount(byName)} by name and ${formatCount(stars - byName)} by position, in ${formatCount(set.matched_rows)} of ${many(set.rows ?? 0, 'row', 'rows')}.`}{' '}
+          : `${many(stars, 'standard star', 'standard stars')} found, ${howFound(stars, byName)}${rowWords(set)}.`}{' '}
         {stars > 0 && others > 0 ? `${many(others, 'other star', 'other stars')} besides.` : null}
       </Finding>
       {cautions === 0 ? null : (
@@ -82,3 +82,13 @@ function Taken({ page: { set, summary } }: { readonly page: SetPage }) {
     </div>
   );
 }
+
+function howFound(stars: number, byName: number): string {
+  if (byName === stars) return stars === 1 ? 'by name' : 'all by name';
+  if (byName === 0) return stars === 1 ? 'by position' : 'all by position';
+  return `${formatCount(byName)} by name and ${formatCount(stars - byName)} by position`;
+}
+
+/** How much of the table they are; not told where somebody sees a part of it. */
+const rowWords = ({ matched_rows, rows }: MeasurementSet): string =>
+  matched_rows === null ? '' : `, in ${formatCount(matched_rows)} of ${many(rows ?? 0, 'row', 'rows')}`;

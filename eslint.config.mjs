@@ -54,7 +54,7 @@ const allow = {
   // Not other acts: an act that needs another is two acts, or a function of lib/server/data that both use.
   // Of identity they use secrets and sessions; who asks they are told.
   act: ['policy', 'data', 'identity', 'queue', 'mail', 'plumbing', 'contract', 'fault', 'format', ...science],
-  read: ['read', 'policy', 'data', 'identity', 'plumbing', 'contract', 'fault', 'format', ...science],
+  read: ['read', 'mail', 'policy', 'data', 'identity', 'plumbing', 'contract', 'fault', 'format', ...science],
   data: ['data', 'policy', 'db', 'contract', 'fault'],
   // A mail is a row of the outbox and a job.
   mail: ['mail', 'data', 'queue', 'policy', 'plumbing', 'contract', 'fault'],

@@ -23,6 +23,7 @@ export const places: readonly Place[] = [
   { label: 'People', href: '/people', part: 'office', roles: ['manager', 'photometrist'] },
   { label: 'Settings', href: '/settings', part: 'office', roles: ['manager'] },
   { label: 'Audit trail', href: '/audit', part: 'office' },
+  { label: 'Mail', href: '/mail', part: 'office', demoOnly: true },
   { label: 'Sample files', href: '/demo-files', part: 'office', demoOnly: true },
 ];
 

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { PublicId } from './common';
-import { ObservatoryRole, ProgrammeRole } from './roles';
+import { ObservatoryRole, type ProgrammeRole } from './roles';
 import { Email, PersonName } from './sign-in';
 
 /** A form's tick boxes: none, one or several values under one name. */
@@ -16,8 +16,6 @@ export const InvitePerson = z.object({ email: Email, name: PersonName, roles: Ro
 export const PersonAlone = z.object({ person: PublicId });
 export const ChangePerson = z.object({ person: PublicId, name: PersonName, roles: Roles });
 export const FirstManager = z.object({ email: Email, name: PersonName });
-
-export const ProgrammeMember = z.object({ person: PublicId, role: ProgrammeRole });
 
 /** Hours for which a one-time link works. */
 export const linkLife_hours = 72;

@@ -1,5 +1,4 @@
 import { z } from 'zod';
-import { bands, type Band } from './bands';
 import { line } from './common';
 import { figure, tick } from './form-fields';
 
@@ -33,11 +32,6 @@ export type Settings = z.output<typeof Settings>;
 export const readSettings = (stored: unknown): Settings => Settings.parse(stored ?? {});
 
 export const defaultSettings: Settings = readSettings({});
-
-/** The limit of scatter for “photometric” in a band [mag]: U is judged as B, R and I as V. */
-export function scatterLimit({ verdict }: Settings, band: Band): number {
-  return bands.indexOf(band) <= bands.indexOf('B') ? verdict.scatterB : verdict.scatterV;
-}
 
 const practice = 'common practice, no source';
 /** Where each default comes from, as the interface shows it. */

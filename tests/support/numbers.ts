@@ -15,16 +15,3 @@ export function expectWithin(actual: number, expected: number, { absolute, unit 
     `${actual} is ${difference} ${unit} from ${expected}; allowed are ${absolute} ${unit}`,
   ).toBe(true);
 }
-
-/**
- * Holds when a number agrees with a certified one to so many significant digits: −log10 of the relative difference,
- * or of the absolute one where the certified number is zero.
- */
-export function expectDigits(actual: number, certified: number, digits: number): void {
-  const scale = certified === 0 ? 1 : Math.abs(certified);
-  const agreed = actual === certified ? Infinity : -Math.log10(Math.abs(actual - certified) / scale);
-  expect(
-    agreed >= digits,
-    `${actual} agrees with ${certified} to ${agreed.toFixed(2)} digits; wanted are ${digits}`,
-  ).toBe(true);
-}

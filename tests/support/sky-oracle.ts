@@ -4,8 +4,6 @@ import oracle from '../reference/astro-oracle.json';
 /** Figures of an outside program for places, times and twilights; conventions stand in the file. */
 export const skyCases = oracle.cases.map((entry) => ({ ...entry, place: siteOf(entry.site) }));
 
-export type OracleNight = (typeof skyNights)[number];
-
 export const skyNights = oracle.nights.map(withWindow);
 export const highLatitudeNights = oracle.high_latitude_nights.map(withWindow);
 

@@ -36,14 +36,10 @@ export const MeasurementSet = z
       .int()
       .nullable()
       .meta({ description: 'Rows that you may see; null until the table has been read' }),
-    matched_rows: z
-      .number()
-      .int()
-      .nullable()
-      .meta({
-        description:
-          'Rows matched to a standard star; null until then, and where you may not see the whole set',
-      }),
+    matched_rows: z.number().int().nullable().meta({
+      description:
+        'Rows matched to a standard star; null until then, and where you may not see the whole set',
+    }),
     frames_created: z.number().int().meta({ description: 'Frames that the set brought into the log' }),
     faults: z.number().int().meta({ description: 'All of them; the first 1,000 are kept word for word' }),
     uploaded_by: z.string().meta({ description: 'Name of the person' }),

@@ -94,14 +94,6 @@ export async function telescopes(page: TelescopePage = { limit: 1000 }): Promise
   );
 }
 
-export async function telescopeByCode(code: string, tx: Tx | null = null): Promise<TelescopeRow | null> {
-  return selectOne<TelescopeRow>(
-    `SELECT ${telescopeColumns} FROM telescopes t WHERE t.code = :code`,
-    { code },
-    tx,
-  );
-}
-
 /** The telescope's row, held until the transaction ends: what belongs to it changes one at a time. */
 export async function lockTelescope(code: string, tx: Tx): Promise<TelescopeRow | null> {
   return selectOne<TelescopeRow>(

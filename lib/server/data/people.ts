@@ -19,10 +19,6 @@ export async function personByEmail(email: string, tx: Tx | null = null): Promis
   return selectOne<PersonRow>(`SELECT ${columns} FROM people WHERE email = :email`, { email }, tx);
 }
 
-export async function personById(id: number, tx: Tx | null = null): Promise<PersonRow | null> {
-  return selectOne<PersonRow>(`SELECT ${columns} FROM people WHERE id = :id`, { id }, tx);
-}
-
 /** The person's row, held until the transaction ends. */
 export async function lockPerson(publicId: string, tx: Tx): Promise<PersonRow | null> {
   return selectOne<PersonRow>(

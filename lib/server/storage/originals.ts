@@ -1,7 +1,7 @@
 import 'server-only';
 import { createHash, randomUUID } from 'node:crypto';
 import { createReadStream } from 'node:fs';
-import { mkdir, open, readdir, rename, rm, stat, utimes, type FileHandle } from 'node:fs/promises';
+import { mkdir, open, rename, rm, stat, type FileHandle } from 'node:fs/promises';
 import path from 'node:path';
 import { Readable } from 'node:stream';
 import { Fault } from '@/lib/faults/fault';
@@ -107,38 +107,4 @@ export async function openOriginal(
   const place = originalPath(sha256);
   const { size } = await stat(place);
   return { size, body: Readable.toWeb(createReadStream(place)) as ReadableStream };
-}
-
-/** Marks an original as wanted again, so that tidying leaves it alone. */
-export async function touchOriginal(sha256: string): Promise<void> {
-  const now = new Date();
-  await utimes(originalPath(sha256), now, now);
-}
-
-/** Files under their hash and temporary ones that nothing has touched since an instant. */
-export async function staleOriginals(before: Date): Promise<{
-  readonly originals: readonly string[];
-  readonly unfinished: readonly string[];
-}> {
-  const originals: string[] = [];
-  const unfinished: string[] = [];
-  for (const part of await names(folder())) {
-    for (const name of await names(path.join(folder(), part))) {
-      const place = path.join(folder(), part, name);
-      if ((await stat(place)).mtime >= before) continue;
-      if (part === 'incoming') unfinished.push(place);
-      else if (sha256Name.test(name)) originals.push(name);
-    }
-  }
-  return { originals, unfinished };
-}
-
-async function names(place: string): Promise<readonly string[]> {
-  try {
-    return await readdir(place);
-  } catch (error) {
-    // Before the first upload there is no folder.
-    if ((error as { code?: unknown }).code === 'ENOENT') return [];
-    throw error;
-  }
 }

@@ -4,7 +4,7 @@ import { formatCount, noValue } from '@/app/_components/ui/format-figure';
 import { Pagination } from '@/app/_components/ui/pagination';
 import { Panel } from '@/app/_components/ui/panel';
 import type { MeasurementFault, MeasurementSet } from '@/lib/contracts/api/measurement-set';
-import type { PageLinks } from './set-contents';
+import type { PageLinks } from './page-links';
 
 /** How many faults of a table are kept word for word. */
 const kept = 1000;

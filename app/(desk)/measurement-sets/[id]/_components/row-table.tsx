@@ -6,7 +6,7 @@ import { formatCount, formatFixed, formatPlain, noValue } from '@/app/_component
 import { Pagination } from '@/app/_components/ui/pagination';
 import { Panel } from '@/app/_components/ui/panel';
 import type { MeasurementRow } from '@/lib/contracts/api/measurement-set';
-import type { PageLinks } from './set-contents';
+import type { PageLinks } from './page-links';
 
 interface RowTableProps {
   readonly rows: readonly MeasurementRow[];

@@ -1,4 +1,3 @@
-import type { Route } from 'next';
 import { Finding } from '@/app/_components/ui/finding';
 import { formatCount } from '@/app/_components/ui/format-figure';
 import { Tabs } from '@/app/_components/ui/tabs';
@@ -37,11 +36,6 @@ export function SetContents({ page }: { readonly page: SetPage }) {
       ) : null}
     </div>
   );
-}
-
-export interface PageLinks {
-  readonly first: Route | null;
-  readonly next: Route | null;
 }
 
 const reasonOf = ({ contents }: SetPage): string | null =>

@@ -9,7 +9,7 @@ import { Panel } from '@/app/_components/ui/panel';
 import type { MeasuredStar } from '@/lib/contracts/api/measurement-set';
 import type { SetPage, SetPartContents } from '@/lib/contracts/set-page';
 import { Reasons } from './reasons';
-import type { PageLinks } from './set-contents';
+import type { PageLinks } from './page-links';
 
 interface StarTableProps {
   readonly page: SetPage;

@@ -56,7 +56,10 @@ function useComboList(props: ComboboxProps) {
   const type = (typed: string) => {
     onChange(typed);
     setOpen(true);
-    setActive(typed.trim() === '' ? -1 : 0);
+    const text = typed.trim();
+    // A text that is an option as it stands shows the whole list: Enter must take that option, not the first one.
+    const whole = listed(props, typed).findIndex((option) => option.value === text);
+    setActive(text === '' ? -1 : Math.max(whole, 0));
   };
   const onArrow = (event: KeyboardEvent, isDown: boolean) => {
     event.preventDefault();

@@ -43,18 +43,18 @@ describe('sign-in', () => {
   });
 
   it('takes as long for an unknown account, or one without a password, as for a wrong password', async () => {
-    const time = async (email: string): Promise<number> => {
-      const times: number[] = [];
-      for (let i = 0; i < 3; i++) {
-        const start = performance.now();
-        await fails(signIn(newVisitor(), wrong({ email })));
-        times.push(performance.now() - start);
-      }
-      return Math.min(...times);
+    const time_ms = async (email: string): Promise<number> => {
+      const start = performance.now();
+      await fails(signIn(newVisitor(), wrong({ email })));
+      return performance.now() - start;
     };
-    const known = await time((await newPerson()).email);
-    const unknown = await time('nobody-at-all@evenfall.example');
-    const invited = await time((await newPerson({ password: '' })).email);
+    let [known, unknown, invited] = [Infinity, Infinity, Infinity];
+    // In turns, and the shortest of each: what else the machine does then slows none of the three alone.
+    for (let round = 0; round < 6; round += 1) {
+      known = Math.min(known, await time_ms((await newPerson()).email));
+      unknown = Math.min(unknown, await time_ms(`nobody-${round}@evenfall.example`));
+      invited = Math.min(invited, await time_ms((await newPerson({ password: '' })).email));
+    }
     expect(unknown).toBeGreaterThan(known * 0.5);
     expect(invited).toBeGreaterThan(known * 0.5);
   });

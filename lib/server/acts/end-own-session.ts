@@ -14,7 +14,7 @@ export async function endOwnSession(
   demand(caller, 'account.change');
   return inTransaction(async (tx) => {
     if (!(await deleteListedSession(caller.personId, session, tx))) {
-      throw new Fault('not-found', 'This session has ended already.');
+      throw new Fault('not-found', 'It has ended already.');
     }
     await recordAudit(tx, caller, {
       act: 'sign-out',

@@ -194,3 +194,13 @@ export async function observersOfNight(nightId: number, tx: Tx | null = null): P
   );
   return rows.map(({ id }) => id);
 }
+
+/** Those of the originals that a set names, in whatever state: a refused table is kept too. */
+export async function originalsInUse(sha256s: readonly string[]): Promise<ReadonlySet<string>> {
+  if (sha256s.length === 0) return new Set();
+  const rows = await select<{ sha256: string }>(
+    'SELECT DISTINCT sha256 FROM measurement_sets WHERE sha256 IN (:sha256s)',
+    { sha256s },
+  );
+  return new Set(rows.map(({ sha256 }) => sha256));
+}

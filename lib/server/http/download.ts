@@ -4,18 +4,15 @@ export interface Download {
   /** As people named it: any characters. */
   readonly fileName: string;
   readonly contentType: string;
-  /** [bytes]; left out where it is not known beforehand. */
-  readonly size?: number;
 }
 
-/** An answer that a browser saves instead of showing it. */
-export function download(body: string | ReadableStream, { fileName, contentType, size }: Download): Response {
+/** An answer that a browser saves instead of showing it. Next leaves its length out, whatever the answer says. */
+export function download(body: string | ReadableStream, { fileName, contentType }: Download): Response {
   return new Response(body, {
     headers: {
       'content-type': contentType,
       'content-disposition': disposition(fileName),
       'cache-control': 'private, no-store',
-      ...(size === undefined ? {} : { 'content-length': String(size) }),
     },
   });
 }

@@ -51,6 +51,7 @@ export const jobKinds = {
       idempotencyKeys: z.number().int(),
       jobs: z.number().int(),
       signInFailures: z.number().int(),
+      files: z.number().int(),
     }),
     lane: 'short',
     maxTries: 3,

@@ -55,9 +55,9 @@ export async function allMeasurementFaults(
 export async function measurementOriginal(
   caller: Caller,
   id: string,
-): Promise<{ readonly set: MeasurementSetRow; readonly size: number; readonly body: ReadableStream }> {
+): Promise<{ readonly set: MeasurementSetRow; readonly body: ReadableStream }> {
   const set = await wholeSet(caller, id, 'the original');
-  return { set, ...(await openOriginal(set.sha256)) };
+  return { set, body: await openOriginal(set.sha256) };
 }
 
 /** Frames of the set that the caller may see; null when those are all. */

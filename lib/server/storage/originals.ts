@@ -1,7 +1,7 @@
 import 'server-only';
 import { createHash, randomUUID } from 'node:crypto';
 import { createReadStream } from 'node:fs';
-import { mkdir, open, rename, rm, stat, type FileHandle } from 'node:fs/promises';
+import { mkdir, open, readdir, rename, rm, stat, type FileHandle } from 'node:fs/promises';
 import path from 'node:path';
 import { Readable } from 'node:stream';
 import { Fault } from '@/lib/faults/fault';
@@ -9,7 +9,8 @@ import { environment } from '@/lib/server/settings/environment';
 
 /** Originals lie under the SHA-256 of their bytes: the same bytes are kept once, and a name cannot lie about its content. */
 const folder = (): string => path.join(environment().dataDir, 'originals');
-const incoming = (): string => path.join(folder(), 'incoming');
+const incomingName = 'incoming';
+const incoming = (): string => path.join(folder(), incomingName);
 const sha256Name = /^[0-9a-f]{64}$/;
 
 export function originalPath(sha256: string): string {
@@ -70,7 +71,7 @@ async function write(
 async function putInPlace(temporary: string, sha256: string): Promise<void> {
   const place = originalPath(sha256);
   await mkdir(path.dirname(place), { recursive: true });
-  // Over a file of the same bytes nothing changes but its time, which keeps it from being tidied away.
+  // Over a file of the same bytes nothing changes but its time, which keeps it from being removed as nobody's.
   await rename(temporary, place);
 }
 
@@ -100,11 +101,46 @@ function toFault(error: unknown): unknown {
   return error;
 }
 
-/** The original's bytes, from the first to the last. */
-export async function openOriginal(
-  sha256: string,
-): Promise<{ readonly size: number; readonly body: ReadableStream }> {
+/** The original's bytes, from the first to the last. One that is missing is an error before the first byte. */
+export async function openOriginal(sha256: string): Promise<ReadableStream> {
   const place = originalPath(sha256);
-  const { size } = await stat(place);
-  return { size, body: Readable.toWeb(createReadStream(place)) as ReadableStream };
+  await stat(place);
+  return Readable.toWeb(createReadStream(place)) as ReadableStream;
+}
+
+/** SHA-256 of the originals that were put in their place before an instant. */
+export async function originalsBefore(instant: Date): Promise<readonly string[]> {
+  const found: string[] = [];
+  for (const part of await names(folder())) {
+    if (part === incomingName) continue;
+    for (const name of await names(path.join(folder(), part))) {
+      if (sha256Name.test(name) && (await stat(originalPath(name))).mtime < instant) found.push(name);
+    }
+  }
+  return found;
+}
+
+export const removeOriginal = (sha256: string): Promise<void> => rm(originalPath(sha256), { force: true });
+
+/** Removes what uploads of processes that died have left; returns how much it was. */
+export async function removeUnfinished(before: Date): Promise<number> {
+  let removed = 0;
+  for (const name of await names(incoming())) {
+    const place = path.join(incoming(), name);
+    const { mtime } = await stat(place);
+    if (mtime >= before) continue;
+    await rm(place, { force: true });
+    removed += 1;
+  }
+  return removed;
+}
+
+async function names(place: string): Promise<readonly string[]> {
+  try {
+    return await readdir(place);
+  } catch (error) {
+    // Before the first upload there is no folder.
+    if ((error as { code?: unknown }).code === 'ENOENT') return [];
+    throw error;
+  }
 }

@@ -49,7 +49,7 @@ async function newNight(): Promise<Night> {
 const header = 'frame,star,inst_mag,inst_err';
 const small = `${header}\n1,SA 98-1,-7,0.01\n`;
 /** Enough rows for several slices. */
-const large = `${header}\n${Array.from({ length: 200_000 }, (_, row) => `1,star ${row},-7.125,0.0125`).join('\n')}\n`;
+const large = `${header}\n${Array.from({ length: 150_000 }, (_, row) => `1,star ${row},-7.125,0.0125`).join('\n')}\n`;
 
 async function codeOf(work: Promise<unknown>): Promise<FaultCode> {
   try {
@@ -94,7 +94,7 @@ describe('the same bytes twice', () => {
   });
 });
 
-describe('a check that ends in its middle', () => {
+describe('a check that ends in its middle', { timeout: 60_000 }, () => {
   it('leaves nothing of the table, and comes to its end when it is run again', async () => {
     const before = (await mailsOf('measurements-waiting')).length;
     const night = await newNight();
@@ -111,8 +111,8 @@ describe('a check that ends in its middle', () => {
     expect(half).toMatchObject({ measurements: 0, stars: 0, frames: 0, nMatched: null });
     expect(['received', 'checked']).toContain(half.state);
     expect(await filesIn('work')).toEqual([]);
-    expect(await check({ set })).toMatchObject({ state: 'matched', rows: 200_000 });
-    expect(await setNow(set)).toMatchObject({ state: 'matched', measurements: 200_000, stars: 200_000 });
+    expect(await check({ set })).toMatchObject({ state: 'matched', rows: 150_000 });
+    expect(await setNow(set)).toMatchObject({ state: 'matched', measurements: 150_000, stars: 150_000 });
     expect(await mailsOf('measurements-waiting')).toHaveLength(before + 1);
   });
 
@@ -142,7 +142,7 @@ describe('a check that ends in its middle', () => {
   it('with a fault in the last row undoes the rows that were loaded before it was found', async () => {
     const night = await newNight();
     const { set } = await upload(noor, night.id, `${large}1,last,NaN,0.1\n`);
-    expect(await check({ set })).toMatchObject({ state: 'refused', rows: 200_001, faults: 1 });
+    expect(await check({ set })).toMatchObject({ state: 'refused', rows: 150_001, faults: 1 });
     expect(await setNow(set)).toMatchObject({
       state: 'refused',
       measurements: 0,

@@ -51,7 +51,7 @@ export function FileDrop({ file, disabled, error, onFile }: FileDropProps) {
         ref={input}
         type="file"
         accept=".csv,.txt,text/csv"
-        aria-label="Measurement table"
+        aria-label="File of the table"
         tabIndex={-1}
         className="sr-only"
         disabled={disabled}

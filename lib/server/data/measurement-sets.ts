@@ -97,6 +97,17 @@ export async function listSetRows(
   return pageOf(rows, page.limit, ({ id }) => [id]);
 }
 
+/** How many sets of the night are in the scope; null when the night's measurements are not. */
+export async function countSets(scope: Scope, nightId: number): Promise<number | null> {
+  const nights = visibleNights(scope);
+  const row = await selectOne<{ sets: number }>(
+    `SELECT (SELECT COUNT(*) FROM measurement_sets m WHERE m.night_id = n.id) AS \`sets\`
+       FROM nights n WHERE n.id = :nightId AND ${nights.sql}`,
+    { nightId, ...nights.values },
+  );
+  return row && Number(row.sets);
+}
+
 export interface NewSet {
   readonly publicId: string;
   readonly nightId: number;

@@ -7,12 +7,13 @@ import type { TimeLoss } from '@/lib/contracts/api/time-loss';
 import { allConditionRows, toCondition } from '@/lib/server/data/conditions';
 import { allFrameRows, toFrame } from '@/lib/server/data/frames';
 import { instrumentOf, type FilterRow } from '@/lib/server/data/instruments';
+import { countSets } from '@/lib/server/data/measurement-sets';
 import { requireNight, subjectOf, toNight } from '@/lib/server/data/nights';
 import { allRemarkRows, toRemark } from '@/lib/server/data/remarks';
 import { allTimeLossRows, toTimeLoss } from '@/lib/server/data/time-losses';
 import type { Caller } from '@/lib/server/policy/caller';
 import { may } from '@/lib/server/policy/matrix';
-import { nightScope } from '@/lib/server/policy/scope';
+import { dataScope, nightScope } from '@/lib/server/policy/scope';
 
 export interface NightPage {
   readonly night: Night;
@@ -38,6 +39,8 @@ export interface NightPage {
   readonly conditions: readonly Condition[];
   readonly remarks: readonly Remark[];
   readonly timeLosses: readonly TimeLoss[];
+  /** Measurement sets; null where they are not the caller's to see. */
+  readonly sets: number | null;
   readonly may: {
     readonly log: boolean;
     readonly close: boolean;
@@ -46,16 +49,17 @@ export interface NightPage {
   };
 }
 
-/** All that the page of a night shows: eight statements, however much was logged. */
+/** All that the page of a night shows: nine statements, however much was logged. */
 export async function nightPage(caller: Caller, id: string): Promise<NightPage> {
   const scope = nightScope(caller);
   const row = await requireNight(scope, id);
-  const [instrument, frames, conditions, remarks, losses] = await Promise.all([
+  const [instrument, frames, conditions, remarks, losses, sets] = await Promise.all([
     instrumentOf(row),
     allFrameRows(scope, row.id),
     allConditionRows(row.id),
     allRemarkRows(row.id),
     allTimeLossRows(row.id),
+    countSets(dataScope(caller), row.id),
   ]);
   const programmeIds = frames.flatMap(({ programmeId }) => programmeId ?? []);
   const subject = { ...subjectOf(row), programmeIds: [...new Set(programmeIds)] };
@@ -78,6 +82,7 @@ export async function nightPage(caller: Caller, id: string): Promise<NightPage> 
     conditions: conditions.map(toCondition),
     remarks: remarks.map(toRemark),
     timeLosses: losses.map(toTimeLoss),
+    sets,
     may: {
       log: row.state === 'open' && may(caller, 'night.log', subject),
       close: row.state === 'open' && may(caller, 'night.close', subject),

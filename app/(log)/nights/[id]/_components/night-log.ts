@@ -34,6 +34,8 @@ export interface NightLog {
   readonly conditions: readonly Condition[];
   readonly remarks: readonly Remark[];
   readonly timeLosses: readonly TimeLoss[];
+  /** Measurement sets; null where they are not the reader's to see. */
+  readonly sets: number | null;
   readonly may: {
     readonly log: boolean;
     readonly close: boolean;

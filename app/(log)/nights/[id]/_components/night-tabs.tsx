@@ -12,7 +12,7 @@ export function NightTabs() {
   const home = `/nights/${log.night.id}`;
   const tabs = [
     { href: home as Route, label: 'Log', count: String(log.frames.length) },
-    { href: `${home}/measurements` as Route, label: 'Measurements' },
+    { href: `${home}/measurements` as Route, label: 'Measurements', ...countOf(log.sets) },
   ];
   return (
     <Tabs
@@ -21,3 +21,7 @@ export function NightTabs() {
     />
   );
 }
+
+/** As the tab says it: `3 sets`. Where they are not the reader's to see it says nothing. */
+const countOf = (sets: number | null): { readonly count?: string } =>
+  sets === null ? {} : { count: sets === 1 ? '1 set' : `${sets} sets` };

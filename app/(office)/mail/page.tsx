@@ -38,7 +38,7 @@ export default async function MailPage() {
             {mails.map((mail) => (
               <Row key={mail.id}>
                 <Cell mono>{formatInstant(mail.receivedAt)}</Cell>
-                <Cell>{mail.to}</Cell>
+                <Cell>{mail.to === '' ? 'not given' : mail.to}</Cell>
                 <Cell heading wrap>
                   <Link href={`/mail/${mail.id}` as Route} className="underline">
                     {mail.subject === '' ? 'no subject' : mail.subject}

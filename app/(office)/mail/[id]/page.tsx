@@ -10,6 +10,9 @@ import { readCaughtMail } from '@/lib/server/reads/caught-mail';
 
 export const metadata: Metadata = { title: 'Mail' };
 
+/** Mail need not hold any of its headers; an empty place would look like a fault of the page. */
+const given = (header: string): string => (header === '' ? 'not given' : header);
+
 export default async function MessagePage({ params }: PageProps<'/mail/[id]'>) {
   const caller = await callerOrSignIn();
   const mail = await orNotFound(readCaughtMail(caller, (await params).id));
@@ -22,28 +25,37 @@ export default async function MessagePage({ params }: PageProps<'/mail/[id]'>) {
       <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_minmax(320px,30%)]">
         <div className="grid gap-5">
           <Panel title="Plain text">
-            <pre className="max-w-prose font-sans text-body whitespace-pre-wrap">{mail.text}</pre>
+            {mail.text.trim() === '' ? (
+              <p className="text-ink-2">The message has no text.</p>
+            ) : (
+              <pre className="max-w-prose font-sans text-body whitespace-pre-wrap">{mail.text}</pre>
+            )}
           </Panel>
           {mail.html === null ? null : (
-            // White paper: folded, so that it lights up no dark room by itself.
-            <details className="rounded-panel border border-rule bg-sheet px-3.5 py-2.5 dark-site:hidden">
-              <summary className="text-table font-semibold">As HTML</summary>
-              <iframe
-                title="The message as HTML"
-                sandbox=""
-                srcDoc={mail.html}
-                className="bg-white mt-2 h-[32rem] w-full border border-rule"
-              />
-            </details>
+            <>
+              {/* The browser draws it on white: folded, so that it lights up no dim room by itself, and never in Dark site. */}
+              <details className="rounded-panel border border-rule bg-sheet px-3.5 py-2.5 dark-site:hidden">
+                <summary className="text-table font-semibold">As HTML</summary>
+                <iframe
+                  title="The message as HTML"
+                  sandbox=""
+                  srcDoc={mail.html}
+                  className="mt-2 h-[32rem] w-full border border-rule"
+                />
+              </details>
+              <p className="hidden text-small text-ink-2 dark-site:block">
+                The message has an HTML form, too. It is white, so Dark site leaves it out.
+              </p>
+            </>
           )}
         </div>
         <Panel title="Headers">
           <KeyValues
             items={[
-              { key: 'From', value: mail.from },
-              { key: 'To', value: mail.to },
+              { key: 'From', value: given(mail.from) },
+              { key: 'To', value: given(mail.to) },
               { key: 'Received', value: formatInstant(mail.receivedAt), figure: true },
-              { key: 'Message-ID', value: mail.messageId, figure: true },
+              { key: 'Message-ID', value: given(mail.messageId), figure: true },
             ]}
           />
           <details className="mt-3">

@@ -38,6 +38,17 @@ function listed(
   return (isWhole ? options : options.filter(({ value }) => fits(value, text))).slice(0, most);
 }
 
+/**
+ * Which option Enter or Tab would take: the one that stands there as it was typed, else the first that fits. A whole
+ * name shows every option, so the first of those is not what was meant.
+ */
+function highlighted(props: Pick<ComboboxProps, 'options' | 'fits'>, typed: string): number {
+  const text = typed.trim();
+  if (text === '') return -1;
+  const exact = listed(props, typed).findIndex(({ value }) => value === text);
+  return exact >= 0 || props.options.some(({ value }) => value === text) ? exact : 0;
+}
+
 /** What the list of a combobox knows and does: open or not, which option is highlighted, which keys do what. */
 function useComboList(props: ComboboxProps) {
   const { value, onChange, holdsEnter = false } = props;
@@ -56,10 +67,7 @@ function useComboList(props: ComboboxProps) {
   const type = (typed: string) => {
     onChange(typed);
     setOpen(true);
-    const text = typed.trim();
-    // A text that is an option as it stands shows the whole list: Enter must take that option, not the first one.
-    const whole = listed(props, typed).findIndex((option) => option.value === text);
-    setActive(text === '' ? -1 : Math.max(whole, 0));
+    setActive(highlighted(props, typed));
   };
   const onArrow = (event: KeyboardEvent, isDown: boolean) => {
     event.preventDefault();

@@ -1,6 +1,14 @@
 'use client';
 
-import { useEffect, useMemo, useRef, useState, type FormEvent, type KeyboardEvent } from 'react';
+import {
+  useEffect,
+  useLayoutEffect,
+  useMemo,
+  useRef,
+  useState,
+  type FormEvent,
+  type KeyboardEvent,
+} from 'react';
 import { useNow } from '@/app/_components/hooks/use-now';
 import { useShortcut } from '@/app/_components/hooks/use-shortcut';
 import { Button, KeyHint } from '@/app/_components/ui/button';
@@ -80,9 +88,14 @@ export function LogLine() {
     send({ kind: 'frame', body: input });
     setSpoken(`Frame ${input.number ?? ''} logged.`);
     state.reset();
-    const active = document.activeElement;
-    if (active instanceof HTMLInputElement) active.select();
   };
+  // As long as nobody types, the field with the focus is selected whole, whatever the proposal becomes: it can be typed over.
+  const proposed = state.isUntouched ? Object.values(state.line).join('\n') : null;
+  useLayoutEffect(() => {
+    const field = document.activeElement;
+    if (proposed !== null && field instanceof HTMLInputElement && form.current?.contains(field))
+      field.select();
+  }, [proposed]);
   const onKeyDown = (event: KeyboardEvent) => {
     if (event.key === 'Enter' && event.shiftKey) {
       event.preventDefault();

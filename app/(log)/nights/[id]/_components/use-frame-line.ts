@@ -17,6 +17,13 @@ import {
 } from './frame-line';
 import { latestFirst, type NightLog } from './night-log';
 
+/**
+ * By number, which is the order of logging: frames whose starts were typed after the fact may overlap, and their middles
+ * would turn the sequence of bands about.
+ */
+const lastLoggedFirst = (frames: readonly Frame[]): readonly Frame[] =>
+  [...frames].sort((a, b) => b.number - a.number);
+
 /** What was logged before, the latest first: with the server, and after it what still waits. */
 export function formerFrames(
   frames: readonly Frame[],
@@ -33,7 +40,7 @@ export function formerFrames(
     band: input.band ?? null,
     exposure: input.exposure,
   }));
-  return [...onItsWay.toReversed(), ...latestFirst(frames)];
+  return [...onItsWay.toReversed(), ...lastLoggedFirst(frames)];
 }
 
 /** When the last frame ended, for nights that are over: `23:44:05`; the beginning of the night without one. */
@@ -104,10 +111,22 @@ export function useFrameLine({ log, objects, waiting, now }: LineInput) {
     return result.ok ? result.input : null;
   };
   const repeatLast = () => {
-    const [last] = latestFirst(frames);
+    const [last] = lastLoggedFirst(frames);
     const again = waiting.at(-1) ?? last;
     if (again === undefined) return;
     fill({ ...lineOf(again), number: String(highest + 1), start: propose().start, comment: '', file: '' });
   };
-  return { line, faults, isNow, set, fill, reset, read, repeatLast, hasFormer: former.length > 0 };
+  const isUntouched = typed === null;
+  return {
+    line,
+    isUntouched,
+    faults,
+    isNow,
+    set,
+    fill,
+    reset,
+    read,
+    repeatLast,
+    hasFormer: former.length > 0,
+  };
 }

@@ -1,8 +1,8 @@
 import type { Frame, FrameInput } from '@/lib/contracts/api/frame';
+import type { Issue } from '@/lib/faults/fault';
 import type { ListedLine } from './frame-list';
 import { readLine, type LineFaults } from './frame-line';
 import type { NightLog } from './night-log';
-import type { Issue } from '@/lib/faults/fault';
 
 /** A line of a list, read: what would be logged, or what is wrong with it. */
 export interface CheckedLine extends ListedLine {
@@ -45,9 +45,8 @@ export function checkFrames(
 ): readonly CheckedLine[] {
   const clash = clashes(frames);
   return lines.map((listed) => {
-    const read = readLine(listed.line, { night, telescope, now: Number.NaN });
+    const read = readLine(listed.line, { night, telescope, now: null });
     const faults: LineFaults = {
-      ...(listed.line.start === '' ? { start: 'is needed' } : {}),
       ...(read.ok ? {} : read.faults),
       ...clash(listed),
     };
@@ -57,13 +56,10 @@ export function checkFrames(
 }
 
 /** Faults that the server found in a list, on the lines that they are about. Its paths read `12.band`. */
-export function serverFaults(
-  issues: readonly { readonly path: string; readonly message: string }[],
-  lines: readonly ListedLine[],
-): readonly Issue[] {
+export function serverFaults(issues: readonly Issue[], lines: readonly ListedLine[]): readonly Issue[] {
   return issues.map(({ path, message }) => {
-    const [index = '', field] = path.split('.');
-    const line = lines[Number(index)]?.lineNumber;
-    return { path: field ?? path, message, ...(line === undefined ? {} : { line }) };
+    const [index = '', column = ''] = path.split('.');
+    const line = /^\d+$/.test(index) ? lines[Number(index)]?.lineNumber : undefined;
+    return line === undefined ? { path, message } : { path, line, column, message };
   });
 }

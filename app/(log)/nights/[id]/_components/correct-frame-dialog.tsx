@@ -30,7 +30,7 @@ function useCorrection(frame: Frame, onClose: () => void) {
   const why = reason.trim();
 
   const correct = async () => {
-    const read = readLine(line, { night: log.night, telescope: log.telescope, now: Number.NaN });
+    const read = readLine(line, { night: log.night, telescope: log.telescope, now: null });
     setFaults(read.ok ? {} : read.faults);
     if (!read.ok) return;
     const difference = frameChange(frame, read.input);

@@ -117,8 +117,8 @@ function asField(path: PropertyKey | undefined): LineField {
 interface Reading {
   readonly night: NightLog['night'];
   readonly telescope: NightLog['telescope'];
-  /** ms; stands in for an empty start. */
-  readonly now: number;
+  /** ms; stands in for an empty start. Null where a start must be written. */
+  readonly now: number | null;
 }
 
 function typeAndBand(line: FrameLine, faults: Partial<Record<LineField, string>>) {
@@ -136,7 +136,7 @@ export function readLine(line: FrameLine, { night, telescope, now }: Reading): R
   const { faults, figure, angle, given } = reader(line);
   const { type, band } = typeAndBand(line, faults);
   const start =
-    line.start.trim() === ''
+    line.start.trim() === '' && now !== null
       ? { ok: true as const, utc: new Date(Math.floor(now / 1000) * 1000).toISOString() }
       : instantInNight(line.start, night);
   if (!start.ok) faults.start = start.reason;

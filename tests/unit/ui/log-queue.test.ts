@@ -70,7 +70,9 @@ describe('the queue of log entries', () => {
 
   it('stops when the session has ended, and loses nothing', async () => {
     changeQueue(() => [entry()]);
-    expect(await drain(async () => ({ ok: false, kind: 'signed-out' }))).toMatchObject({ kind: 'signed-out' });
+    expect(await drain(async () => ({ ok: false, kind: 'signed-out' }))).toMatchObject({
+      kind: 'signed-out',
+    });
     expect(readQueue()).toHaveLength(1);
   });
 

@@ -12,14 +12,14 @@ const frames = [
   frame('2026-11-03T22:50:00Z', { number: 42, type: 'target', band: 'B', object: 'Thistle 3' }),
 ];
 
-function Page() {
+function Page({ time = now }: { readonly time?: number }) {
   const [selected, select] = useState<AddressStretch | null>(null);
   return (
     <NightBand
       sky={autumnNight()}
       frames={frames}
       conditions={[]}
-      now={now}
+      now={time}
       selected={selected}
       onSelect={select}
     />
@@ -45,6 +45,17 @@ describe('the night band', () => {
     await userEvent.keyboard('{Shift>}{ArrowLeft}{ArrowLeft}{ArrowLeft}{ArrowLeft}{/Shift}');
     expect(strip.getAttribute('aria-valuetext')).toBe('22:40 UTC, selected 22:40 to 23:00, 2 frames');
     expect(screen.getByText('Selected: 22:40 to 23:00, 2 frames.')).toBeTruthy();
+  });
+
+  it('goes from end to end also when the night is long past', async () => {
+    render(<Page time={now + 30 * 86_400_000} />);
+    const strip = screen.getByRole('slider');
+    expect(Number(strip.getAttribute('aria-valuenow'))).toBeLessThanOrEqual(
+      Number(strip.getAttribute('aria-valuemax')),
+    );
+    strip.focus();
+    await userEvent.keyboard('{Home}{Shift>}{End}{/Shift}');
+    expect(strip.getAttribute('aria-valuetext')).toMatch(/selected 18:23 to 07:23, 2 frames/);
   });
 
   it('is cleared by Esc and by the button', async () => {

@@ -91,7 +91,9 @@ export function NightBand({ sky, frames, conditions, now, selected, onSelect }: 
     [sky, frames, conditions, width, now],
   );
   const last = frames.at(-1)?.utc ?? null;
-  const origin = selected?.to ?? now ?? last ?? (sky.start + sky.end) / 2;
+  const present = now !== null && now >= sky.start && now <= sky.end ? now : null;
+  const wanted = selected?.to ?? present ?? last ?? (sky.start + sky.end) / 2;
+  const origin = Math.min(sky.end, Math.max(sky.start, wanted));
   const selection = useBandSelection({ scale: layout.scale, selected, select: onSelect, origin });
   const [near, setNear] = useState<Mark | null>(null);
   useFirstScroll(ref, layout.nowX ?? (last === null ? null : xOf(layout.scale, last)), measured !== null);

@@ -17,7 +17,7 @@ const slack = 5;
 const step_ms = 5 * minute_ms;
 
 /** Steps of the keyboard's mark, ms; null for keys that do not move it. */
-function stepOf(event: KeyboardEvent, { start, end }: TimeScale): number | null {
+function stepOf(event: KeyboardEvent): number | null {
   const steps: Readonly<Record<string, number>> = {
     ArrowLeft: -step_ms,
     ArrowRight: step_ms,
@@ -25,8 +25,8 @@ function stepOf(event: KeyboardEvent, { start, end }: TimeScale): number | null 
     ArrowUp: step_ms,
     PageDown: -60 * minute_ms,
     PageUp: 60 * minute_ms,
-    Home: start - end,
-    End: end - start,
+    Home: -Infinity,
+    End: Infinity,
   };
   return steps[event.key] ?? null;
 }
@@ -90,7 +90,7 @@ export function useBandSelection({ scale, selected, select, origin }: SelectionI
       event.preventDefault();
       return clear();
     }
-    const step = stepOf(event, scale);
+    const step = stepOf(event);
     if (step === null) return;
     event.preventDefault();
     const present = mark ?? toMinute(origin);

@@ -49,8 +49,9 @@ export function LineFields({ state, now }: { readonly state: LineState; readonly
   /** A clock that runs on under the fingers could not be typed over. */
   const freeze = (event: FocusEvent<HTMLInputElement>) => {
     const field = event.target;
-    if (line.start === '' && isNow) set('start', present);
-    requestAnimationFrame(() => field.select());
+    // What it shows becomes what it says: the field itself does not change, so the selection stays under fast fingers.
+    if (line.start === '' && isNow) set('start', field.value);
+    field.select();
   };
   return (
     <>

@@ -76,13 +76,13 @@ export function LogLine() {
   const [spoken, setSpoken] = useState('');
   const [isMore, setMore] = useState(false);
 
-  const focusFirst = (selector: string) =>
-    requestAnimationFrame(() => form.current?.querySelector<HTMLInputElement>(selector)?.focus());
+  const fieldAt = (selector: string) => form.current?.querySelector<HTMLInputElement>(selector);
   const submit = (event: FormEvent) => {
     event.preventDefault();
     const input = state.read();
     if (input === null) {
-      focusFirst('[aria-invalid=true]');
+      // The field is marked once the page is drawn again.
+      requestAnimationFrame(() => fieldAt('[aria-invalid=true]')?.focus());
       return;
     }
     send({ kind: 'frame', body: input });
@@ -112,7 +112,8 @@ export function LogLine() {
       field?.select();
     }
   }, []);
-  useShortcut('L', () => focusFirst('[name=object]'));
+  // At once: what is typed next belongs into the field.
+  useShortcut('L', () => fieldAt('[name=object]')?.focus());
 
   return (
     <div className="border-b border-rule bg-sunk px-3.5 py-2.5">

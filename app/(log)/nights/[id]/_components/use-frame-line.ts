@@ -44,8 +44,12 @@ export function formerFrames(
 }
 
 /** When the last frame ended, for nights that are over: `23:44:05`; the beginning of the night without one. */
-function endOfLast(frames: readonly Frame[], night: NightLog['night']): string {
-  const [last] = latestFirst(frames);
+function endOfLast(
+  frames: readonly Frame[],
+  waiting: readonly FrameInput[],
+  night: NightLog['night'],
+): string {
+  const last = waiting.at(-1) ?? latestFirst(frames)[0];
   const end =
     last === undefined ? Date.parse(night.starts_at) : Date.parse(last.utc_start) + last.exposure * 1000;
   return formatClock(end);
@@ -67,7 +71,7 @@ export function useFrameLine({ log, objects, waiting, now }: LineInput) {
   const highest = former.reduce((most, { number }) => Math.max(most, number), 0);
   const propose = (): FrameLine => ({
     ...proposedLine(proposeFrame(former, telescope.filters, highest)),
-    start: isNow ? '' : endOfLast(frames, night),
+    start: isNow ? '' : endOfLast(frames, waiting, night),
   });
   /** Null as long as nobody typed: then the line follows what is proposed. */
   const [typed, setTyped] = useState<FrameLine | null>(null);

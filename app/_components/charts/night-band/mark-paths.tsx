@@ -46,7 +46,7 @@ export function MarkPaths({ marks, size }: { readonly marks: readonly Mark[]; re
       className={classNames(
         'stroke-sky-ink',
         // One red for all: a dark edge keeps neighbours apart.
-        shape === 'full' && 'dark-site:stroke-sky-night',
+        shape === 'full' && 'dark-site:stroke-sky-night dark-site:[stroke-width:0.7]',
         look(shape, row),
       )}
     />

@@ -109,7 +109,7 @@ function Open({ frame, onClose }: { readonly frame: Frame; readonly onClose: () 
           void correct();
         }}
         aria-label={`Frame ${frame.number}`}
-        className="grid grid-cols-4 items-start gap-2"
+        className="grid grid-cols-2 items-start gap-2 sm:grid-cols-4"
       >
         <LineFields state={state} now={0} />
         <MoreFields state={state} />

@@ -76,7 +76,7 @@ export function LineFields({ state, now }: { readonly state: LineState; readonly
       <Field label="Band" error={faults.band}>
         {(control) => <Combobox control={control} {...combo('band')} options={bandOptions} />}
       </Field>
-      <Field label="Start, UTC" required error={faults.start}>
+      <Field label="Start, UTC" required error={faults.start} className="max-lg:col-span-2">
         {(control) => (
           <TextInput
             {...control}

@@ -29,6 +29,8 @@ const openNight = async (page: Page): Promise<void> => {
     .getByRole('link', { name: /Continue the log|See the log/ })
     .first()
     .click();
+  // Tonight shows a band for each telescope: only the night's own page has one alone.
+  await page.waitForURL(/\/nights\/[0-9a-z]{12}/);
   await page.getByRole('slider').waitFor();
 };
 

@@ -44,7 +44,7 @@ const allow = {
   // Formats as well: headers of FITS files are read in the browser, so that their pixels stay at the telescope.
   component: ['component', 'contract', 'fault', 'format', ...science],
   endpoint: ['endpoint', 'http', 'act', 'read', 'contract', 'fault', 'format'],
-  contract: ['contract', 'fault', 'astro'],
+  contract: ['contract', 'fault', 'astro', 'photometry'],
   fault: ['fault'],
   numerics: ['numerics', 'fault'],
   astro: ['astro', 'numerics', 'fault'],

@@ -22,7 +22,8 @@ export async function callApi(operation: Operation, call: ApiCall = {}): Promise
     [operation.method](`/api/v1${path}`)
     .query({ ...call.query })
     .set({ ...(call.token === undefined ? {} : { authorization: `Bearer ${call.token}` }), ...call.headers });
-  if (call.body !== undefined) sent.set('content-type', 'application/json').send(call.body);
+  if (call.body !== undefined)
+    sent.set('content-type', call.headers?.['content-type'] ?? 'application/json').send(call.body);
   const answer = await sent;
   expectAsDocumented(operation, answer);
   return answer;

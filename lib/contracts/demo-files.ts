@@ -32,6 +32,16 @@ export const demoFiles: readonly DemoFile[] = [
     about: 'Stars of the programmes’ targets, named and with positions.',
   },
   {
+    name: '2026-10-17-standards.csv',
+    night: '2026-10-17',
+    about: 'Standard stars of a night that is calibrated. It is uploaded already.',
+  },
+  {
+    name: '2026-10-17-targets.csv',
+    night: '2026-10-17',
+    about: 'Programme stars of the calibrated night. It is uploaded already.',
+  },
+  {
     name: '2026-11-03-standards.csv',
     night: '2026-11-03',
     about: 'Standard stars in five bands. It is uploaded already: a second time it is recognised.',
@@ -60,7 +70,8 @@ export const demoFiles: readonly DemoFile[] = [
   {
     name: '2026-11-08-standards.csv',
     night: '2026-11-08',
-    about: 'Standard stars of the cloudy night. It is uploaded already.',
+    about:
+      'Standard stars of the cloudy night, one of them mistaken for its neighbour. It is uploaded already.',
   },
   {
     name: '2026-11-08-targets.csv',

@@ -97,6 +97,10 @@ export type DemoTruth = Readonly<Partial<Record<BandName, SimulatedBand>>>;
 export interface DemoNight {
   readonly date: string;
   readonly seed: number;
+  /** Names of standards in whose place another one was measured throughout: the other's name. */
+  readonly mistaken?: Readonly<Record<string, string>>;
+  /** Whether it has the sample tables with faults, mistakes and other headers. */
+  readonly samples?: boolean;
   readonly closed_at: string;
   readonly observers: readonly string[];
   readonly summary: string;

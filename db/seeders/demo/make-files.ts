@@ -62,11 +62,11 @@ export async function makeUploadFiles(): Promise<Files> {
   const sky = await readDemoSky(world, true);
   const files = new Map<string, string>();
   const keep = (made: Files): void => made.forEach((content, name) => files.set(`uploads/${name}`, content));
-  for (const [index, plan] of world.nights.nights.entries()) {
+  for (const plan of world.nights.nights) {
     const observed = observeNight(plan, sky);
-    const measurements = measure(observed, sky);
+    const measurements = measure(observed, sky, new Map(Object.entries(plan.mistaken ?? {})));
     keep(nightTables(plan.date, measurements));
-    if (index > 0) continue;
+    if (plan.samples !== true) continue;
     keep(foreignTable(plan.date, measurements));
     keep(faultyTable(plan.date, measurements));
     keep(mistakenTable(plan.date, measure(observed, sky, mistaken)));

@@ -8,8 +8,10 @@ import { Night } from '../../models/night';
 import { Person } from '../../models/person';
 import { fixturePath } from '../fixture-files';
 
-/** What is uploaded when the demo begins: both tables of the good night, of the cloudy one the standards only. */
+/** What is uploaded when the demo begins: both tables of the good nights, of the cloudy one the standards only. */
 const samples = [
+  { night: '2026-10-17', file: '2026-10-17-standards.csv', kind: 'standard', name: 'Standards' },
+  { night: '2026-10-17', file: '2026-10-17-targets.csv', kind: 'target', name: 'Programme targets' },
   { night: '2026-11-03', file: '2026-11-03-standards.csv', kind: 'standard', name: 'Standards' },
   { night: '2026-11-03', file: '2026-11-03-targets.csv', kind: 'target', name: 'Programme targets' },
   { night: '2026-11-08', file: '2026-11-08-standards.csv', kind: 'standard', name: 'Standards' },

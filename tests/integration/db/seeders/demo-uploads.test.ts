@@ -54,9 +54,11 @@ describe('the demo’s uploads', () => {
     photometrist = caller;
   });
 
-  it('both tables of the good night and the standards of the cloudy one wait to be checked, and match whole', async () => {
+  it('both tables of the good nights and the standards of the cloudy one wait to be checked, and match whole', async () => {
     const sets = await MeasurementSet.findAll({ order: ['id'] });
     expect(sets.map(({ fileName, state }) => `${fileName} ${state}`)).toEqual([
+      '2026-10-17-standards.csv received',
+      '2026-10-17-targets.csv received',
       '2026-11-03-standards.csv received',
       '2026-11-03-targets.csv received',
       '2026-11-08-standards.csv received',
@@ -72,7 +74,7 @@ describe('the demo’s uploads', () => {
 
   it('loading the demo again uploads nothing twice', async () => {
     expect(await seedDemo(database(), options)).toContain('Tables uploaded: 0');
-    expect(await MeasurementSet.count()).toBe(3);
+    expect(await MeasurementSet.count()).toBe(5);
   });
 
   it('the faulty table is refused, with a fault in each line that was spoilt and in no other', async () => {

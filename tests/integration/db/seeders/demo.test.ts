@@ -53,9 +53,10 @@ describe('the demo', () => {
     expect(await ProgrammeMember.count()).toBe(4);
   });
 
-  it('has a good night and a cloudy one, both closed, and one in progress that is open', async () => {
+  it('has two good nights and a cloudy one, all closed, and one in progress that is open', async () => {
     const nights = await Night.findAll({ order: ['date'] });
     expect(nights.map(({ date, state }) => `${date} ${state}`)).toEqual([
+      '2026-10-17 closed',
       '2026-11-03 closed',
       '2026-11-08 closed',
       '2026-12-01 open',
@@ -67,7 +68,7 @@ describe('the demo', () => {
       );
       return row?.cloud;
     };
-    expect(await Promise.all(nights.map(clouds))).toEqual([0, 8, 0]);
+    expect(await Promise.all(nights.map(clouds))).toEqual([0, 0, 8, 0]);
   });
 
   it('the night in progress holds frames up to now, and none later', async () => {
@@ -78,7 +79,7 @@ describe('the demo', () => {
     expect(now - last).toBeLessThan(60 * 60_000);
   });
 
-  it.each(['2026-11-03', '2026-11-08', '2026-12-01'])(
+  it.each(['2026-10-17', '2026-11-03', '2026-11-08', '2026-12-01'])(
     'frames of the night %s follow each other, point at the sky and carry their geometry',
     async (date) => {
       const frames = await framesOf(date);
@@ -124,7 +125,7 @@ describe('the demo', () => {
     const before = somebody?.passwordHash;
     await seedDemo(database(), { password, now: now + 86_400_000 });
     expect(await Frame.count()).toBe(frames);
-    expect(await Night.count()).toBe(3);
+    expect(await Night.count()).toBe(4);
     await somebody?.reload();
     expect(somebody?.passwordHash).toBe(before);
 

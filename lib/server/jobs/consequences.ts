@@ -17,6 +17,7 @@ const consequences: { readonly [K in JobKind]: Consequence<K> } = {
     onFailure: (tx, { mail }, reason) => failMail(tx, mail, reason),
     onRetry: (tx, { mail }) => requeueMail(tx, mail),
   },
+  'transform-targets': {},
   tidy: {},
 };
 

@@ -44,6 +44,20 @@ export const jobKinds = {
     lease_s: 120,
     longestWait_s: 1800,
   }),
+  'transform-targets': kind({
+    payload: z.object({ solution: PublicId, night: PublicId }),
+    result: z.object({
+      /** Nothing is stored when the solution was withdrawn or replaced meanwhile. */
+      outcome: z.enum(['stored', 'not-approved']),
+      programmes: z.number().int(),
+      measurements: z.number().int(),
+      stars: z.number().int(),
+    }),
+    lane: 'long',
+    maxTries: 3,
+    lease_s: 30,
+    longestWait_s: 300,
+  }),
   tidy: kind({
     payload: z.object({}),
     result: z.object({

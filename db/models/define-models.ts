@@ -35,6 +35,7 @@ import { SolutionComment } from './solution-comment';
 import { SolutionExclusion } from './solution-exclusion';
 import { SolutionNight } from './solution-night';
 import { SolutionObservation } from './solution-observation';
+import { SolutionSet } from './solution-set';
 import { StandardSource } from './standard-source';
 import { StandardStar } from './standard-star';
 import { Telescope } from './telescope';
@@ -84,6 +85,7 @@ export const models = [
   SolutionBand,
   SolutionCoefficient,
   SolutionObservation,
+  SolutionSet,
   SolutionExclusion,
   SolutionComment,
   Transformation,

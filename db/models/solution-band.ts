@@ -13,12 +13,17 @@ export class SolutionBand extends Model<
   declare nightId: number;
   declare band: string;
   declare colourIndex: string;
+  declare outcome: string;
   /** square, in the order of solution_coefficients.seq */
   declare covariance: object;
+  /** likewise; null where a variance is zero */
+  declare correlation: object;
   declare scatterObservation: number | null;
   declare scatterFrame: number | null;
   declare nUsed: number;
   declare nRejected: number;
+  declare nStars: number;
+  declare nFrames: number;
   declare dof: number | null;
   declare reducedChi2: number | null;
   declare conditionNumber: number | null;
@@ -28,6 +33,14 @@ export class SolutionBand extends Model<
   declare colourMax: number | null;
   declare utcFirst: Date | null;
   declare utcLast: Date | null;
+  /** mag */
+  declare leaveOneStarOut: number | null;
+  /** mag per hour, fitted beside */
+  declare driftValue: number | null;
+  declare driftError: number | null;
+  /** standard normal deviate of the runs test */
+  declare runs: number | null;
+  declare crossChecks: object;
   declare warnings: object;
 
   static associate(): void {
@@ -43,11 +56,15 @@ export class SolutionBand extends Model<
         nightId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         band: { type: DataTypes.CHAR(1), allowNull: false },
         colourIndex: { type: DataTypes.CHAR(2), allowNull: false },
+        outcome: { type: DataTypes.STRING(16), allowNull: false },
         covariance: { type: DataTypes.JSON, allowNull: false },
+        correlation: { type: DataTypes.JSON, allowNull: false },
         scatterObservation: { type: DataTypes.DOUBLE, allowNull: true },
         scatterFrame: { type: DataTypes.DOUBLE, allowNull: true },
         nUsed: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         nRejected: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
+        nStars: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
+        nFrames: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         dof: { type: DataTypes.DOUBLE, allowNull: true },
         reducedChi2: { type: DataTypes.DOUBLE, allowNull: true },
         conditionNumber: { type: DataTypes.DOUBLE, allowNull: true },
@@ -57,6 +74,11 @@ export class SolutionBand extends Model<
         colourMax: { type: DataTypes.DOUBLE, allowNull: true },
         utcFirst: { type: DataTypes.DATE(3), allowNull: true },
         utcLast: { type: DataTypes.DATE(3), allowNull: true },
+        leaveOneStarOut: { type: DataTypes.DOUBLE, allowNull: true },
+        driftValue: { type: DataTypes.DOUBLE, allowNull: true },
+        driftError: { type: DataTypes.DOUBLE, allowNull: true },
+        runs: { type: DataTypes.DOUBLE, allowNull: true },
+        crossChecks: { type: DataTypes.JSON, allowNull: false },
         warnings: { type: DataTypes.JSON, allowNull: false },
       },
       { sequelize, modelName: 'SolutionBand', tableName: 'solution_bands' },

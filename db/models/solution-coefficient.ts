@@ -14,6 +14,9 @@ export class SolutionCoefficient extends Model<
   /** null where the observations cannot determine it */
   declare value: number | null;
   declare error: number | null;
+  /** half width, by Student's t */
+  declare interval95: number | null;
+  declare varianceInflation: number | null;
   declare priorValue: number | null;
   declare priorError: number | null;
 
@@ -30,6 +33,8 @@ export class SolutionCoefficient extends Model<
         status: { type: DataTypes.STRING(8), allowNull: false },
         value: { type: DataTypes.DOUBLE, allowNull: true },
         error: { type: DataTypes.DOUBLE, allowNull: true },
+        interval95: { type: DataTypes.DOUBLE, allowNull: true },
+        varianceInflation: { type: DataTypes.DOUBLE, allowNull: true },
         priorValue: { type: DataTypes.DOUBLE, allowNull: true },
         priorError: { type: DataTypes.DOUBLE, allowNull: true },
       },

@@ -31,7 +31,7 @@ export class SolutionExclusion extends Model<
         setId: { type: DataTypes.INTEGER.UNSIGNED, primaryKey: true, allowNull: false },
         rowNo: { type: DataTypes.INTEGER.UNSIGNED, primaryKey: true, allowNull: false },
         isExcluded: { type: DataTypes.BOOLEAN, allowNull: false },
-        reason: { type: DataTypes.STRING(300), allowNull: false },
+        reason: { type: DataTypes.STRING(500), allowNull: false },
         personId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         createdAt: {
           type: DataTypes.DATE(3),

@@ -10,6 +10,8 @@ export class SolutionNight extends Model<
 > {
   declare solutionId: number;
   declare nightId: number;
+  /** mean time of the night's standards; null until solved */
+  declare utcZero: Date | null;
 
   static associate(): void {
     SolutionNight.belongsTo(Solution, { as: 'solution', foreignKey: 'solutionId' });
@@ -21,6 +23,7 @@ export class SolutionNight extends Model<
       {
         solutionId: { type: DataTypes.INTEGER.UNSIGNED, primaryKey: true, allowNull: false },
         nightId: { type: DataTypes.INTEGER.UNSIGNED, primaryKey: true, allowNull: false },
+        utcZero: { type: DataTypes.DATE(3), allowNull: true },
       },
       { sequelize, modelName: 'SolutionNight', tableName: 'solution_nights' },
     );

@@ -19,22 +19,29 @@ export class SolutionObservation extends Model<
   declare standardId: number;
   declare band: string;
   declare airmass: number;
-  declare colour: number;
+  declare colour: number | null;
+  /** published, in the band */
+  declare magnitude: number | null;
   declare hours: number;
+  declare instMag: number;
+  declare instErr: number;
   declare residual: number | null;
+  declare standardised: number | null;
   declare weight: number | null;
   declare leverage: number | null;
+  /** Cook's distance */
+  declare influence: number | null;
   declare isUsed: boolean;
   declare reason: CreationOptional<string>;
   /** null: the fit; otherwise the person */
-  declare rejectedById: number | null;
+  declare decidedById: number | null;
 
   static associate(): void {
     SolutionObservation.belongsTo(Solution, { as: 'solution', foreignKey: 'solutionId' });
     SolutionObservation.belongsTo(MeasurementSet, { as: 'set', foreignKey: 'setId' });
     SolutionObservation.belongsTo(Frame, { as: 'frame', foreignKey: 'frameId' });
     SolutionObservation.belongsTo(StandardStar, { as: 'standard', foreignKey: 'standardId' });
-    SolutionObservation.belongsTo(Person, { as: 'rejectedBy', foreignKey: 'rejectedById' });
+    SolutionObservation.belongsTo(Person, { as: 'decidedBy', foreignKey: 'decidedById' });
   }
 
   static define(sequelize: Sequelize): void {
@@ -48,14 +55,19 @@ export class SolutionObservation extends Model<
         standardId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
         band: { type: DataTypes.CHAR(1), allowNull: false },
         airmass: { type: DataTypes.DOUBLE, allowNull: false },
-        colour: { type: DataTypes.DOUBLE, allowNull: false },
+        colour: { type: DataTypes.DOUBLE, allowNull: true },
+        magnitude: { type: DataTypes.DOUBLE, allowNull: true },
         hours: { type: DataTypes.DOUBLE, allowNull: false },
+        instMag: { type: DataTypes.DOUBLE, allowNull: false },
+        instErr: { type: DataTypes.DOUBLE, allowNull: false },
         residual: { type: DataTypes.DOUBLE, allowNull: true },
+        standardised: { type: DataTypes.DOUBLE, allowNull: true },
         weight: { type: DataTypes.DOUBLE, allowNull: true },
         leverage: { type: DataTypes.DOUBLE, allowNull: true },
+        influence: { type: DataTypes.DOUBLE, allowNull: true },
         isUsed: { type: DataTypes.BOOLEAN, allowNull: false },
-        reason: { type: DataTypes.STRING(300), allowNull: false, defaultValue: '' },
-        rejectedById: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
+        reason: { type: DataTypes.STRING(500), allowNull: false, defaultValue: '' },
+        decidedById: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
       },
       { sequelize, modelName: 'SolutionObservation', tableName: 'solution_observations' },
     );

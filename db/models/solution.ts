@@ -23,6 +23,10 @@ export class Solution extends Model<InferAttributes<Solution>, InferCreationAttr
   declare findings: object | null;
   declare evidence: object | null;
   declare suggestedVerdict: string | null;
+  declare nObservations: CreationOptional<number>;
+  declare nUsed: CreationOptional<number>;
+  declare nStars: CreationOptional<number>;
+  declare nFrames: CreationOptional<number>;
   declare verdict: string | null;
   /** the solution this one was made from */
   declare followsId: number | null;
@@ -64,6 +68,10 @@ export class Solution extends Model<InferAttributes<Solution>, InferCreationAttr
         findings: { type: DataTypes.JSON, allowNull: true },
         evidence: { type: DataTypes.JSON, allowNull: true },
         suggestedVerdict: { type: DataTypes.STRING(24), allowNull: true },
+        nObservations: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 0 },
+        nUsed: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 0 },
+        nStars: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 0 },
+        nFrames: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 0 },
         verdict: { type: DataTypes.STRING(24), allowNull: true },
         followsId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
         supersededById: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },

@@ -1,7 +1,6 @@
-import { degPerRad, normaliseRightAscension, radPerDeg } from '@/lib/astro/angles';
+import { placeAfter } from '@/lib/astro/proper-motion';
 import { separation } from '@/lib/astro/separation';
 import { skyGrid, type SkyGrid } from '@/lib/astro/sky-grid';
-import type { EquatorialPlace } from '@/lib/astro/vector';
 
 /**
  * Which published standard a measured star is: by name first, then by position on the sphere.
@@ -57,21 +56,23 @@ export type StandardMatch =
 const disagreement = 10;
 /** How far the reason for no match looks for a neighbour. [arcsec]; our own rule */
 const neighbourhood = 30;
-const masPerDeg = 3_600_000;
 
 /** Makes a function that matches one star after the other.
  * @param standards - published stars, shape (n) each
  * @param options - tolerance [arcsec], epoch of the measurements [yr since 2000.0]
  * @returns match of a star
  * @throws {RangeError} tolerance not in 0 to 3600 arcsec
- * @accuracy proper motion as a straight line in the tangent plane: below 0.001 arcsec over 50 years at 10 arcsec/yr
+ * @accuracy of the places at the epoch: as placeAfter
  * @source our own rules */
 export function standardMatcher(
   standards: StandardTable,
   options: MatchOptions,
 ): (star: StarToMatch) => StandardMatch {
   const byKey = new Map(standards.keys.map((key, index) => [key, index] as const));
-  const places = standards.names.map((_, index) => placeAtEpoch(standards, index, options.epoch_years));
+  const { ra, dec, pmRa, pmDec } = standards;
+  const places = standards.names.map((_, i) =>
+    placeAfter({ ra: ra[i]!, dec: dec[i]! }, { pmRa: pmRa[i]!, pmDec: pmDec[i]! }, options.epoch_years),
+  );
   const near = skyGrid(Math.max(options.tolerance, neighbourhood));
   places.forEach(({ ra, dec }) => near.add(ra, dec));
 
@@ -154,30 +155,3 @@ const shown = (arcsec: number): string =>
     : arcsec < 3600
       ? `${(arcsec / 60).toFixed(1)}′`
       : `${(arcsec / 3600).toFixed(1)}°`;
-
-/** Where a standard stands at the epoch of the measurements.
- * @param standards - published stars
- * @param index - row of the table [1]
- * @param years - Julian years since 2000.0 [yr]
- * @returns J2000 coordinates [deg]; the published ones where no proper motion is
- * @throws nothing
- * @accuracy as standardMatcher
- * @source definition of proper motion */
-export function placeAtEpoch(
-  standards: Pick<StandardTable, 'ra' | 'dec' | 'pmRa' | 'pmDec'>,
-  index: number,
-  years: number,
-): EquatorialPlace {
-  const [ra, dec] = [standards.ra[index]!, standards.dec[index]!];
-  const [pmRa, pmDec] = [standards.pmRa[index]!, standards.pmDec[index]!];
-  if (Number.isNaN(pmRa) || Number.isNaN(pmDec)) return { ra, dec };
-  const xi_rad = ((pmRa * years) / masPerDeg) * radPerDeg;
-  const eta_rad = ((pmDec * years) / masPerDeg) * radPerDeg;
-  // In the tangent plane at the published place, so that a star near a pole moves rightly too.
-  const [sin, cos] = [Math.sin(dec * radPerDeg), Math.cos(dec * radPerDeg)];
-  const below = cos - eta_rad * sin;
-  return {
-    ra: normaliseRightAscension(ra + Math.atan2(xi_rad, below) * degPerRad),
-    dec: Math.atan2(sin + eta_rad * cos, Math.hypot(xi_rad, below)) * degPerRad,
-  };
-}

@@ -1,9 +1,6 @@
+import { yearsSinceJ2000 } from '@/lib/astro/proper-motion';
 import type { CheckInputs } from '@/lib/server/reads/check-inputs';
 import type { CheckOrder } from '../threads/check-measurements/messages';
-
-/** J2000.0 [ms since 1970-01-01T00:00:00Z] */
-const j2000_ms = Date.UTC(2000, 0, 1, 12);
-const julianYear_ms = 365.25 * 86_400_000;
 
 /** What the thread is given: plain columns, which cross to it without an object a row. */
 export function checkOrder(
@@ -46,7 +43,7 @@ export function checkOrder(
       startsAt,
       endsAt,
       isOpen: night.state === 'open',
-      epoch_years: ((startsAt + endsAt) / 2 - j2000_ms) / julianYear_ms,
+      epoch_years: yearsSinceJ2000((startsAt + endsAt) / 2),
       bands: instrument.filters.map(({ band }) => band),
       telescope: instrument.name,
     },

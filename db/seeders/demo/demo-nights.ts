@@ -46,6 +46,9 @@ export async function readDemoSky(
         name: line.name,
         ra: number(line, 'ra'),
         dec: number(line, 'dec'),
+        // Invented where they stand tonight.
+        pmRa: 0,
+        pmDec: 0,
         V: number(line, 'V'),
         BV: number(line, 'BV'),
         UB: number(line, 'UB'),

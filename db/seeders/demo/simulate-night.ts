@@ -1,5 +1,6 @@
 import { airmassYoung1994 } from '@/lib/astro/airmass';
 import { horizontalPlace } from '@/lib/astro/horizontal-place';
+import { placeAfter, yearsSinceJ2000 } from '@/lib/astro/proper-motion';
 import { skyMoment } from '@/lib/astro/sky-moment';
 import { bandPlaces, simulate, type Disturbances, type Simulation } from '@/lib/photometry/simulate';
 import type { StarColours } from '@/lib/photometry/bands';
@@ -13,8 +14,12 @@ import { cloudEpisodes } from './weather';
 /** A star that can be on a frame: published, with the error of its magnitudes, or invented, without. */
 export interface DemoStar extends Readonly<Record<keyof StarColours, number>> {
   readonly name: string;
+  /** J2000, at the epoch 2000.0 [deg]. */
   readonly ra: number;
   readonly dec: number;
+  /** Times cos dec [mas/yr]; NaN where it is not known. */
+  readonly pmRa: number;
+  readonly pmDec: number;
   readonly error: number;
 }
 
@@ -93,9 +98,13 @@ function pairUp(
     return stars.push(star) - 1;
   };
   const halfWidth = halfWidthOf(input.camera);
+  // A frame shows a star where it stands by now.
+  const years = yearsSinceJ2000((input.night.bounds.start + input.night.bounds.end) / 2);
+  const tonight = (star: DemoStar): DemoStar => ({ ...star, ...placeAfter(star, star, years) });
   const pairs = frames.flatMap((frame, frameIndex) =>
     input
       .starsOf(frame)
+      .map(tonight)
       .filter((star) => isOnCamera(aimOf(frame), star, halfWidth))
       .map((star) => ({ frame, frameIndex, star, starIndex: placeOf(star) })),
   );

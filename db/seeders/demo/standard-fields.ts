@@ -7,6 +7,9 @@ export interface PublishedStar {
   readonly field: string;
   readonly ra: number;
   readonly dec: number;
+  /** Times cos dec [mas/yr]. */
+  readonly pmRa: number;
+  readonly pmDec: number;
   readonly V: number;
   readonly BV: number;
   readonly UB: number;
@@ -23,6 +26,7 @@ export interface Pointing {
   readonly nStars: number;
 }
 
+type MotionColumn = 'star' | 'pm_ra_mas_yr' | 'pm_dec_mas_yr';
 type Column = 'star' | 'field' | 'ra_deg' | 'dec_deg' | 'V' | 'BV' | 'UB' | 'VR' | 'RI' | 'e_V';
 /** What the author states as typical; see fixtures/standards/source.json. */
 const typicalError = 0.003;
@@ -30,12 +34,20 @@ const typicalError = 0.003;
 /** The published stars; V−I is the sum of V−R and R−I, as everywhere in the program. */
 export async function readPublishedStars(): Promise<readonly PublishedStar[]> {
   const lines = await readTable<Column>('standards/landolt-2009.csv');
-  const value = (text: string): number => (text === '' ? Number.NaN : Number(text));
+  const motions = new Map(
+    (await readTable<MotionColumn>('standards/landolt-2009-proper-motions.csv')).map((line) => [
+      line.star,
+      line,
+    ]),
+  );
+  const value = (text = ''): number => (text === '' ? Number.NaN : Number(text));
   return lines.map((line) => ({
     name: line.star,
     field: line.field,
     ra: Number(line.ra_deg),
     dec: Number(line.dec_deg),
+    pmRa: value(motions.get(line.star)?.pm_ra_mas_yr),
+    pmDec: value(motions.get(line.star)?.pm_dec_mas_yr),
     V: Number(line.V),
     BV: Number(line.BV),
     UB: value(line.UB),

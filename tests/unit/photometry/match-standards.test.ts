@@ -1,11 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { starKey } from '@/lib/contracts/star-name';
-import {
-  placeAtEpoch,
-  standardMatcher,
-  type StandardTable,
-  type StarToMatch,
-} from '@/lib/photometry/match-standards';
+import { standardMatcher, type StandardTable, type StarToMatch } from '@/lib/photometry/match-standards';
 
 interface Star {
   readonly name: string;
@@ -122,18 +117,5 @@ describe('standardMatcher', () => {
     };
     expect(then(at(now.ra, now.dec))).toMatchObject({ kind: 'matched', by: 'position' });
     expect(then(at(100, 60)).kind).toBe('unmatched');
-  });
-});
-
-describe('placeAtEpoch', () => {
-  it('moves a star near the pole along its great circle, not along its right ascension', () => {
-    const polar = table({ name: 'P', ra: 0, dec: 89.9999, pm: [0, 36_000] });
-    const moved = placeAtEpoch(polar, 0, 20);
-    expect(Math.abs(moved.ra - 180)).toBeLessThan(1e-6);
-    expect(Math.abs(moved.dec - (90 - 0.2 + 0.0001))).toBeLessThan(1e-6);
-  });
-
-  it('leaves a star without a published proper motion where it is', () => {
-    expect(placeAtEpoch(table({ name: 'Q', ra: 10, dec: 20 }), 0, 50)).toEqual({ ra: 10, dec: 20 });
   });
 });

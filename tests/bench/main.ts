@@ -7,10 +7,11 @@ import { databaseEnvironment } from '@/tests/support/environment';
 import { migrateDatabase, seedReferenceData } from '@/tests/support/scripts';
 import type { Bench, Figure } from './bench';
 import { figureTable, isMet } from './figure-table';
+import { latency } from './latency.bench';
 import { upload } from './upload.bench';
 
 /** In this order; every bench cleans up after itself. */
-const benches: readonly Bench[] = [upload];
+const benches: readonly Bench[] = [upload, latency];
 
 /** Runs the benches whose names hold one of the words given, all without words. */
 async function main(words: readonly string[]): Promise<number> {

@@ -4,27 +4,25 @@ import path from 'node:path';
 import { UploadQuery } from '@/lib/contracts/api/measurement-set';
 import { receiveMeasurements } from '@/lib/server/acts/receive-measurements';
 import { storeMeasurements } from '@/lib/server/acts/store-measurements';
-import { execute, inTransaction } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { checkMeasurements } from '@/workers/handlers/check-measurements';
 import type { Bench, BenchWorld, Figure } from './bench';
 import { loadPlainly } from './plain-load';
 import { peakMemory } from './peak-memory';
-import { benchNight, type BenchNight } from './bench-night';
-import { writeTable } from './write-table';
+import { benchNight, forgetSet, type BenchNight } from './bench-night';
+import { million, writeTable } from './write-table';
 
-/** A night of a small camera with names, and one of a wide-field camera with positions only. */
-const named = { frames: 100, stars: 10_000, hasNames: true };
+/** A night of a wide-field camera, with positions only. */
 const wideField = { frames: 20, stars: 100_000, hasNames: false };
 
 /** An upload from its first byte to the matched set, as a worker's process does it, against LOAD DATA of the same file. */
 export const upload: Bench = {
   name: 'upload',
   run: async (world) => {
-    const night = await benchNight(named.frames);
+    const night = await benchNight();
     await warmUp(world, night);
     const file = path.join(world.folder, 'million.csv');
-    await writeTable(file, named);
+    await writeTable(file, million);
     const before_s = await loadPlainly(file);
     const { seconds, growth_MiB } = await uploadAndCheck(night, file);
     const after_s = await loadPlainly(file);
@@ -89,22 +87,6 @@ async function uploadAndCheck(
   const seconds = (performance.now() - begun_ms) / 1000;
   const growth_MiB = memory.stop();
   if (result.state !== 'matched') throw new Error(`The table was refused: ${result.faults} faults.`);
-  await forget(set);
+  await forgetSet(set);
   return { seconds, growth_MiB };
-}
-
-/** The next table is to find the database as this one did. */
-async function forget(set: string): Promise<void> {
-  await inTransaction(async (tx) => {
-    const ofSet = 'WHERE set_id = (SELECT id FROM measurement_sets WHERE public_id = :set)';
-    for (const table of [
-      'measurements',
-      'measurement_stars',
-      'measurement_flags',
-      'measurement_set_frames',
-    ]) {
-      await execute(`DELETE FROM ${table} ${ofSet}`, { set }, tx);
-    }
-    await execute('DELETE FROM measurement_sets WHERE public_id = :set', { set }, tx);
-  });
 }

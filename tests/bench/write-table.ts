@@ -8,6 +8,9 @@ export interface TableShape {
   readonly hasNames: boolean;
 }
 
+/** A million rows: a night of a small camera, with names. */
+export const million: TableShape = { frames: 100, stars: 10_000, hasNames: true };
+
 /** A generator of numbers in 0 to 1 that gives the same ones every time (a 32-bit mixing step of our own choice of constants). */
 function seeded(seed: number): () => number {
   let state = seed;

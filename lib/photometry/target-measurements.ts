@@ -21,6 +21,8 @@ export interface TargetMeasurements {
   readonly frameBjd: Float64Array;
   /** Offset of the frame known from elsewhere (standards on it, secondary standards) [mag]; NaN where unknown. */
   readonly frameOffset: Float64Array;
+  /** Standard errors of these, in place of the scatter of frames; where absent or NaN the scatter of frames stays [mag]. */
+  readonly frameOffsetErr?: Float64Array;
 }
 
 /** Calibration of one band as a solution found it. */
@@ -41,9 +43,9 @@ export interface BandCalibration {
 }
 
 export interface TransformOptions {
-  /** Colour for stars measured in one band only; null leaves them without magnitude. [mag] */
+  /** B−V for stars that lack B or V; null leaves them without magnitude. [mag] */
   readonly assumedColour: { readonly value: number; readonly error: number } | null;
-  /** Signal-to-noise ratio of a magnitude below which it is flagged [1]. */
+  /** Signal-to-noise ratio of all that is used in a band, below which the star is flagged [1]. */
   readonly lowSignal: number;
   /** Frame offset above which a magnitude is flagged [mag]. */
   readonly largeOffset: number;
@@ -68,9 +70,9 @@ export interface CalibratedStars {
   readonly columns: Readonly<Record<CalibratedQuantity, CalibratedColumn>>;
   /** Measurements used, shape (n stars, 5 bands) row-major. */
   readonly counts: Uint16Array;
-  /** Mean mid-exposure of the measurements used, BJD_TDB [d]. */
+  /** Mean mid-exposure of the measurements used, with their weights in the solution, BJD_TDB [d]. */
   readonly bjd: Float64Array;
-  /** Mean airmass of the measurements used [1]. */
+  /** Mean airmass of the measurements used, likewise [1]. */
   readonly airmass: Float64Array;
   /** Bits of calibratedFlags. */
   readonly flags: Uint16Array;

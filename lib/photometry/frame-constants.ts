@@ -15,8 +15,10 @@ export interface BandTerms {
 
 /** Shape (n frames) each. */
 export interface FrameConstants {
-  /** Z + k1·X + tau·t + kappa·t·X + offset [mag]; NaN where the band has no calibration or something is unknown. */
+  /** Z + tau·t + offset [mag]; NaN where the band has no calibration or something is unknown. */
   readonly constant: Float64Array;
+  /** k1 + kappa·t [mag per airmass] */
+  readonly perAirmass: Float64Array;
   /** What is added to the variance of each measurement [mag²]. */
   readonly variance: Float64Array;
   /** Bits of calibratedFlags that every measurement on the frame earns. */
@@ -79,10 +81,11 @@ export function frameConstants(
   terms: readonly (BandTerms | undefined)[],
   options: Pick<TransformOptions, 'largeOffset'>,
 ): FrameConstants {
-  const { frameBand, frameAirmass, frameHours, frameOffset, frameOffsetErr } = measurements;
+  const { frameBand, frameHours, frameOffset, frameOffsetErr } = measurements;
   const n = frameBand.length;
   const constants = {
     constant: new Float64Array(n).fill(Number.NaN),
+    perAirmass: new Float64Array(n),
     variance: new Float64Array(n),
     flags: new Uint16Array(n),
   };
@@ -93,17 +96,16 @@ export function frameConstants(
     const term = terms[band];
     if (term === undefined) continue;
     const { coefficients: c, calibration } = term;
-    const [X, t] = [frameAirmass[f]!, frameHours[f]!];
+    const t = frameHours[f]!;
     const isTied = !Number.isNaN(frameOffset[f]!);
     const offset = isTied ? frameOffset[f]! : 0;
-    constants.constant[f] = c.zeroPoint + c.extinction * X + c.drift * t + c.extinctionDrift * t * X + offset;
+    constants.constant[f] = c.zeroPoint + c.drift * t + offset;
+    constants.perAirmass[f] = c.extinction + c.extinctionDrift * t;
     // A known offset holds what the frame shares; what stays is the error of that offset.
     const offsetErr = isTied ? (frameOffsetErr?.[f] ?? Number.NaN) : Number.NaN;
     const frameScatter = Number.isNaN(offsetErr) ? calibration.scatterFrame : offsetErr;
     constants.variance[f] = calibration.scatterObservation ** 2 + frameScatter ** 2;
     let flags = 0;
-    if (X < calibration.airmass.min || X > calibration.airmass.max)
-      flags |= 1 << calibratedFlags.airmass_range.bit;
     if (t < calibration.hours.min || t > calibration.hours.max) flags |= 1 << calibratedFlags.time_range.bit;
     if (Math.abs(offset) > options.largeOffset) flags |= 1 << calibratedFlags.frame_offset.bit;
     constants.flags[f] = flags;

@@ -11,6 +11,8 @@ export interface TargetMeasurements {
   readonly instErr: Float64Array;
   /** 1 where a pixel was at or near saturation. */
   readonly saturated: Uint8Array;
+  /** Airmass of each measurement, for fields so wide that it differs from that of the frame; where absent the frame's. */
+  readonly airmass?: Float64Array;
   readonly nStars: number;
   /** Place of the band in bandOrder. */
   readonly frameBand: Uint8Array;

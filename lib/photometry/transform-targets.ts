@@ -146,17 +146,21 @@ function sortByStar({ star, nStars }: TargetMeasurements): Pick<Night, 'order' |
   return { order, start };
 }
 
+const airmassOf = ({ airmass, frame, frameAirmass }: TargetMeasurements, m: number): number =>
+  airmass?.[m] ?? frameAirmass[frame[m]!]!;
+
 /** Variance of a measurement; NaN where it cannot be used. */
 function usableVariance({ measurements, frames }: Night, m: number): number {
   const f = measurements.frame[m]!;
   const err = measurements.instErr[m]!;
-  const isUsable = err > 0 && Number.isFinite(measurements.instMag[m]! - frames.constant[f]!);
+  const known = measurements.instMag[m]! - frames.constant[f]! - airmassOf(measurements, m);
+  const isUsable = err > 0 && Number.isFinite(known);
   return isUsable ? err * err + frames.variance[f]! : Number.NaN;
 }
 
 /** Adds up one star's measurements. Saturated ones are left out of a band that has others. */
 function gather(night: Night, s: number, tally: Tally): void {
-  const { measurements, frames, order, start } = night;
+  const { measurements, frames, terms, order, start } = night;
   const { moments } = tally.equations;
   const { counts, unsaturated, signal, wBjd, flags } = tally;
   for (const sums of [moments, counts, unsaturated, signal, wBjd, flags]) sums.fill(0);
@@ -173,8 +177,9 @@ function gather(night: Night, s: number, tally: Tally): void {
     const isSaturated = measurements.saturated[m] !== 0;
     if (!(variance > 0) || (isSaturated && unsaturated[b]! > 0)) continue;
     const w = 1 / variance;
-    const [X, t] = [measurements.frameAirmass[f]!, measurements.frameHours[f]!];
-    const wy = w * (measurements.instMag[m]! - frames.constant[f]!);
+    const X = airmassOf(measurements, m);
+    const t = measurements.frameHours[f]!;
+    const wy = w * (measurements.instMag[m]! - frames.constant[f]! - frames.perAirmass[f]! * X);
     const at = b * nMoments;
     moments[at + moment.w]! += w;
     moments[at + moment.wX]! += w * X;
@@ -187,7 +192,11 @@ function gather(night: Night, s: number, tally: Tally): void {
     counts[b]! += 1;
     signal[b]! += 1 / measurements.instErr[m]! ** 2;
     wBjd[b]! += w * (measurements.frameBjd[f]! - night.firstBjd);
-    flags[b]! |= frames.flags[f]! | (isSaturated ? 1 << calibratedFlags.saturated.bit : 0);
+    const { min, max } = terms[b]!.calibration.airmass;
+    flags[b]! |=
+      frames.flags[f]! |
+      (isSaturated ? 1 << calibratedFlags.saturated.bit : 0) |
+      (X < min || X > max ? 1 << calibratedFlags.airmass_range.bit : 0);
   }
 }
 
@@ -269,11 +278,11 @@ function writeSummary(stars: CalibratedStars, night: Night, s: number, tally: Ta
 }
 
 function requireShapes(measurements: TargetMeasurements): void {
-  const { star, frame, instMag, instErr, saturated, nStars } = measurements;
+  const { star, frame, instMag, instErr, saturated, airmass, nStars } = measurements;
   const { frameBand, frameAirmass, frameHours, frameBjd, frameOffset, frameOffsetErr } = measurements;
   const isEqual = (columns: readonly ArrayLike<number>[]): boolean =>
     columns.every(({ length }) => length === columns[0]!.length);
-  if (!isEqual([star, frame, instMag, instErr, saturated]))
+  if (!isEqual([star, frame, instMag, instErr, saturated, airmass ?? star]))
     throw new RangeError('The columns of the measurements differ in length.');
   if (!isEqual([frameBand, frameAirmass, frameHours, frameBjd, frameOffset, frameOffsetErr ?? frameOffset]))
     throw new RangeError('The columns of the frames differ in length.');

@@ -194,6 +194,26 @@ describe('transformTargets', () => {
     expect([...found.counts]).toEqual([0, 1, 1, 0, 0]);
   });
 
+  it('a measurement with an airmass of its own is corrected by that one, and its range is looked at', () => {
+    const night = noiselessTargets(
+      [{ V: 12, BV: 0.4 }],
+      [
+        { band: 'V', airmass: 1.5 },
+        { band: 'B', airmass: 1.6 },
+      ],
+      closedForm,
+    );
+    const frameAirmass = Float64Array.of(2.9, 2.9);
+    const own = transformTargets(
+      { ...night, frameAirmass, airmass: Float64Array.of(1.5, 1.6) },
+      closedForm,
+      usualOptions,
+    );
+    expectWithin(calibratedValue(own, 'V'), 12, exact);
+    expectWithin(calibratedValue(own, 'BV'), 0.4, exact);
+    expect(own.flags[0]).toBe(0);
+  });
+
   it('date and airmass are the means of what was used, by weight', () => {
     const frames: readonly FrameOf[] = [
       { band: 'V', airmass: 1, bjd: 2_461_000.25 },

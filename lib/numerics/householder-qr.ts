@@ -30,7 +30,7 @@ export interface QrFactor {
  * 1e-16; columns that differ in their tenth decimal leave 1e-10. Common practice, no source. [1] */
 export const rankTolerance = 1e-13;
 
-/** A below-diagonal coefficient of a dependence smaller than this is rounding. [1] */
+/** Share of a column in a dependence below which it is rounding. [1] */
 const participationTolerance = 1e-8;
 
 const length = (a: Float64Array, from: number, to: number): number => {
@@ -202,24 +202,47 @@ export function inverseR(factor: QrFactor): Float64Array {
   return inverse;
 }
 
+/** Combinations of the design's columns that are zero in every row.
+ * @param factor - of the design
+ * @returns one vector a column beyond the rank, with −1 for that column, shape (columns) [any]; none at full rank
+ * @accuracy condition × rounding
+ * @source Golub and Van Loan 2013, Matrix Computations, 4th edition, section 5.5.7 */
+export function nullCombinations(factor: QrFactor): readonly Float64Array[] {
+  const { rows, columns, rank, factors, order, scale } = factor;
+  const combinations: Float64Array[] = [];
+  for (let j = rank; j < columns; j += 1) {
+    const combination = solveR(factor, factors.subarray(j * rows, j * rows + rank));
+    const own = scale[order[j]!]!;
+    combination.forEach((value, k) => (combination[k] = value / own));
+    combination[order[j]!] = -1;
+    combinations.push(combination);
+  }
+  return combinations;
+}
+
+/** The columns that take part in a combination.
+ * @param combination - shape (columns) [any]
+ * @param lengths - a length of each column, shape (columns) [any]
+ * @returns column numbers, ascending
+ * @accuracy a column takes part when its share, all columns at equal length, is above 1e-8 of the largest
+ * @source common practice, no source */
+export function participants(combination: Float64Array, lengths: Float64Array): readonly number[] {
+  const shares = combination.map((value, j) => Math.abs(value * lengths[j]!));
+  const largest = Math.max(...shares);
+  // A column of length zero stands alone.
+  return [...shares.keys()].filter((j) =>
+    largest > 0 ? shares[j]! > participationTolerance * largest : combination[j] !== 0,
+  );
+}
+
 /** The sets of columns that the data cannot tell apart: in each set some combination of its columns is zero in every row.
  * @param factor - of the design
  * @returns sets of column numbers, each ascending; none when the rank is full
- * @accuracy a column takes part when its share, all columns at equal length, is above 1e-8
+ * @accuracy as `participants`
  * @source Golub and Van Loan 2013, Matrix Computations, 4th edition, section 5.5.7 */
 export function inseparableColumns(factor: QrFactor): readonly (readonly number[])[] {
-  const { rows, columns, rank, factors, order, scale } = factor;
-  const sets: number[][] = [];
-  for (let j = rank; j < columns; j += 1) {
-    const shares = solveR(factor, factors.subarray(j * rows, j * rows + rank));
-    const set = [order[j]!];
-    for (let k = 0; k < rank; k += 1) {
-      const column = order[k]!;
-      if (Math.abs(shares[column]! / scale[column]!) > participationTolerance) set.push(column);
-    }
-    sets.push(set.sort((a, b) => a - b));
-  }
-  return sets;
+  const lengths = factor.scale.map((scale) => 1 / scale);
+  return nullCombinations(factor).map((combination) => participants(combination, lengths));
 }
 
 /** Largest over smallest singular value of the design with all columns at length 1.

@@ -12,7 +12,7 @@
 import { fitWhitened, type LinearPart } from './generalised-least-squares';
 import { applyQTransposed, factorQr, inverseR } from './householder-qr';
 import { type Components, factorNoise, type NoiseLayout, solveNoise } from './mixed-noise';
-import { applyProjection, projectNoise, spreadBlockSums } from './noise-traces';
+import { applyProjection, type Projection, projectNoise, spreadBlockSums } from './noise-traces';
 
 /** A component is estimated, or held at a standard deviation that the caller knows. */
 export type ScatterRule = { readonly kind: 'estimate' } | { readonly kind: 'hold'; readonly sigma: number };
@@ -89,25 +89,32 @@ function derivativesAt({ layout, part }: Problem, theta: Pair): Derivatives {
   const noise = factorNoise(layout, asComponents(theta));
   const fit = fitWhitened(noise, part);
   const projection = projectNoise(noise, part.design, inverseR(fit.qr), fit.qr.rank);
-  const v = solveNoise(noise, residuals(part, fit.coefficients));
-  const spread = spreadBlockSums(noise, v);
+  return derivativesOf(projection, projection, solveNoise(noise, residuals(part, fit.coefficients)));
+}
+
+interface Traces {
+  readonly diagonal: Float64Array;
+  readonly blockSums: Float64Array;
+}
+
+function derivativesOf(
+  projection: Projection,
+  { diagonal, blockSums }: Traces,
+  v: Float64Array,
+): Derivatives {
+  const spread = spreadBlockSums(projection.noise, v);
   const throughOwn = applyProjection(projection, v);
   const throughBlocks = applyProjection(projection, spread);
   const dot = (a: Float64Array, b: Float64Array): number => a.reduce((sum, x, i) => sum + x * b[i]!, 0);
   const total = (a: Float64Array): number => a.reduce((sum, x) => sum + x, 0);
   return {
-    gradient: [total(projection.diagonal) - dot(v, v), total(projection.blockSums) - dot(v, spread)],
+    gradient: [total(diagonal) - dot(v, v), total(blockSums) - dot(v, spread)],
     information: [dot(v, throughOwn), dot(v, throughBlocks), dot(spread, throughBlocks)],
   };
 }
 
-/** y − X β.
- * @param part - design and response
- * @param coefficients - β, shape (columns) [any]
- * @returns residuals, shape (n) [unit]
- * @accuracy rounding
- * @source definition */
-export function residuals(part: LinearPart, coefficients: Float64Array): Float64Array {
+/** y − X β. */
+function residuals(part: LinearPart, coefficients: Float64Array): Float64Array {
   const rest = Float64Array.from(part.response);
   const rows = rest.length;
   for (let j = 0; j < part.columns; j += 1) {
@@ -284,4 +291,40 @@ function search(problem: Problem, scale: number, hasFreedom: boolean): Descent {
   if (free[0] || free[1]) return descend(problem, best, lowest);
   const reason = hasFreedom ? 'fixed' : 'no-freedom';
   return { theta: best, criterion: lowest, termination: { reason, iterations: 0 } };
+}
+
+interface JointTraces extends Traces {
+  readonly alone: Projection;
+}
+
+/** One Newton step of the components in a likelihood that knows more than the group, kept within the bounds. Steps are
+ * held to half of a component, as there is no criterion to check them by.
+ * @param estimate - where to start
+ * @param sense - the joint projection over the group's rows, and the group's own
+ * @param v - V⁻¹(y − Xβ) over the group's rows, shape (n) [1 per unit]
+ * @returns the moved components; components that are held or not separable, or at zero and better so, stay
+ * @accuracy leaves a gradient of second order in what it found
+ * @source Gilmour, Thompson and Cullis 1995, Biometrics 51, 1440 */
+export function refineComponents(estimate: RemlEstimate, sense: JointTraces, v: Float64Array): RemlEstimate {
+  const slope = derivativesOf(sense.alone, sense, v);
+  const theta: Pair = [estimate.components.observation, estimate.components.block];
+  const scatters = [estimate.observation, estimate.block] as const;
+  const moves = [0, 1].map((k) => scatters[k]!.state === 'estimated') as unknown as readonly [
+    boolean,
+    boolean,
+  ];
+  const step = newtonStep(slope, moves);
+  const next = theta.map((value, k) => value + Math.max(-value / 2, Math.min(value / 2, step[k]!)));
+  const moved = (k: 0 | 1): Scatter => {
+    const sigma = Math.sqrt(next[k]!);
+    const { errSigma, state } = scatters[k];
+    // The variance keeps its standard error, 2 σ err_σ.
+    return { sigma, errSigma: errSigma === null ? null : (errSigma * scatters[k].sigma) / sigma, state };
+  };
+  return {
+    ...estimate,
+    components: { observation: next[0]!, block: next[1]! },
+    observation: moves[0] ? moved(0) : estimate.observation,
+    block: moves[1] ? moved(1) : estimate.block,
+  };
 }

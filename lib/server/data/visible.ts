@@ -39,3 +39,16 @@ export function visibleFrames(scope: Scope): Condition {
     values: valuesOf(scope),
   };
 }
+
+/**
+ * Calibrated magnitudes in the scope: the programmes' own, and for the night's observers all of it. Those of targets
+ * that belong to no programme are for staff and observers. The alias of their transformation is `t`.
+ */
+export function visibleResults(scope: Scope): Condition {
+  if (scope.all) return everything;
+  return {
+    sql: `(t.programme_id IN (:scopeProgrammes)
+        OR EXISTS (SELECT 1 FROM night_observers so WHERE so.night_id = t.night_id AND so.person_id = :scopeObserver))`,
+    values: valuesOf(scope),
+  };
+}

@@ -1,0 +1,109 @@
+'use client';
+
+import { useRouter } from 'next/navigation';
+import { useCallback, useEffect, useState } from 'react';
+import { Checkbox } from '@/app/_components/ui/checkbox';
+import { EmptyState } from '@/app/_components/ui/empty-state';
+import { formatCount } from '@/app/_components/ui/format-figure';
+import { LinkButton } from '@/app/_components/ui/link-button';
+import { Panel } from '@/app/_components/ui/panel';
+import type { CalibratedPage, CalibratedPageQuery, CalibratedResult } from '@/lib/contracts/calibrated-page';
+import { ColourMagnitude } from './colour-magnitude';
+import { ResultOrigin } from './result-origin';
+import { resultsAddress } from './results-address';
+import { ResultsFilter } from './results-filter';
+import { ResultsPages } from './results-pages';
+import { quantitiesOf, sortWords } from './star-columns';
+import { rowId, StarTable } from './star-table';
+
+interface ResultsViewProps {
+  readonly page: CalibratedPage;
+  readonly result: CalibratedResult;
+  readonly query: CalibratedPageQuery;
+}
+
+/** Stars and diagram of one result, linked: what is chosen in one is marked in the other. */
+export function ResultsView({ page, result, query }: ResultsViewProps) {
+  const router = useRouter();
+  const [selected, setSelected] = useState<number | null>(query.at ?? null);
+  const [showsParts, setShowsParts] = useState(false);
+  const { stars } = result;
+  const find = useCallback(
+    (no: number) => {
+      setSelected(no);
+      if (stars.some((star) => star.no === no)) showRow(no);
+      // Its row is on another page.
+      else router.push(resultsAddress(page.night, query, { at: no, page: undefined }), { scroll: false });
+    },
+    [stars, router, page.night, query],
+  );
+  useEffect(() => {
+    if (query.at !== undefined) showRow(query.at);
+  }, [query.at]);
+  const order =
+    query.sort === undefined
+      ? 'in the order of the table'
+      : `by ${sortWords[query.sort]}${query.descending === true ? ', descending' : ''}`;
+  return (
+    <div className="grid grid-cols-1 items-start gap-5 xl:grid-cols-[minmax(0,1fr)_minmax(380px,30%)]">
+      <Panel
+        title="Calibrated magnitudes"
+        note={`${formatCount(result.nShown)} of ${formatCount(result.nStars)} stars, ${order}`}
+        actions={
+          <Checkbox
+            label="Parts of the errors"
+            checked={showsParts}
+            onChange={(event) => setShowsParts(event.target.checked)}
+          />
+        }
+        flush
+      >
+        <ResultsFilter page={page} query={query} />
+        {stars.length === 0 ? (
+          <NoStar page={page} />
+        ) : (
+          <StarTable
+            night={page.night}
+            query={query}
+            stars={stars}
+            quantities={quantitiesOf(result.has)}
+            selected={selected}
+            onSelect={setSelected}
+            showsParts={showsParts}
+          />
+        )}
+        {stars.length === 0 ? null : <ResultsPages night={page.night} query={query} result={result} />}
+      </Panel>
+      <div className="grid content-start gap-5">
+        <Panel title="Colour–magnitude diagram" note="the stars of the list that have V and B−V">
+          {result.diagram.length === 0 ? (
+            <p className="text-ink-2">No star of the list has both V and B−V.</p>
+          ) : (
+            <ColourMagnitude
+              stars={result.diagram}
+              nStars={result.nDiagram}
+              selected={selected}
+              onSelect={find}
+            />
+          )}
+        </Panel>
+        <ResultOrigin page={page} result={result} />
+      </div>
+    </div>
+  );
+}
+
+function showRow(no: number): void {
+  const row = document.getElementById(rowId(no));
+  row?.scrollIntoView({ block: 'nearest' });
+  row?.focus({ preventScroll: true });
+}
+
+function NoStar({ page }: { readonly page: CalibratedPage }) {
+  const all = resultsAddress(page.night, page.programme === null ? {} : { programme: page.programme });
+  return (
+    <EmptyState title="No star is like that" action={<LinkButton href={all}>All stars</LinkButton>}>
+      Widen the ranges, shorten the name, or let stars with cautions in.
+    </EmptyState>
+  );
+}

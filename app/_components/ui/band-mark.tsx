@@ -2,7 +2,8 @@ import type { Band } from '@/lib/contracts/bands';
 import { bandShape } from './band-shape';
 import { classNames } from './class-names';
 
-const bandColour: Readonly<Record<Band, string>> = {
+/** Each band's colour, for what is drawn of it. */
+export const bandColour: Readonly<Record<Band, string>> = {
   U: 'fill-band-U stroke-band-U',
   B: 'fill-band-B stroke-band-B',
   V: 'fill-band-V stroke-band-V',

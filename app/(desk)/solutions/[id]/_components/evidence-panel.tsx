@@ -1,0 +1,85 @@
+import { Finding } from '@/app/_components/ui/finding';
+import { formatFixed, formatWithError, noValue } from '@/app/_components/ui/format-figure';
+import { formatMinutes } from '@/app/_components/ui/format-time';
+import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
+import { Panel } from '@/app/_components/ui/panel';
+import type { Tone } from '@/app/_components/ui/tone-mark';
+import type { Solution, SolutionBand } from '@/lib/contracts/api/solution';
+import { bands, type Band } from '@/lib/contracts/bands';
+import { CrossChecks } from './cross-checks';
+import { FoldOut } from './fold-out';
+
+type Speaks = Solution['evidence'][number]['speaks'];
+const tones: Readonly<Record<Speaks, Tone>> = { for: 'good', care: 'warn', against: 'bad' };
+const words: Readonly<Record<Speaks, string>> = { for: 'For', care: 'Take care', against: 'Against' };
+
+/** What speaks for the night and what against it, what the standards covered, and the checks beside the fit. */
+export function EvidencePanel({ solution }: { readonly solution: Solution }) {
+  const solved = bands.flatMap((band) => {
+    const found = solution.bands[band];
+    return found === undefined ? [] : [{ band, found }];
+  });
+  return (
+    <Panel title="Evidence on the night" flush>
+      <div className="grid gap-2.5 px-3.5 py-3">
+        {solution.evidence.map(({ speaks, words: sentence }, index) => (
+          <Finding key={index} tone={tones[speaks]} word={words[speaks]}>
+            {sentence}
+          </Finding>
+        ))}
+        <KeyValues items={coverage(solved)} />
+      </div>
+      {solved.length === 0 ? null : (
+        <FoldOut label="Cross-checks: lines of single stars, pairs of stars">
+          {solved.map((one) => (
+            <CrossChecks key={one.band} {...one} />
+          ))}
+        </FoldOut>
+      )}
+    </Panel>
+  );
+}
+
+interface Solved {
+  readonly band: Band;
+  readonly found: SolutionBand;
+}
+
+/** The same in all bands stands once, else band by band. */
+function rowsOf(
+  key: string,
+  solved: readonly Solved[],
+  written: (found: SolutionBand) => string | null,
+): readonly KeyValue[] {
+  const values = solved.flatMap(({ band, found }) => {
+    const value = written(found);
+    return value === null ? [] : [{ band, value }];
+  });
+  const [first] = values;
+  if (first === undefined) return [];
+  if (values.every(({ value }) => value === first.value)) return [{ key, value: first.value, figure: true }];
+  return values.map(({ band, value }) => ({ key: `${key}, ${band}`, value, figure: true }));
+}
+
+function coverage(solved: readonly Solved[]): readonly KeyValue[] {
+  const range = (of: { readonly min: number; readonly max: number } | null): string | null =>
+    of === null ? null : `${formatFixed(of.min, 2)} to ${formatFixed(of.max, 2)}`;
+  return [
+    ...rowsOf('Airmass covered', solved, ({ airmass }) => range(airmass)),
+    ...rowsOf('Colour covered', solved, ({ colour, colour_index }) =>
+      colour === null ? null : `${colour_index} ${range(colour) ?? noValue}`,
+    ),
+    ...rowsOf('Time covered, UTC', solved, ({ utc }) =>
+      utc === null ? null : `${formatMinutes(utc.first)} to ${formatMinutes(utc.last)}`,
+    ),
+    ...rowsOf('Drift, mag per hour', solved, ({ drift }) =>
+      drift === null ? null : formatWithError(drift.value, drift.error, 4),
+    ),
+    ...rowsOf('Runs of signs, in their errors', solved, ({ runs }) =>
+      runs === null ? null : formatFixed(runs, 1),
+    ),
+    ...rowsOf('Leave one star out, mag', solved, ({ leave_one_star_out: left }) =>
+      left === null ? null : formatFixed(left, 3),
+    ),
+  ];
+}

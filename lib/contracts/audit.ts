@@ -9,6 +9,7 @@ export const auditSubjects = {
   remark: 'remarks',
   'time-loss': 'time lost',
   'measurement-set': 'measurement sets',
+  solution: 'solutions',
   telescope: 'telescopes',
   site: 'sites',
   observatory: 'settings',

@@ -2,6 +2,7 @@
 export const jobTitles = {
   'check-measurements': 'Check measurements',
   'send-mail': 'Send mail',
+  'solve-night': 'Solve a night',
   'transform-targets': 'Transform target measurements',
   tidy: 'Remove what has expired',
 } as const;

@@ -4,9 +4,12 @@ import { expect, inject } from 'vitest';
 import type { MadeToken, NewToken } from '@/lib/contracts/api/token';
 import { createToken } from '@/lib/contracts/api/token';
 import type { z } from 'zod';
-import { execute, insert, selectOne } from '@/lib/server/data/database';
+import type { SolutionModel } from '@/lib/contracts/solution-model';
+import { SolveOptions } from '@/lib/contracts/solve-options';
+import { execute, insert, inTransaction, selectOne } from '@/lib/server/data/database';
 import { personByEmail } from '@/lib/server/data/people';
 import { newPublicId } from '@/lib/server/data/public-id';
+import { insertSolution } from '@/lib/server/data/solution-writes';
 import { callerOf } from '@/lib/server/identity/caller';
 import { callApi } from './api';
 import { queueJob, untilJob } from './jobs';
@@ -40,6 +43,8 @@ export interface RightsWorld {
   readonly condition: string;
   /** A set with standards only, in use: who may take it back or check it again is told that it is too late. */
   readonly set: string;
+  /** A draft that has not been solved. */
+  readonly solution: string;
   /** A job of the observer's that is done. */
   readonly job: string;
   /** Bytes that the night has already. */
@@ -113,6 +118,56 @@ async function newSetInUse(nightId: number): Promise<{ id: number; publicId: str
   return { id, publicId };
 }
 
+/** A draft without a job, so that it stays one. */
+async function newDraft(nightId: number, createdById: number): Promise<{ id: number; publicId: string }> {
+  const publicId = newPublicId();
+  const model = { options: SolveOptions.parse({}), airmassFormula: 'young1994', fit: { bands: [] } };
+  const inputs = { sets: [], standardsSource: '', equipmentEpoch: null, frameVersions: null };
+  const { id } = await inTransaction((tx) =>
+    insertSolution(tx, {
+      publicId,
+      nightId,
+      model: model as unknown as SolutionModel,
+      inputs,
+      softwareVersion: '0.0.0',
+      followsId: null,
+      createdById,
+    }),
+  );
+  await execute(
+    'INSERT INTO solution_nights (solution_id, night_id) VALUES (:id, :nightId)',
+    { id, nightId },
+    null,
+  );
+  return { id, publicId };
+}
+
+/** Removes the draft, and whatever was solved since. */
+async function removeSolutions(nightId: number, firstId: number): Promise<void> {
+  const values = { nightId, firstId };
+  const ofNight = `kind = 'solve-night' AND night_id = :nightId`;
+  await execute(
+    `UPDATE jobs SET state = 'cancelled', dedupe_key = NULL, finished_at = NOW(3) WHERE ${ofNight} AND state = 'queued'`,
+    values,
+    null,
+  );
+  const running = (): Promise<unknown> =>
+    selectOne(`SELECT id FROM jobs WHERE ${ofNight} AND state = 'running' LIMIT 1`, values);
+  await expect.poll(running, { timeout: 30_000 }).toBeNull();
+  const those = 'SELECT id FROM solutions WHERE night_id = :nightId AND id >= :firstId';
+  await execute(
+    `DELETE k FROM solution_coefficients k JOIN solution_bands b ON b.id = k.solution_band_id
+      WHERE b.solution_id IN (${those})`,
+    values,
+    null,
+  );
+  const tables = ['bands', 'observations', 'exclusions', 'comments', 'sets', 'nights'];
+  for (const table of tables) {
+    await execute(`DELETE FROM solution_${table} WHERE solution_id IN (${those})`, values, null);
+  }
+  await execute(`DELETE FROM solutions WHERE night_id = :nightId AND id >= :firstId`, values, null);
+}
+
 async function newDoneJob(): Promise<string> {
   const person = await personByEmail('observer@evenfall.example');
   const caller = person && (await callerOf(person.id, { via: 'session', requestId: 'test' }));
@@ -139,6 +194,7 @@ export async function newRightsWorld(): Promise<RightsWorld> {
     email: 'observer@evenfall.example',
   });
   const set = await newSetInUse(night.id);
+  const draft = await newDraft(night.id, writer);
   const credentials = await allCredentials();
   const tokens = new Map<CallerName, string>();
   for (const caller of callers.filter((each) => each !== 'nobody')) {
@@ -158,6 +214,7 @@ export async function newRightsWorld(): Promise<RightsWorld> {
     frame: frame.publicId,
     condition: condition.publicId,
     set: set.publicId,
+    solution: draft.publicId,
     job: await newDoneJob(),
     table: await readFile(path.join(root, `fixtures/uploads/${date}-standards.csv`), 'utf8'),
     newRemark: async () => {
@@ -184,6 +241,7 @@ export async function newRightsWorld(): Promise<RightsWorld> {
     token: (caller) => tokens.get(caller),
     dispose: async () => {
       const id = { id: set.id };
+      await removeSolutions(night.id, draft.id);
       await execute('DELETE FROM measurement_set_frames WHERE set_id = :id', id, null);
       await execute('DELETE FROM measurement_sets WHERE id = :id', id, null);
       await execute('DELETE FROM remarks WHERE text = :mark', { mark }, null);

@@ -22,6 +22,7 @@ import { getOpenApiDocument } from '@/lib/contracts/api/openapi';
 import type { Operation } from '@/lib/contracts/api/operation';
 import { listProgrammes } from '@/lib/contracts/api/programme';
 import { addRemark, correctRemark, listRemarks, removeRemark } from '@/lib/contracts/api/remark';
+import * as solutions from '@/lib/contracts/api/solution';
 import { listStandards } from '@/lib/contracts/api/standard';
 import { listTelescopes } from '@/lib/contracts/api/telescope';
 import { addTimeLoss, correctTimeLoss, listTimeLosses, removeTimeLoss } from '@/lib/contracts/api/time-loss';
@@ -67,6 +68,9 @@ const ofNewTimeLoss =
 const ofSet =
   (more: Omit<ApiCall, 'params'> = {}): Call =>
   ({ set }) => ({ params: { id: set }, ...more });
+const ofSolution =
+  (more: Omit<ApiCall, 'params'> = {}): Call =>
+  ({ solution }) => ({ params: { id: solution }, ...more });
 const ofJob: Call = ({ job }) => ({ params: { id: job } });
 
 const utc = '2026-11-03T22:00:00Z';
@@ -134,6 +138,22 @@ export const routeRights: readonly RouteRights[] = [
       body: { headers: [mark, 'Source', 'M', 'dM'], mapping: { frame: mark, inst_mag: 'M', inst_err: 'dM' } },
     }),
   ),
+
+  // Solutions: a draft that has not been solved, so that nothing but the right decides. Withdrawn last.
+  row(solutions.solveNight, '-++---00', inNight({ body: {} })),
+  row(solutions.listSolutions, '+++0++00', inNight()),
+  row(solutions.getSolution, '+++0++00', ofSolution()),
+  row(solutions.listResiduals, '+++0++00', ofSolution()),
+  row(
+    solutions.changeExclusions,
+    '-+-0--00',
+    ofSolution({ body: { observations: ['aaaaaaaaaaaa.1'], ...reason } }),
+  ),
+  row(solutions.listSolutionComments, '+++0++00', ofSolution()),
+  row(solutions.addSolutionComment, '+++0--00', ofSolution({ body: { text: mark } })),
+  row(solutions.proposeSolution, '-+-0--00', ofSolution({ body: {} })),
+  row(solutions.approveSolution, '-+-0--00', ofSolution({ body: {} })),
+  row(solutions.withdrawSolution, '-+-0--00', ofSolution({ body: { comment: mark } })),
 
   // Jobs: whose it is, and the manager.
   row(getJob, '+0+00000', ofJob),

@@ -10,6 +10,7 @@ import * as openapi from './openapi';
 import type { Operation } from './operation';
 import * as programme from './programme';
 import * as remark from './remark';
+import * as solution from './solution';
 import * as standard from './standard';
 import * as telescope from './telescope';
 import * as timeLoss from './time-loss';
@@ -32,6 +33,7 @@ const files = [
   health,
   openapi,
   measurementSet,
+  solution,
 ] as const;
 
 const isOperation = (value: unknown): value is Operation =>

@@ -12,6 +12,7 @@ export const SolutionState = z.enum(solutionStates);
 export type SolutionState = z.infer<typeof SolutionState>;
 
 export const Verdict = z.enum(verdicts);
+export type Verdict = z.infer<typeof Verdict>;
 
 const figure = z.number().nullable();
 const Range = z.object({ min: z.number(), max: z.number() }).nullable();
@@ -84,6 +85,7 @@ export const EvidenceItem = z
     words: z.string(),
   })
   .meta({ id: 'EvidenceItem' });
+export type EvidenceItem = z.infer<typeof EvidenceItem>;
 
 const BandsOfNight = z.partialRecord(Band, SolutionBand);
 

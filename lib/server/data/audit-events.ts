@@ -1,8 +1,17 @@
 import 'server-only';
-import type { AuditQuery, AuditRow } from '@/lib/contracts/audit';
+import type { AuditQuery, AuditRow, AuditSubject } from '@/lib/contracts/audit';
 import type { OwnScope } from '@/lib/server/policy/scope';
 import { fromCursor, pageOf } from './cursor';
 import { select } from './database';
+
+const rows = `SELECT e.id, e.utc, p.name AS person, e.act, e.subject_kind AS subjectKind, e.subject_id AS subjectId,
+            n.public_id AS night, DATE_FORMAT(n.date, '%Y-%m-%d') AS nightDate, t.code AS telescope,
+            g.code AS programme, e.reason, e.before_values AS \`before\`, e.after_values AS \`after\`
+       FROM audit_events e
+       LEFT JOIN people p ON p.id = e.person_id
+       LEFT JOIN nights n ON n.id = e.night_id
+       LEFT JOIN telescopes t ON t.id = n.telescope_id
+       LEFT JOIN programmes g ON g.id = e.programme_id`;
 
 /** Audit rows in the scope, the latest first. */
 export async function listAuditRows(
@@ -12,14 +21,7 @@ export async function listAuditRows(
 ): Promise<{ readonly rows: readonly AuditRow[]; readonly next: string | null }> {
   const last = fromCursor(query.after, ['number']);
   const found = await select<AuditRow>(
-    `SELECT e.id, e.utc, p.name AS person, e.act, e.subject_kind AS subjectKind, e.subject_id AS subjectId,
-            n.public_id AS night, DATE_FORMAT(n.date, '%Y-%m-%d') AS nightDate, t.code AS telescope,
-            g.code AS programme, e.reason, e.before_values AS \`before\`, e.after_values AS \`after\`
-       FROM audit_events e
-       LEFT JOIN people p ON p.id = e.person_id
-       LEFT JOIN nights n ON n.id = e.night_id
-       LEFT JOIN telescopes t ON t.id = n.telescope_id
-       LEFT JOIN programmes g ON g.id = e.programme_id
+    `${rows}
       WHERE (:all OR e.person_id = :owner OR e.programme_id IN (:programmes))
         AND (:night = '' OR n.public_id = :night)
         AND (:programme = '' OR g.code = :programme)
@@ -57,5 +59,13 @@ export async function peopleInAudit(
   return select(
     `SELECT p.public_id AS publicId, p.name FROM people p
       WHERE EXISTS (SELECT 1 FROM audit_events e WHERE e.person_id = p.id) ORDER BY p.name`,
+  );
+}
+
+/** Everything in the trail about one thing, the latest first. Whoever calls has asked whether the thing may be seen. */
+export async function auditOfSubject(kind: AuditSubject, publicId: string): Promise<readonly AuditRow[]> {
+  return select<AuditRow>(
+    `${rows} WHERE e.subject_kind = :kind AND e.subject_id = :publicId ORDER BY e.id DESC LIMIT 1000`,
+    { kind, publicId },
   );
 }

@@ -6,7 +6,7 @@ export interface RowLoad {
   /** A file that this process wrote: tab-separated, \N for NULL, backslash before tab, line feed and backslash. */
   readonly file: string;
   readonly rows: number;
-  readonly table: 'measurements' | 'measurement_stars' | 'measurement_flags';
+  readonly table: 'measurements' | 'measurement_stars' | 'measurement_flags' | 'solution_observations';
   /** Columns in the order of the file; one that begins with @ is a variable for `set`. */
   readonly columns: readonly string[];
   /** Expressions for further columns, SQL of our own: no text from outside. */

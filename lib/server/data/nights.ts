@@ -87,6 +87,20 @@ export async function requireNight(scope: Scope, publicId: string, tx: Tx | null
   throw new Fault('not-found', 'There is no such night, or it is not yours to see.');
 }
 
+/** Those of the nights that the scope holds. */
+export async function visibleNightIds(scope: Scope, ids: readonly number[]): Promise<ReadonlySet<number>> {
+  if (scope.all || ids.length === 0) return new Set(ids);
+  const nights = visibleNights(scope);
+  const rows = await select<{ id: number }>(
+    `SELECT n.id FROM nights n WHERE n.id IN (:ids) AND ${nights.sql}`,
+    {
+      ids,
+      ...nights.values,
+    },
+  );
+  return new Set(rows.map(({ id }) => id));
+}
+
 export interface NightPage {
   readonly rows: readonly NightRow[];
   readonly next: string | null;

@@ -17,6 +17,8 @@ const consequences: { readonly [K in JobKind]: Consequence<K> } = {
     onFailure: (tx, { mail }, reason) => failMail(tx, mail, reason),
     onRetry: (tx, { mail }) => requeueMail(tx, mail),
   },
+  // The draft stays unsolved and its page says why; a new solve is a new draft.
+  'solve-night': {},
   'transform-targets': {},
   tidy: {},
 };

@@ -44,6 +44,20 @@ export const jobKinds = {
     lease_s: 120,
     longestWait_s: 1800,
   }),
+  'solve-night': kind({
+    payload: z.object({ solution: PublicId }),
+    result: z.object({
+      solution: PublicId,
+      /** Withdrawn: somebody withdrew the draft before it was solved, and nothing is stored. */
+      outcome: z.enum(['determined', 'undetermined', 'withdrawn']),
+      observations: z.number().int(),
+      used: z.number().int(),
+    }),
+    lane: 'long',
+    maxTries: 3,
+    lease_s: 30,
+    longestWait_s: 300,
+  }),
   'transform-targets': kind({
     payload: z.object({ solution: PublicId, night: PublicId }),
     result: z.object({

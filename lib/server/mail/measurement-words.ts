@@ -15,3 +15,7 @@ export const nightWords = (set: { readonly nightDate: string; readonly telescope
 /** Address of a set's page. */
 export const setLink = (set: { readonly publicId: string }): string =>
   `${environment().baseUrl}/measurement-sets/${set.publicId}`;
+
+/** Address of a solution's page. */
+export const solutionLink = (solution: { readonly publicId: string }): string =>
+  `${environment().baseUrl}/solutions/${solution.publicId}`;

@@ -1,0 +1,83 @@
+import 'server-only';
+import { execute, select, selectOne, type Tx } from './database';
+import { newPublicId } from './public-id';
+
+/**
+ * Rows of a night that are targets: those of sets of targets, and in mixed sets those on frames that are not a
+ * standard's. `q` counts a set's rows on a frame.
+ */
+const targetRows = `measurement_set_frames q
+  JOIN measurement_sets m ON m.id = q.set_id
+  JOIN frames f ON f.id = q.frame_id
+ WHERE m.night_id = :nightId AND m.state IN ('matched', 'in use')
+   AND (m.kind = 'target' OR (m.kind = 'mixed' AND f.type <> 'standard'))`;
+
+/** Programmes whose targets were measured in a night; null for frames that belong to none. */
+async function targetProgrammes(tx: Tx, nightId: number): Promise<readonly (number | null)[]> {
+  const rows = await select<{ id: number | null }>(
+    `SELECT DISTINCT f.programme_id AS id FROM ${targetRows} ORDER BY id`,
+    { nightId },
+    tx,
+  );
+  return rows.map(({ id }) => id);
+}
+
+/** Asks for the night's targets on the standard system, one transformation a programme. Returns how many there are. */
+export async function queueTransformations(tx: Tx, solutionId: number, nightId: number): Promise<number> {
+  const programmes = await targetProgrammes(tx, nightId);
+  for (const programmeId of programmes) {
+    await execute(
+      `INSERT INTO transformations (public_id, solution_id, night_id, programme_id)
+       VALUES (:publicId, :solutionId, :nightId, :programmeId)`,
+      { publicId: newPublicId(), solutionId, nightId, programmeId },
+      tx,
+    );
+  }
+  return programmes.length;
+}
+
+/** Transformations of a solution that was replaced: those not made yet never will be; the others stay to be read. */
+export async function dropQueuedTransformations(tx: Tx, solutionId: number): Promise<number> {
+  return execute(
+    `UPDATE transformations SET state = 'withdrawn', finished_at = NOW(3)
+      WHERE solution_id = :solutionId AND state = 'queued'`,
+    { solutionId },
+    tx,
+  );
+}
+
+/** Transformations of a solution that was withdrawn. */
+export async function withdrawTransformations(tx: Tx, solutionId: number): Promise<number> {
+  return execute(
+    `UPDATE transformations SET state = 'withdrawn', finished_at = COALESCE(finished_at, NOW(3))
+      WHERE solution_id = :solutionId AND state <> 'withdrawn'`,
+    { solutionId },
+    tx,
+  );
+}
+
+export interface ApprovalCounts {
+  readonly nMagnitudes: number;
+  readonly nProgrammes: number;
+  readonly nInvestigators: number;
+}
+
+/** What an approval would transform, and whom it would concern, as things stand now. */
+export async function approvalCounts(nightId: number): Promise<ApprovalCounts> {
+  const counted = await selectOne<{ nMagnitudes: number; nProgrammes: number }>(
+    `SELECT CAST(COALESCE(SUM(q.n_rows), 0) AS INT) AS nMagnitudes, COUNT(DISTINCT f.programme_id) AS nProgrammes
+       FROM ${targetRows}`,
+    { nightId },
+  );
+  const people = await selectOne<{ n: number }>(
+    `SELECT COUNT(DISTINCT b.person_id) AS n
+       FROM programme_members b JOIN people p ON p.id = b.person_id AND p.disabled_at IS NULL
+      WHERE b.programme_id IN (SELECT f.programme_id FROM ${targetRows})`,
+    { nightId },
+  );
+  return {
+    nMagnitudes: Number(counted?.nMagnitudes ?? 0),
+    nProgrammes: Number(counted?.nProgrammes ?? 0),
+    nInvestigators: Number(people?.n ?? 0),
+  };
+}

@@ -13,11 +13,14 @@ export const metadata: Metadata = { title: 'Mail' };
 
 export default async function MailPage() {
   const caller = await callerOrSignIn();
-  const mails = await orNotFound(caughtMails(caller));
+  const { mails, total } = await orNotFound(caughtMails(caller));
   return (
     <>
       <PageHead title="Mail">
-        <span className="text-ink-2">What the demo sent. It goes no further than this machine.</span>
+        <span className="text-ink-2">
+          What the demo sent. It goes no further than this machine.
+          {mails.length < total ? ` Listed are the newest ${mails.length} of ${total}.` : null}
+        </span>
       </PageHead>
       <Panel flush>
         {mails.length === 0 ? (

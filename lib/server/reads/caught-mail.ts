@@ -16,14 +16,23 @@ function demandDemo(_caller: PersonCaller): string {
 
 export type CaughtMailListed = Pick<CaughtMail, 'id' | 'receivedAt' | 'to' | 'subject'>;
 
+export interface CaughtMailList {
+  readonly mails: readonly CaughtMailListed[];
+  /** How many there are, the ones that are not listed included. */
+  readonly total: number;
+}
+
 /** The messages that the demo's catcher took, the newest first. */
-export async function caughtMails(caller: PersonCaller): Promise<readonly CaughtMailListed[]> {
+export async function caughtMails(caller: PersonCaller): Promise<CaughtMailList> {
   const folder = demandDemo(caller);
-  const ids = (await caughtIds(folder)).slice(0, shown);
-  const mails = await Promise.all(ids.map((id) => caughtMail(folder, id)));
-  return mails.flatMap((mail) =>
-    mail === null ? [] : [{ id: mail.id, receivedAt: mail.receivedAt, to: mail.to, subject: mail.subject }],
-  );
+  const ids = await caughtIds(folder);
+  const mails = await Promise.all(ids.slice(0, shown).map((id) => caughtMail(folder, id)));
+  return {
+    mails: mails.flatMap((mail) =>
+      mail === null ? [] : [{ id: mail.id, receivedAt: mail.receivedAt, to: mail.to, subject: mail.subject }],
+    ),
+    total: ids.length,
+  };
 }
 
 /** One message that the demo's catcher took. */

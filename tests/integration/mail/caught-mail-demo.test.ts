@@ -21,7 +21,7 @@ afterAll(() => rm(folder, { recursive: true, force: true }));
 
 describe('the mail page of the demo', () => {
   it('is empty before the first message, when the catcher has made no folder yet', async () => {
-    expect(await caughtMails(observer)).toEqual([]);
+    expect(await caughtMails(observer)).toEqual({ mails: [], total: 0 });
   });
 
   it('lists what the catcher kept, the newest first, and shows one whole, for somebody without any office', async () => {
@@ -41,7 +41,9 @@ describe('the mail page of the demo', () => {
     await new Promise((resolve) => setTimeout(resolve, 5));
     await keepMail(folder, Buffer.from('X-Nothing: else\r\n\r\n'));
 
-    const [bare, whole] = await caughtMails(observer);
+    const {
+      mails: [bare, whole],
+    } = await caughtMails(observer);
     expect(bare).toMatchObject({ to: '', subject: '' });
     expect(whole).toMatchObject({
       to: '"Noor Hathaway" <observer@evenfall.example>',
@@ -60,7 +62,9 @@ describe('the mail page of the demo', () => {
   });
 
   it('shows a message without sender, text, HTML or Message-ID as one that lacks them', async () => {
-    const [bare] = await caughtMails(observer);
+    const {
+      mails: [bare],
+    } = await caughtMails(observer);
     const shown = await readCaughtMail(observer, bare?.id ?? '');
     expect(shown).toMatchObject({ from: '', to: '', subject: '', messageId: '', html: null });
     expect(shown.text.trim()).toBe('');
@@ -68,5 +72,13 @@ describe('the mail page of the demo', () => {
 
   it.each(['1700000000000-aaaaaaaa', '../../etc/passwd'])('finds no message %s', async (id) => {
     expect((await faultOf(readCaughtMail(observer, id))).code).toBe('not-found');
+  });
+
+  it('the list stops at a hundred and says how many there are', async () => {
+    for (let mail = 1; mail <= 101; mail += 1)
+      await keepMail(folder, Buffer.from(`Subject: ${mail}\r\n\r\n`));
+    const { mails, total } = await caughtMails(observer);
+    expect(mails).toHaveLength(100);
+    expect(total).toBeGreaterThan(100);
   });
 });

@@ -38,15 +38,18 @@ export function JobRow({ job, now, onChange }: JobRowProps) {
       <Cell>{job.created_by ?? 'the service'}</Cell>
       <Cell mono>{formatInstant(job.created_at)}</Cell>
       <Cell numeric>{span_ms === null ? '–' : formatSpan(span_ms)}</Cell>
-      <Cell numeric>
-        {job.tries} of {job.max_tries}
-      </Cell>
+      <Cell numeric>{triesOf(job)}</Cell>
       <Cell>
         <JobActs job={job} onChange={onChange} />
       </Cell>
     </Row>
   );
 }
+
+/** Mail is tried again for days: of how many tries tells a reader nothing. */
+const countable = 10;
+const triesOf = ({ tries, max_tries }: Job): string =>
+  max_tries > countable ? String(tries) : `${tries} of ${max_tries}`;
 
 function About({ job }: { readonly job: Job }) {
   const night = job.night_date === null ? null : `${job.telescope ?? ''} ${job.night_date}`.trim();

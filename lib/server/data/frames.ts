@@ -6,37 +6,17 @@ import {
   type FrameOrigin,
   type FrameQuery,
 } from '@/lib/contracts/api/frame';
-import type { Band, FrameType } from '@/lib/contracts/bands';
 import { starKey } from '@/lib/contracts/star-name';
 import type { Scope } from '@/lib/server/policy/scope';
 import { fromCursor, pageOf } from './cursor';
 import { select, selectOne, type SqlValues, type Tx } from './database';
+import type { FrameValues } from './frame-writes';
 import { visibleFrames } from './visible';
 
-export interface FrameRow {
+export interface FrameRow extends FrameValues {
   readonly id: number;
   readonly publicId: string;
-  readonly number: number;
-  readonly type: FrameType;
-  readonly file: string | null;
-  readonly object: string;
-  readonly field: string | null;
-  readonly programmeId: number | null;
   readonly programme: string | null;
-  readonly ra: number | null;
-  readonly decl: number | null;
-  readonly band: Band | null;
-  readonly utcStart: Date;
-  readonly exposure: number;
-  readonly utcMid: Date;
-  readonly airmass: number | null;
-  readonly altitude: number | null;
-  readonly hourAngle: number | null;
-  readonly moonSeparation: number | null;
-  readonly sunAltitude: number;
-  readonly fwhm: number | null;
-  readonly sky: number | null;
-  readonly comment: string;
   readonly origin: FrameOrigin;
   readonly version: number;
   readonly loggedBy: string;

@@ -1,12 +1,8 @@
 import 'server-only';
-import type { Condition } from '@/lib/contracts/api/condition';
-import type { Frame } from '@/lib/contracts/api/frame';
-import type { Night } from '@/lib/contracts/api/night';
-import type { Remark } from '@/lib/contracts/api/remark';
-import type { TimeLoss } from '@/lib/contracts/api/time-loss';
+import type { NightLog } from '@/lib/contracts/night-log';
 import { allConditionRows, toCondition } from '@/lib/server/data/conditions';
 import { allFrameRows, toFrame } from '@/lib/server/data/frames';
-import { instrumentOf, type FilterRow } from '@/lib/server/data/instruments';
+import { instrumentOf } from '@/lib/server/data/instruments';
 import { countSets } from '@/lib/server/data/measurement-sets';
 import { requireNight, subjectOf, toNight } from '@/lib/server/data/nights';
 import { allRemarkRows, toRemark } from '@/lib/server/data/remarks';
@@ -15,42 +11,8 @@ import type { Caller } from '@/lib/server/policy/caller';
 import { may } from '@/lib/server/policy/matrix';
 import { dataScope, nightScope } from '@/lib/server/policy/scope';
 
-export interface NightPage {
-  readonly night: Night;
-  readonly telescope: {
-    readonly code: string;
-    readonly name: string;
-    /** Lowest pointing. [deg] */
-    readonly minAltitude: number;
-    readonly filters: readonly FilterRow[];
-  };
-  readonly site: {
-    readonly name: string;
-    /** East positive. [deg] */
-    readonly longitude: number;
-    /** [deg] */
-    readonly latitude: number;
-    /** [m] */
-    readonly elevation: number;
-    readonly timezone: string;
-  };
-  /** By mid-exposure. */
-  readonly frames: readonly Frame[];
-  readonly conditions: readonly Condition[];
-  readonly remarks: readonly Remark[];
-  readonly timeLosses: readonly TimeLoss[];
-  /** Measurement sets; null where they are not the caller's to see. */
-  readonly sets: number | null;
-  readonly may: {
-    readonly log: boolean;
-    readonly close: boolean;
-    readonly reopen: boolean;
-    readonly upload: boolean;
-  };
-}
-
 /** All that the page of a night shows: nine statements, however much was logged. */
-export async function nightPage(caller: Caller, id: string): Promise<NightPage> {
+export async function nightPage(caller: Caller, id: string): Promise<NightLog> {
   const scope = nightScope(caller);
   const row = await requireNight(scope, id);
   const [instrument, frames, conditions, remarks, losses, sets] = await Promise.all([
@@ -68,7 +30,6 @@ export async function nightPage(caller: Caller, id: string): Promise<NightPage> 
     telescope: {
       code: instrument.code,
       name: instrument.name,
-      minAltitude: instrument.minAltitude,
       filters: instrument.filters,
     },
     site: {

@@ -1,8 +1,8 @@
 import type { Frame, FrameInput } from '@/lib/contracts/api/frame';
 import type { Issue } from '@/lib/faults/fault';
+import type { NightLog } from '@/lib/contracts/night-log';
 import type { ListedLine } from './frame-list';
 import { readLine, type LineFaults } from './frame-line';
-import type { NightLog } from './night-log';
 
 /** A line of a list, read: what would be logged, or what is wrong with it. */
 export interface CheckedLine extends ListedLine {

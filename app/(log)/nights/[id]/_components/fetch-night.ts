@@ -4,7 +4,8 @@ import { listFrames } from '@/lib/contracts/api/frame';
 import { getNight } from '@/lib/contracts/api/night';
 import { listRemarks } from '@/lib/contracts/api/remark';
 import { listTimeLosses } from '@/lib/contracts/api/time-loss';
-import { mayIn, type NightLog } from './night-log';
+import type { NightLog } from '@/lib/contracts/night-log';
+import { mayIn } from './night-log';
 
 interface Listed<T> {
   readonly items: readonly T[];

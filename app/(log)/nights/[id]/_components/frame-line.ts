@@ -2,7 +2,7 @@ import { parseDeclination, parseRightAscension, type ParsedAngle } from '@/lib/a
 import { FrameInput, frameFaultsInNight, type Frame, type NextFrame } from '@/lib/contracts/api/frame';
 import { bands, frameTypes } from '@/lib/contracts/bands';
 import { instantInNight } from '@/lib/contracts/night-clock';
-import type { NightLog } from './night-log';
+import type { NightLog } from '@/lib/contracts/night-log';
 
 /** A frame as it is typed: text in every field. */
 export interface FrameLine {

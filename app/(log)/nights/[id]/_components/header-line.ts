@@ -2,8 +2,8 @@ import type { ObjectName } from '@/lib/contracts/api/object-name';
 import { bands, type Band, type FrameType } from '@/lib/contracts/bands';
 import { starKey } from '@/lib/contracts/star-name';
 import type { FitsValue } from '@/lib/formats/fits-header';
+import type { LogFilter } from '@/lib/contracts/night-log';
 import type { FrameLine } from './frame-line';
-import type { LogFilter } from './night-log';
 
 /** What a header is read against. */
 export interface HeaderContext {

@@ -11,7 +11,8 @@ import { Field } from '@/app/_components/ui/field';
 import { Finding } from '@/app/_components/ui/finding';
 import { TextArea } from '@/app/_components/ui/text-area';
 import { patchNight, type Night, type PatchNight } from '@/lib/contracts/api/night';
-import { mayIn, type NightLog } from './night-log';
+import type { NightLog } from '@/lib/contracts/night-log';
+import { mayIn } from './night-log';
 import { useNight } from './night-provider';
 import { ReasonField } from './reason-field';
 

@@ -1,48 +1,6 @@
-import type { Condition } from '@/lib/contracts/api/condition';
 import type { Frame } from '@/lib/contracts/api/frame';
 import type { Night } from '@/lib/contracts/api/night';
-import type { Remark } from '@/lib/contracts/api/remark';
-import type { TimeLoss } from '@/lib/contracts/api/time-loss';
-import type { Band } from '@/lib/contracts/bands';
-
-export interface LogFilter {
-  readonly band: Band;
-  readonly name: string;
-  /** s */
-  readonly defaultExposure: number | null;
-}
-
-/** A night with all that is logged of it, as its pages hold it. */
-export interface NightLog {
-  readonly night: Night;
-  readonly telescope: {
-    readonly code: string;
-    readonly name: string;
-    readonly filters: readonly LogFilter[];
-  };
-  readonly site: {
-    readonly name: string;
-    /** deg, east positive */
-    readonly longitude: number;
-    /** deg */
-    readonly latitude: number;
-    /** m */
-    readonly elevation: number;
-    readonly timezone: string;
-  };
-  readonly frames: readonly Frame[];
-  readonly conditions: readonly Condition[];
-  readonly remarks: readonly Remark[];
-  readonly timeLosses: readonly TimeLoss[];
-  /** Measurement sets; null where they are not the reader's to see. */
-  readonly sets: number | null;
-  readonly may: {
-    readonly log: boolean;
-    readonly close: boolean;
-    readonly reopen: boolean;
-    readonly upload: boolean;
-  };
-}
+import type { NightLog } from '@/lib/contracts/night-log';
 
 /** Whether the person may work on this night at all, whatever its state: the three rights have one rule. */
 export function mayWork({ log, close, reopen }: NightLog['may']): boolean {

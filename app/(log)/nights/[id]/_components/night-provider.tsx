@@ -6,11 +6,12 @@ import { callApi } from '@/app/_components/hooks/call-api';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { getNight } from '@/lib/contracts/api/night';
 import type { ObjectName } from '@/lib/contracts/api/object-name';
+import type { NightLog } from '@/lib/contracts/night-log';
 import { useLogQueue } from '../../../_components/queue/log-queue';
 import type { Outgoing, QueueEntry } from '../../../_components/queue/queue-entry';
 import type { Logged } from '../../../_components/queue/send-entry';
 import { fetchNight } from './fetch-night';
-import { isBehind, withItem, type NightLog } from './night-log';
+import { isBehind, withItem } from './night-log';
 import { useNightSky } from './use-night-sky';
 
 interface NightContext {

@@ -15,7 +15,8 @@ import {
   type LineFaults,
   type LineField,
 } from './frame-line';
-import { latestFirst, type NightLog } from './night-log';
+import type { NightLog } from '@/lib/contracts/night-log';
+import { latestFirst } from './night-log';
 
 /**
  * By number, which is the order of logging: frames whose starts were typed after the fact may overlap, and their middles

@@ -2,8 +2,8 @@
 
 import { useEffect, useMemo, useState } from 'react';
 import type { NightSky } from '@/app/_components/charts/night-band/night-sky';
+import type { NightLog } from '@/lib/contracts/night-log';
 import { fieldsTaken } from '../../../_components/fields-taken';
-import type { NightLog } from './night-log';
 
 /**
  * The night's sky: as the server made it, and once a field is taken that has no curve, reckoned here. The ephemeris is

@@ -2,7 +2,8 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
 import { launchBrowser } from '../support/browser';
 import { litPixels } from '../support/lit-pixels';
-import { signedIn, type DemoAccount } from '../support/signed-in';
+import type { DemoAccount } from '../support/sign-in';
+import { signedIn } from '../support/signed-in';
 
 let browser: Browser;
 beforeAll(async () => {

@@ -5,7 +5,8 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { launchBrowser } from '../support/browser';
 import { root } from '../support/scripts';
-import { demoAccounts, signedIn } from '../support/signed-in';
+import { demoAccounts } from '../support/sign-in';
+import { signedIn } from '../support/signed-in';
 
 let browser: Browser;
 beforeAll(async () => {

@@ -1,0 +1,172 @@
+/**
+ * Which rows of a band are believed. From a robust start (robust-start.ts) the mixed model is fitted to the rows that
+ * lie within the limit; then every row, in the fit or not, is compared with its prediction by the fit without it, and
+ * every star, frame and run of frames as a whole (rejection-structures.ts). What stands within the limits is taken in,
+ * what does not is taken out, until nothing changes: what is rejected at the end is beyond the limit of the final fit,
+ * and what is used is within it, whatever the start was.
+ *
+ * The limit of a single row is that number of normal standard deviations which the model names, widened to the same
+ * probability of Student's t for the degrees of freedom that there are. At 4 it is passed by 1 in 16,000 good rows, and
+ * cutting a normal distribution there lowers its standard deviation by 0.05 %: the scatter is not biased.
+ *
+ * Sources: Cook and Weisberg 1982, Residuals and Influence in Regression, section 2.2 (deletion residuals); taking rows
+ * back in by their prediction: Hadi and Simonoff 1993, Journal of the American Statistical Association 88, 1264.
+ */
+import { studentTLimit } from '@/lib/numerics/student-t';
+import { designOf, type BandProblem } from './band-problem';
+import { fitBand, modelPriors, rowsByNight, type BandFit, type NightFit } from './fit-band';
+import { type FitLimits } from './fit-model';
+import { deletionOf, pick, predictionOf, viewNight, type Shift } from './night-view';
+import { findStructures, normalTail, type Structure } from './rejection-structures';
+import { startRobustly } from './robust-start';
+import { overrules } from './standard-observations';
+
+export type RowVerdict =
+  | { readonly kind: 'believed' }
+  | ({ readonly kind: 'outlier'; readonly limit: number } & Shift)
+  | { readonly kind: 'structure'; readonly structure: Structure };
+
+export interface Rejection {
+  readonly fit: BandFit;
+  /** Rows in the fit, ascending. */
+  readonly used: Int32Array;
+  /** What the fit says of each row, whatever a person decided on it; null for rows that were not asked. */
+  readonly verdicts: readonly (RowVerdict | null)[];
+  readonly structures: readonly Structure[];
+  /** Of the robust start, shape (n); NaN without one. */
+  readonly weights: Float64Array;
+  readonly converged: boolean;
+}
+
+export interface RejectionOptions {
+  readonly limits: FitLimits;
+  /** Of the robust start. */
+  readonly seed: number;
+}
+
+const maxRounds = 12;
+/** From this round on rows only leave: two rows that push each other in and out would never end. */
+const onlyOutFrom = 8;
+
+const believed: RowVerdict = { kind: 'believed' };
+
+/** Fits a band to the rows that agree with each other.
+ * @param problem - of the band
+ * @param rows - rows of the nights that are fitted, ascending, shape (m) [1]
+ * @param options - limits and seed
+ * @returns the fit and what became of every row
+ * @accuracy on clean nights less than 1 in 1000 rows is rejected
+ * @source see the head */
+export function fitBelieved(problem: BandProblem, rows: Int32Array, options: RejectionOptions): Rejection {
+  const usable = rows.filter((row) => problem.overrule[row] !== overrules.keepOut);
+  const { start, weights } = startingRows(problem, usable, options);
+  let used = start;
+  let fit = fitBand(problem, used);
+  // Without the rows that the start rejects a coefficient may hang in the air; then all of them begin.
+  if (fit.kind === 'undetermined' && used.length < usable.length) {
+    used = usable;
+    fit = fitBand(problem, used);
+  }
+  for (let round = 0; ; round += 1) {
+    const judged = fit.kind === 'determined' ? judge(problem, rows, fit.nights, options.limits) : null;
+    if (judged === null) return { fit, used, ...unjudged(problem), weights, converged: true };
+    const next = usable.filter(
+      (row) =>
+        problem.overrule[row] === overrules.keepIn ||
+        (judged.verdicts[row]?.kind === 'believed' && (round < onlyOutFrom || used.includes(row))),
+    );
+    const isSame = next.length === used.length && next.every((row, i) => row === used[i]);
+    if (isSame || round === maxRounds) return { fit, used, ...judged, weights, converged: isSame };
+    const refit = fitBand(problem, next);
+    if (refit.kind === 'undetermined') return { fit: refit, used: next, ...judged, weights, converged: true };
+    used = next;
+    fit = refit;
+  }
+}
+
+const unjudged = ({ observation }: BandProblem): Pick<Rejection, 'verdicts' | 'structures'> => ({
+  verdicts: Array.from(observation, () => null),
+  structures: [],
+});
+
+/** Rows within the limit of the robust start of their night. */
+function startingRows(
+  problem: BandProblem,
+  usable: Int32Array,
+  { limits, seed }: RejectionOptions,
+): { readonly start: Int32Array; readonly weights: Float64Array } {
+  const weights = new Float64Array(problem.observation.length).fill(Number.NaN);
+  const kept: number[] = [];
+  for (const { rows } of rowsByNight(problem, usable)) {
+    const robust = startRobustly({
+      design: designOf(problem, rows),
+      columns: problem.sought.length,
+      response: pick(problem.response, rows),
+      rowSigma: Float64Array.from(rows, (row) =>
+        Math.hypot(problem.sigma[row]!, problem.starSigma[problem.star[row]!]!),
+      ),
+      priors: modelPriors(problem),
+      bisquare: limits.bisquare,
+      seed,
+    });
+    for (let i = 0; i < rows.length; i += 1) {
+      const row = rows[i]!;
+      if (robust !== null) weights[row] = robust.weights[i]!;
+      const isNear = robust === null || Math.abs(robust.standardised[i]!) <= limits.rejectSigmas;
+      if (isNear || problem.overrule[row] === overrules.keepIn) kept.push(row);
+    }
+  }
+  return { start: Int32Array.from(kept).sort(), weights };
+}
+
+function judge(
+  problem: BandProblem,
+  rows: Int32Array,
+  nights: readonly NightFit[],
+  limits: FitLimits,
+): Pick<Rejection, 'verdicts' | 'structures'> | null {
+  const verdicts: (RowVerdict | null)[] = Array.from(problem.observation, () => null);
+  const all: Structure[] = [];
+  for (const night of nights) {
+    const view = viewNight(problem, night.rows, night.components, night.priors);
+    if (view === null) return null;
+    const own = rows.filter((row) => problem.night[row] === night.night);
+    const dofObservation = Math.max(1, night.rows.length - problem.sought.length);
+    const limit = studentTLimit(normalTail(limits.rejectSigmas), dofObservation);
+    const structures = findStructures(
+      view,
+      own.filter((row) => problem.overrule[row] === overrules.none),
+      { rejectSigmas: limits.rejectSigmas, dofObservation, dofFrame: frameDegrees(problem, night) },
+    );
+    all.push(...structures);
+    const places = new Map(Array.from(night.rows, (row, i) => [row, i] as const));
+    for (const row of own) {
+      const place = places.get(row);
+      const difference = place === undefined ? predictionOf(view, row) : deletionOf(view, place);
+      const isNear = Math.abs(difference.shift) <= limit * difference.error;
+      verdicts[row] = isNear ? believed : { kind: 'outlier', limit, ...difference };
+    }
+    for (const structure of structures) {
+      for (const row of structure.rows) verdicts[row] = { kind: 'structure', structure };
+    }
+  }
+  return { verdicts, structures: all };
+}
+
+/** Degrees of freedom of the scatter of frames: frames less the coefficients that only differ between frames. */
+function frameDegrees(problem: BandProblem, { rows, hasFrameScatter }: NightFit): number {
+  if (!hasFrameScatter) return Math.max(1, rows.length - problem.sought.length);
+  const frames = new Set(Array.from(rows, (row) => problem.frame[row]!)).size;
+  const between = problem.sought.filter(
+    ({ name, term }) => term.status === 'free' && frameCoefficients.has(name),
+  ).length;
+  return Math.max(1, frames - between);
+}
+
+/** Coefficients that only frames can determine. */
+const frameCoefficients: ReadonlySet<string> = new Set([
+  'zeroPoint',
+  'extinction',
+  'drift',
+  'extinctionDrift',
+]);

@@ -21,7 +21,8 @@ export interface TargetMeasurements {
   readonly frameHours: Float64Array;
   /** Mid-exposure as BJD_TDB [d], for the programme's field. */
   readonly frameBjd: Float64Array;
-  /** Offset of the frame known from elsewhere (standards on it, secondary standards) [mag]; NaN where unknown. */
+  /** Offset of the frame known from elsewhere (standards on it, secondary standards) [mag]; NaN where unknown,
+   * infinite where the frame must not be used. */
   readonly frameOffset: Float64Array;
   /** Standard errors of these, in place of the scatter of frames; where absent or NaN the scatter of frames stays [mag]. */
   readonly frameOffsetErr?: Float64Array;

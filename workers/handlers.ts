@@ -4,5 +4,6 @@ import type { Handlers } from './handler';
 export const handlers: Handlers = {
   'check-measurements': async () => (await import('./handlers/check-measurements')).checkMeasurements,
   'send-mail': async () => (await import('./handlers/send-mail')).sendMail,
+  'transform-targets': async () => (await import('./handlers/transform-targets')).transformTargets,
   tidy: async () => (await import('./handlers/tidy')).tidy,
 };

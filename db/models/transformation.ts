@@ -16,6 +16,11 @@ export class Transformation extends Model<
   declare programmeId: number | null;
   declare state: CreationOptional<string>;
   declare nStars: number | null;
+  /** assumed colour and limits of the flags */
+  declare options: object | null;
+  declare nMeasurements: number | null;
+  /** not usable: see lib/server/reads/target-columns.ts */
+  declare nLeftOut: number | null;
   declare createdAt: CreationOptional<Date>;
   declare finishedAt: Date | null;
 
@@ -35,6 +40,9 @@ export class Transformation extends Model<
         programmeId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
         state: { type: DataTypes.STRING(16), allowNull: false, defaultValue: 'queued' },
         nStars: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
+        options: { type: DataTypes.JSON, allowNull: true },
+        nMeasurements: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
+        nLeftOut: { type: DataTypes.INTEGER.UNSIGNED, allowNull: true },
         createdAt: {
           type: DataTypes.DATE(3),
           allowNull: false,

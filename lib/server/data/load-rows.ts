@@ -2,15 +2,24 @@ import 'server-only';
 import { database } from '@/db/connection';
 import { select, type Tx } from './database';
 
+type LoadedTable =
+  | 'measurements'
+  | 'measurement_stars'
+  | 'measurement_flags'
+  | 'solution_observations'
+  | 'calibrated_magnitudes';
+
 export interface RowLoad {
   /** A file that this process wrote: tab-separated, \N for NULL, backslash before tab, line feed and backslash. */
   readonly file: string;
   readonly rows: number;
-  readonly table: 'measurements' | 'measurement_stars' | 'measurement_flags' | 'solution_observations';
+  readonly table: LoadedTable;
   /** Columns in the order of the file; one that begins with @ is a variable for `set`. */
   readonly columns: readonly string[];
   /** Expressions for further columns, SQL of our own: no text from outside. */
   readonly set: Readonly<Record<string, string>>;
+  /** The row that foreign keys refer to is there and stays: it is neither looked up nor held. */
+  readonly isReferenceKnown?: boolean;
 }
 
 const name = /^@?[a-z_]+$/;
@@ -25,7 +34,7 @@ export async function loadRows(tx: Tx, load: RowLoad): Promise<void> {
     throw new Error(`A column's name is not plain: ${names.join(', ')}`);
   const set = Object.entries(load.set).map(([column, expression]) => `${column} = ${expression}`);
   const [result] = await database().query(
-    `LOAD DATA LOCAL INFILE ${database().escape(load.file)} INTO TABLE ${load.table} CHARACTER SET utf8mb4
+    `${load.isReferenceKnown === true ? 'SET STATEMENT foreign_key_checks = 0 FOR ' : ''}LOAD DATA LOCAL INFILE ${database().escape(load.file)} INTO TABLE ${load.table} CHARACTER SET utf8mb4
      FIELDS TERMINATED BY '\\t' ESCAPED BY '\\\\' LINES TERMINATED BY '\\n'
      (${load.columns.join(', ')})${set.length > 0 ? ` SET ${set.join(', ')}` : ''}`,
     { transaction: tx },

@@ -8,7 +8,8 @@ import type { JobCaller } from '@/lib/server/policy/caller';
 import { environment } from '@/lib/server/settings/environment';
 import { oneLine } from './one-line';
 
-export type MailKind = 'upload-refused' | 'measurements-waiting' | 'solution-proposed' | 'invitation';
+export type MailKind =
+  'upload-refused' | 'measurements-waiting' | 'solution-proposed' | 'night-calibrated' | 'invitation';
 
 export interface NewMail {
   readonly kind: MailKind;

@@ -3,7 +3,7 @@ import { frameField, type RegisteredFrame } from './frame-register';
 import type { LoadPlan, Slice } from '@/lib/contracts/measurement-check';
 import type { CheckOrder } from './messages';
 import { newFrames } from './new-frames';
-import { numberField, rowFile, textField } from './row-files';
+import { numberField, rowFile, textField } from '../row-files';
 import type { StarRegister } from './star-register';
 
 type Matched = Pick<LoadPlan, 'stars' | 'matchedRows' | 'newFrames' | 'usedFrames'>;

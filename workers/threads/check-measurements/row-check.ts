@@ -4,7 +4,7 @@ import type { MeasurementRow } from '@/lib/formats/measurement-row';
 import type { MeasurementTable } from '@/lib/formats/measurement-table';
 import { magnitudeErrorOfFlux, magnitudeOfFlux } from '@/lib/photometry/instrumental-magnitude';
 import { frameField, type FrameRegister } from './frame-register';
-import { numberField, type RowFile } from './row-files';
+import { numberField, type RowFile } from '../row-files';
 import type { StarRegister } from './star-register';
 
 export interface RowCheck {

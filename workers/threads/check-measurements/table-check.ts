@@ -9,7 +9,7 @@ import { matchStars } from './match-stars';
 import type { CheckResult, Slice } from '@/lib/contracts/measurement-check';
 import type { CheckOrder } from './messages';
 import { rowCheck } from './row-check';
-import { rowFile, textField } from './row-files';
+import { rowFile, textField } from '../row-files';
 import { starRegister } from './star-register';
 
 /** Comments that are kept. [characters]; the original holds them all */

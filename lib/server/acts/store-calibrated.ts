@@ -129,7 +129,7 @@ async function tellInvestigators(tx: Tx, night: CalibratedNight, news: News): Pr
       solution: night.solution.number,
       bands: news.bands,
       isAgain,
-      href: `${environment().baseUrl}/nights/${name.publicId}/calibrated?programme=${encodeURIComponent(programme)}`,
+      href: `${environment().baseUrl}/nights/${name.publicId}/results?programme=${encodeURIComponent(programme)}`,
     });
     await postMail(tx, {
       ...mail,

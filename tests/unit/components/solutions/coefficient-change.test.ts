@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import {
   changeInErrors,
   solutionBefore,
-} from '../../../../app/(desk)/solutions/[id]/_components/coefficient-change';
+} from '@/app/_components/solutions/coefficient-change';
 import { standingOf, summaryWords } from '@/app/_components/solutions/solution-words';
 import { coefficient, solution } from './solution';
 

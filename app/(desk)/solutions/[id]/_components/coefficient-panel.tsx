@@ -4,7 +4,7 @@ import { Panel } from '@/app/_components/ui/panel';
 import type { Solution, SolutionBand, SolutionCoefficient } from '@/lib/contracts/api/solution';
 import { bands, type Band } from '@/lib/contracts/bands';
 import { coefficientNames, coefficientWords, type ApiCoefficient } from '@/lib/contracts/coefficients';
-import { changeInErrors } from './coefficient-change';
+import { changeInErrors } from '@/app/_components/solutions/coefficient-change';
 import { CovarianceTables } from './covariance-tables';
 import { FoldOut } from './fold-out';
 

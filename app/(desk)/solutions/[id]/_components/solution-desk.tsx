@@ -13,7 +13,7 @@ import { bands, type Band } from '@/lib/contracts/bands';
 import { Choice } from './choice';
 import { plotted, selectionWords, type Selection } from './observation-list';
 import { ObservationPanel } from './observation-panel';
-import { useObservations, type Observations } from './use-observations';
+import { useObservations, type Observations } from '@/app/_components/solutions/use-observations';
 
 /** The chart library is large: it comes when there is something to draw. */
 const ResidualCharts = dynamic(() => import('./residual-charts').then((part) => part.ResidualCharts), {

@@ -4,7 +4,7 @@ import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { Panel } from '@/app/_components/ui/panel';
 import type { SolutionPage } from '@/lib/contracts/solution-page';
 import { ApprovalPanel } from './approval-panel';
-import { solutionBefore } from './coefficient-change';
+import { solutionBefore } from '@/app/_components/solutions/coefficient-change';
 import { CoefficientPanel } from './coefficient-panel';
 import { CommentPanel } from './comment-panel';
 import { EvidencePanel } from './evidence-panel';

@@ -13,6 +13,7 @@ export function NightTabs() {
   const tabs = [
     { href: home as Route, label: 'Log', count: String(log.frames.length) },
     { href: `${home}/measurements` as Route, label: 'Measurements', ...countOf(log.sets) },
+    { href: `${home}/solutions` as Route, label: 'Solutions' },
     { href: `${home}/results` as Route, label: 'Results' },
   ];
   return (

@@ -1,8 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import {
-  changeInErrors,
-  solutionBefore,
-} from '@/app/_components/solutions/coefficient-change';
+import { changeInErrors, solutionBefore } from '@/app/_components/solutions/coefficient-change';
 import { standingOf, summaryWords } from '@/app/_components/solutions/solution-words';
 import { coefficient, solution } from './solution';
 

@@ -98,7 +98,7 @@ function CoefficientCell({ coefficient, before }: CoefficientCellProps) {
   const parts = figureParts(value, error, 4);
   const change = changeInErrors(coefficient, before);
   return (
-    <Cell numeric>
+    <Cell numeric className="whitespace-normal">
       {parts.value}
       <span className="block text-ink-2">
         {parts.error === null ? null : <span className="whitespace-nowrap">± {parts.error}</span>}{' '}
@@ -110,7 +110,9 @@ function CoefficientCell({ coefficient, before }: CoefficientCellProps) {
         )}
       </span>
       {status === 'prior' && prior !== null ? (
-        <span className="block text-ink-2">prior {formatWithError(prior.value, prior.error)}</span>
+        <span className="block text-ink-2">
+          prior <span className="whitespace-nowrap">{formatWithError(prior.value, prior.error)}</span>
+        </span>
       ) : null}
     </Cell>
   );

@@ -24,6 +24,8 @@ import { ObservationTable } from './observation-table';
 interface ObservationPanelProps {
   readonly solution: string;
   readonly mayExclude: boolean;
+  /** They are still on their way. */
+  readonly isReading: boolean;
   /** Those of the chosen band and night. */
   readonly observations: readonly SolutionObservation[];
   readonly colourIndex: string | null;
@@ -36,7 +38,8 @@ const perPage = 100;
 
 /** The table of observations: what is shown of it, what is selected, and what can be done with those. */
 export function ObservationPanel(props: ObservationPanelProps) {
-  const { solution, mayExclude, observations, colourIndex, hasNights, selection, onSelect } = props;
+  const { solution, mayExclude, isReading, observations, colourIndex, hasNights, selection, onSelect } =
+    props;
   const [part, setPart] = useState<ShownPart>('all');
   const [sorting, setSorting] = useState<Sorting | null>(null);
   const [page, setPage] = useState(0);
@@ -90,7 +93,7 @@ export function ObservationPanel(props: ObservationPanelProps) {
         </span>
       </div>
       {rows.length === 0 ? (
-        <NoRows part={part} />
+        <NoRows part={part} isReading={isReading} />
       ) : (
         <ObservationTable
           rows={rows.slice(shown * perPage, (shown + 1) * perPage)}
@@ -115,7 +118,8 @@ export function ObservationPanel(props: ObservationPanelProps) {
   );
 }
 
-function NoRows({ part }: { readonly part: ShownPart }) {
+function NoRows({ part, isReading }: { readonly part: ShownPart; readonly isReading: boolean }) {
+  if (isReading) return <p className="px-3.5 py-3 text-ink-2">The observations are being read …</p>;
   if (part === 'selected') {
     return (
       <EmptyState title="None selected">

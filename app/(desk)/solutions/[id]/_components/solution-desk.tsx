@@ -85,6 +85,7 @@ export function SolutionDesk({ solution }: { readonly solution: Solution }) {
       <ObservationPanel
         solution={solution.id}
         mayExclude={solution.may.exclude}
+        isReading={observations.standing === 'reading'}
         observations={chosen}
         colourIndex={colourIndex}
         hasNights={nights.length > 1}

@@ -13,11 +13,13 @@ import type { Night } from '@/lib/contracts/api/night';
 import { callerOrSignIn } from '@/lib/server/identity/current-caller';
 import { nightPage } from '@/lib/server/reads/night-page';
 import { tonight, type TonightAt } from '@/lib/server/reads/tonight';
+import { waiting } from '@/lib/server/reads/waiting';
 import { AddressedBand } from './_components/addressed-band';
 import { bandConditions, bandFrames } from './_components/band-data';
 import { fieldsTaken } from './_components/fields-taken';
 import { nightFacts } from './_components/night-facts';
 import { OpenNightButton } from './_components/open-night-button';
+import { WaitingList } from './_components/waiting-list';
 
 export const metadata: Metadata = { title: 'Tonight' };
 
@@ -27,10 +29,16 @@ async function presentTime() {
 
 export default async function TonightPage() {
   const [caller, now] = await Promise.all([callerOrSignIn(), presentTime()]);
-  const { telescopes, leftOpen, mayOpen } = await tonight(caller, now);
+  const [{ telescopes, leftOpen, mayOpen }, waits] = await Promise.all([
+    tonight(caller, now),
+    waiting(caller),
+  ]);
+  // At the telescope the night comes first; for everybody else what there is to do.
+  const isObserver = caller.roles.has('observer');
   return (
     <>
       <PageHead title="Tonight" />
+      {isObserver ? null : <WaitingList waiting={waits} />}
       {leftOpen.length === 0 ? null : <LeftOpen nights={leftOpen} />}
       {telescopes.length === 0 ? (
         <Panel flush>
@@ -44,6 +52,7 @@ export default async function TonightPage() {
           <AtTelescope key={at.telescope.code} at={at} mayOpen={mayOpen} caller={caller} now={now} />
         ))
       )}
+      {isObserver ? <WaitingList waiting={waits} /> : null}
     </>
   );
 }

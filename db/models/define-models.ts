@@ -25,6 +25,7 @@ import { Programme } from './programme';
 import { ProgrammeMember } from './programme-member';
 import { ProgrammeTarget } from './programme-target';
 import { Remark } from './remark';
+import { SeenResult } from './seen-result';
 import { Session } from './session';
 import { SignInFailure } from './sign-in-failure';
 import { Site } from './site';
@@ -89,6 +90,7 @@ export const models = [
   SolutionExclusion,
   SolutionComment,
   Transformation,
+  SeenResult,
 ] as const;
 
 /** Binds every model to the connection and associates them. Call once for each connection. */

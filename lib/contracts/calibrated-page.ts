@@ -3,6 +3,7 @@ import type { CalibratedFlag } from '@/lib/photometry/calibrated-flags';
 import type { Verdict } from '@/lib/photometry/night-evidence';
 import type { CalibratedStar } from './api/calibrated';
 import type { Job } from './api/job';
+import { PathId } from './common';
 
 /** Columns that the list of calibrated magnitudes can be sorted by. */
 export const calibratedSorts = [
@@ -166,3 +167,7 @@ export interface CalibratedPage {
   }[];
   readonly result: CalibratedResult | NoResult;
 }
+
+/** Results that a person has opened. */
+export const SeenResults = z.object({ night: PathId, programme: z.string().max(40) });
+export type SeenResults = z.output<typeof SeenResults>;

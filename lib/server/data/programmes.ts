@@ -2,6 +2,7 @@ import 'server-only';
 import type { ProgrammeRole } from '@/lib/contracts/roles';
 import type { Scope } from '@/lib/server/policy/scope';
 import { execute, insert, select, selectOne, type Tx } from './database';
+import { visibleResults } from './visible';
 
 export interface ProgrammeRow {
   readonly id: number;
@@ -251,16 +252,24 @@ export interface ProgrammeNight {
   readonly state: string;
   /** The programme's own. */
   readonly frames: number;
+  /** Of the solution that is approved now. */
+  readonly verdict: string | null;
+  /** Stars with calibrated magnitudes by it; null while there are none, or where they are not in the scope. */
+  readonly stars: number | null;
 }
 
-/** Nights with frames of the programme, the latest first. */
-export async function nightsWith(programmeId: number): Promise<readonly ProgrammeNight[]> {
+/** Nights with frames of the programme, the latest first. The scope says whose calibrated magnitudes may be told of. */
+export async function nightsWith(scope: Scope, programmeId: number): Promise<readonly ProgrammeNight[]> {
+  const results = visibleResults(scope);
   return select<ProgrammeNight>(
-    `SELECT n.public_id AS night, DATE_FORMAT(n.date, '%Y-%m-%d') AS date, t.name AS telescope, n.state,
-            f.frames
+    `SELECT n.public_id AS night, DATE_FORMAT(n.date, '%Y-%m-%d') AS date, l.name AS telescope, n.state,
+            f.frames, r.verdict, r.stars
        FROM (SELECT night_id, COUNT(*) AS frames FROM frames WHERE programme_id = :programmeId GROUP BY night_id) f
-       JOIN nights n ON n.id = f.night_id JOIN telescopes t ON t.id = n.telescope_id
-      ORDER BY n.date DESC, t.code`,
-    { programmeId },
+       JOIN nights n ON n.id = f.night_id JOIN telescopes l ON l.id = n.telescope_id
+       LEFT JOIN (SELECT t.night_id, s.verdict, t.n_stars AS stars
+                    FROM transformations t JOIN solutions s ON s.id = t.solution_id AND s.state = 'approved'
+                   WHERE t.programme_id = :programmeId AND t.state = 'done' AND ${results.sql}) r ON r.night_id = n.id
+      ORDER BY n.date DESC, l.code`,
+    { programmeId, ...results.values },
   );
 }

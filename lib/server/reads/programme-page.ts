@@ -14,7 +14,7 @@ import {
 } from '@/lib/server/data/programmes';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { may } from '@/lib/server/policy/matrix';
-import { programmeScope } from '@/lib/server/policy/scope';
+import { dataScope, programmeScope } from '@/lib/server/policy/scope';
 
 export interface ProgrammeListed extends ProgrammeRow {
   readonly leads: readonly string[];
@@ -59,7 +59,7 @@ export async function programmePage(caller: PersonCaller, code: string): Promise
   const [members, targets, nights, people] = await Promise.all([
     membersOf([programme.id]),
     targetsOf([programme.id]),
-    nightsWith(programme.id),
+    nightsWith(dataScope(caller), programme.id),
     mayManage ? listPeople() : [],
   ]);
   const known = new Set(members.map(({ person }) => person));

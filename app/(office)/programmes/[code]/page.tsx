@@ -2,6 +2,7 @@ import type { Metadata, Route } from 'next';
 import Link from 'next/link';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
+import { formatCount, noValue } from '@/app/_components/ui/format-figure';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { PageHead } from '@/app/_components/ui/page-head';
@@ -41,7 +42,7 @@ export default async function ProgrammePage({ params }: PageProps<'/programmes/[
       <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_minmax(340px,26%)]">
         <div className="grid gap-5">
           <Targets programme={code} targets={targets} mayManage={mayManage} />
-          <Nights nights={nights} />
+          <Nights programme={code} nights={nights} />
         </div>
         <div className="grid gap-5">
           <Members programme={code} members={members} people={people} mayManage={mayManage} />
@@ -71,7 +72,12 @@ export default async function ProgrammePage({ params }: PageProps<'/programmes/[
   );
 }
 
-function Nights({ nights }: { readonly nights: Shown['nights'] }) {
+interface NightsProps {
+  readonly programme: string;
+  readonly nights: Shown['nights'];
+}
+
+function Nights({ programme, nights }: NightsProps) {
   return (
     <Panel title="Nights" note="with frames of the programme" flush>
       {nights.length === 0 ? (
@@ -87,6 +93,8 @@ function Nights({ nights }: { readonly nights: Shown['nights'] }) {
               <HeadCell>Telescope</HeadCell>
               <HeadCell>State</HeadCell>
               <HeadCell numeric>Frames</HeadCell>
+              <HeadCell>Verdict</HeadCell>
+              <HeadCell numeric>Calibrated stars</HeadCell>
             </tr>
           }
         >
@@ -101,7 +109,17 @@ function Nights({ nights }: { readonly nights: Shown['nights'] }) {
               <Cell>
                 <StateTag state={one.state} />
               </Cell>
-              <Cell numeric>{one.frames}</Cell>
+              <Cell numeric>{formatCount(one.frames)}</Cell>
+              <Cell>{one.verdict === null ? noValue : <StateTag state={one.verdict} />}</Cell>
+              <Cell numeric>
+                {one.stars === null ? (
+                  noValue
+                ) : (
+                  <Link href={resultsOf(one.night, programme)} className="underline">
+                    {formatCount(one.stars)}
+                  </Link>
+                )}
+              </Cell>
             </Row>
           ))}
         </DataTable>
@@ -109,3 +127,6 @@ function Nights({ nights }: { readonly nights: Shown['nights'] }) {
     </Panel>
   );
 }
+
+const resultsOf = (night: string, programme: string): Route =>
+  `/nights/${night}/results?programme=${encodeURIComponent(programme)}` as Route;

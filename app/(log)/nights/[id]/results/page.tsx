@@ -3,6 +3,7 @@ import { calibratedPageQuery } from '@/lib/contracts/calibrated-page';
 import { orNotFound } from '@/lib/server/http/or-not-found';
 import { callerOrSignIn } from '@/lib/server/identity/current-caller';
 import { calibratedPage } from '@/lib/server/reads/calibrated-page';
+import { MarkSeen } from './_components/mark-seen';
 import { NoResult } from './_components/no-result';
 import { ResultsView } from './_components/results-view';
 
@@ -14,5 +15,10 @@ export default async function ResultsPage({ params, searchParams }: PageProps<'/
   const query = calibratedPageQuery(values);
   const page = await orNotFound(calibratedPage(caller, id, query));
   if ('why' in page.result) return <NoResult page={page} reason={page.result} />;
-  return <ResultsView page={page} result={page.result} query={query} />;
+  return (
+    <>
+      {page.programme === null ? null : <MarkSeen night={id} programme={page.programme} />}
+      <ResultsView page={page} result={page.result} query={query} />
+    </>
+  );
 }

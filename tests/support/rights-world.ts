@@ -11,8 +11,10 @@ import { personByEmail } from '@/lib/server/data/people';
 import { newPublicId } from '@/lib/server/data/public-id';
 import { insertSolution } from '@/lib/server/data/solution-writes';
 import { callerOf } from '@/lib/server/identity/caller';
+import type { PersonCaller } from '@/lib/server/policy/caller';
 import { callApi } from './api';
 import { queueJob, untilJob } from './jobs';
+import { addStars, newResult, newSolution } from './results';
 import { newPerson, newProgramme, testPassword } from './people';
 import { root } from './scripts';
 
@@ -45,6 +47,8 @@ export interface RightsWorld {
   readonly set: string;
   /** A draft that has not been solved. */
   readonly solution: string;
+  /** A superseded solution with a magnitude of MH26B-11. */
+  readonly calibrated: string;
   /** A job of the observer's that is done. */
   readonly job: string;
   /** Bytes that the night has already. */
@@ -142,6 +146,21 @@ async function newDraft(nightId: number, createdById: number): Promise<{ id: num
   return { id, publicId };
 }
 
+/** A superseded solution with one magnitude of a programme that the PI and the co-investigator share. */
+async function newCalibrated(night: { publicId: string }, personId: number): Promise<string> {
+  const by = { personId } as PersonCaller;
+  const { id: programme } = await idOf(
+    'SELECT id, public_id AS publicId FROM programmes WHERE code = :code',
+    {
+      code: 'MH26B-11',
+    },
+  );
+  const solution = await newSolution({ night: night.publicId, number: 900, state: 'superseded', by });
+  const result = await newResult({ solution, night: night.publicId, programme });
+  await addStars(result, [{ no: 1, star: 'LV Marrow', v: 12 }]);
+  return solution.publicId;
+}
+
 /** Removes the draft, and whatever was solved since. */
 async function removeSolutions(nightId: number, firstId: number): Promise<void> {
   const values = { nightId, firstId };
@@ -161,6 +180,13 @@ async function removeSolutions(nightId: number, firstId: number): Promise<void> 
     values,
     null,
   );
+  await execute(
+    `DELETE c FROM calibrated_magnitudes c JOIN transformations t ON t.id = c.transformation_id
+      WHERE t.solution_id IN (${those})`,
+    values,
+    null,
+  );
+  await execute(`DELETE FROM transformations WHERE solution_id IN (${those})`, values, null);
   const tables = ['bands', 'observations', 'exclusions', 'comments', 'sets', 'nights'];
   for (const table of tables) {
     await execute(`DELETE FROM solution_${table} WHERE solution_id IN (${those})`, values, null);
@@ -215,6 +241,7 @@ export async function newRightsWorld(): Promise<RightsWorld> {
     condition: condition.publicId,
     set: set.publicId,
     solution: draft.publicId,
+    calibrated: await newCalibrated(night, writer),
     job: await newDoneJob(),
     table: await readFile(path.join(root, `fixtures/uploads/${date}-standards.csv`), 'utf8'),
     newRemark: async () => {

@@ -1,3 +1,4 @@
+import { downloadCalibrated } from '@/lib/contracts/api/calibrated';
 import {
   addConditions,
   correctCondition,
@@ -154,6 +155,11 @@ export const routeRights: readonly RouteRights[] = [
   row(solutions.proposeSolution, '-+-0--00', ofSolution({ body: {} })),
   row(solutions.approveSolution, '-+-0--00', ofSolution({ body: {} })),
   row(solutions.withdrawSolution, '-+-0--00', ofSolution({ body: { comment: mark } })),
+
+  row(downloadCalibrated, '+++0++00', ({ night, calibrated }) => ({
+    params: { id: night },
+    query: { solution: calibrated, format: 'csv' },
+  })),
 
   // Jobs: whose it is, and the manager.
   row(getJob, '+0+00000', ofJob),

@@ -75,8 +75,9 @@ export const downloadCalibrated = operation({
   tag: 'calibrated magnitudes',
   summary: 'Calibrated magnitudes of a night, streamed',
   description:
-    'Begins with its provenance: as lines with # before a CSV table, or as `provenance` beside `items` in JSON. The SHA-256 of the data rows is part of it.',
+    'Begins with its provenance: as lines with # before a CSV table, or as `provenance` beside `items` in JSON. The SHA-256 of the data rows is part of it. VOTable and FITS are not offered yet. In measurement tables the words saturated, saturation, sat and nonlinear of the flag column count as saturation; bad, reject, rejected, exclude and excluded leave a measurement out.',
   params: NightParams,
   query: CalibratedQuery,
   stream: ['application/json', 'text/csv'],
+  faults: ['conflict'],
 });

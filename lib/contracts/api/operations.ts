@@ -1,3 +1,4 @@
+import * as calibrated from './calibrated';
 import * as condition from './condition';
 import * as frame from './frame';
 import * as health from './health';
@@ -34,6 +35,7 @@ const files = [
   openapi,
   measurementSet,
   solution,
+  calibrated,
 ] as const;
 
 const isOperation = (value: unknown): value is Operation =>

@@ -24,6 +24,8 @@ const tags: Readonly<Record<string, string>> = {
   'time lost': 'Observing time lost, and to what',
   measurements: 'Uploaded tables of instrumental magnitudes',
   standards: 'Stars with published magnitudes on the standard system',
+  solutions: 'Fits of a night’s standards: asked, proposed, decided',
+  'calibrated magnitudes': 'Measurements of targets on the standard system',
   jobs: 'Work that the service does in its own time',
   service: 'The service itself',
 };

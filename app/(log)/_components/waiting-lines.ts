@@ -82,7 +82,7 @@ export function waitingLines(waiting: Waiting): readonly WaitingLine[] {
     ...line(
       unsolvedNights,
       counted(unsolvedNights.n, 'Night to be solved', 'Nights to be solved'),
-      (one) => ({ href: `/nights/${one.night}/measurements` as Route, words: nightWords(one) }),
+      (one) => ({ href: `/nights/${one.night}/solutions` as Route, words: nightWords(one) }),
       '/nights?state=closed' as Route,
     ),
     ...line(

@@ -106,6 +106,13 @@ export const colourCoefficients: readonly CoefficientName[] = [
   'colourTerm2',
 ];
 
+/** Coefficients that each night has of its own and that only frames can determine; the others are shared by nights. */
+export const nightCoefficients: readonly CoefficientName[] = [
+  'zeroPoint',
+  'extinction',
+  'drift',
+  'extinctionDrift',
+];
 const isSought = (term: Term): term is SoughtTerm => term.status !== 'fixed';
 
 /** Rows of one band, and the observations that cannot be among them.

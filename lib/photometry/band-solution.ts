@@ -8,11 +8,14 @@
  */
 import { factorCholesky, invertCholesky } from '@/lib/numerics/cholesky';
 import { studentTLimit } from '@/lib/numerics/student-t';
-import { type BandProblem } from './band-problem';
-import { freeCoefficients, nightCoefficients, rangeOf } from './determination';
+import { nightCoefficients, type BandProblem } from './band-problem';
+import { freeCoefficients, rangeOf } from './determination';
 import { type NightFit } from './fit-band';
 import { coefficientOrder, type CoefficientName } from './fit-model';
 import { type BandSolution, type FittedCoefficient } from './night-solution';
+
+/** What a band's own fit does not give: checks made beside it. */
+export type SideResults = Pick<BandSolution, 'leaveOneStarOut' | 'driftTest' | 'runsTest' | 'crossChecks'>;
 
 type Counts = Pick<
   BandSolution,
@@ -77,10 +80,16 @@ export function undeterminedSolution(problem: BandProblem, night: number, rows: 
  * @param problem - of the band
  * @param fit - of the night
  * @param nRejected - rows of the night that had all values and were not used [1]
+ * @param side - checks made beside the fit
  * @returns the outcome
  * @accuracy as the fit
  * @source see the head */
-export function determinedSolution(problem: BandProblem, fit: NightFit, nRejected: number): BandSolution {
+export function determinedSolution(
+  problem: BandProblem,
+  fit: NightFit,
+  nRejected: number,
+  side: SideResults,
+): BandSolution {
   const all = modelCoefficients(problem);
   const p = problem.sought.length;
   const places = all.map(({ name }) => problem.sought.findIndex((one) => one.name === name));
@@ -127,10 +136,7 @@ export function determinedSolution(problem: BandProblem, fit: NightFit, nRejecte
     dof,
     reducedChi2: dof > 0 ? fit.chi2 / dof : null,
     conditionNumber: fit.conditionNumber,
-    leaveOneStarOut: null,
-    driftTest: null,
-    runsTest: null,
-    crossChecks: { bouguer: [], highLow: null, colourPairs: null },
+    ...side,
   };
 }
 

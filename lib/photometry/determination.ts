@@ -9,19 +9,12 @@
  * | colour term, quadratic one, second-order extinction, free | range of colour ≥ limit over the nights that share it; stars: one more than there are free terms in colour alone |
  * | all free terms | more observations than terms |
  */
-import { colourCoefficients, type BandProblem } from './band-problem';
+import { colourCoefficients, nightCoefficients, type BandProblem } from './band-problem';
 import { colourIndexWords, coefficientWords, counted, listed, sentence } from './finding-words';
 import { rowsByNight, sharesFrames } from './fit-band';
 import { type CoefficientName, type FitLimits } from './fit-model';
 import { type Finding, type Range } from './night-solution';
 
-/** Terms that differ between nights; the others are shared. */
-export const nightCoefficients: readonly CoefficientName[] = [
-  'zeroPoint',
-  'extinction',
-  'drift',
-  'extinctionDrift',
-];
 const airmassCoefficients: readonly CoefficientName[] = [
   'extinction',
   'secondOrderExtinction',

@@ -12,13 +12,16 @@
  * Sources: Cook and Weisberg 1982, Residuals and Influence in Regression, section 2.2 (deletion residuals); taking rows
  * back in by their prediction: Hadi and Simonoff 1993, Journal of the American Statistical Association 88, 1264.
  */
+import { type Prior } from '@/lib/numerics/generalised-least-squares';
+import { median, scaleByMad } from '@/lib/numerics/robust';
 import { studentTLimit } from '@/lib/numerics/student-t';
-import { designOf, type BandProblem } from './band-problem';
+import { colourCoefficients, designOf, nightCoefficients, type BandProblem } from './band-problem';
+import { rangeOf } from './determination';
 import { fitBand, modelPriors, rowsByNight, type BandFit, type NightFit } from './fit-band';
 import { type FitLimits } from './fit-model';
 import { deletionOf, pick, predictionOf, viewNight, type Shift } from './night-view';
 import { findStructures, normalTail, type Structure } from './rejection-structures';
-import { startRobustly } from './robust-start';
+import { startRobustly, type RobustStart } from './robust-start';
 import { overrules } from './standard-observations';
 
 export type RowVerdict =
@@ -68,12 +71,13 @@ export function fitBelieved(problem: BandProblem, rows: Int32Array, options: Rej
     fit = fitBand(problem, used);
   }
   for (let round = 0; ; round += 1) {
+    const inFit = new Set(used);
     const judged = fit.kind === 'determined' ? judge(problem, rows, fit.nights, options.limits) : null;
     if (judged === null) return { fit, used, ...unjudged(problem), weights, converged: true };
     const next = usable.filter(
       (row) =>
         problem.overrule[row] === overrules.keepIn ||
-        (judged.verdicts[row]?.kind === 'believed' && (round < onlyOutFrom || used.includes(row))),
+        (judged.verdicts[row]?.kind === 'believed' && (round < onlyOutFrom || inFit.has(row))),
     );
     const isSame = next.length === used.length && next.every((row, i) => row === used[i]);
     if (isSame || round === maxRounds) return { fit, used, ...judged, weights, converged: isSame };
@@ -89,26 +93,37 @@ const unjudged = ({ observation }: BandProblem): Pick<Rejection, 'verdicts' | 's
   structures: [],
 });
 
-/** Rows within the limit of the robust start of their night. */
+/** Rows within the limit of the robust start of their night. Of several nights each starts by itself; a night whose
+ * colours say too little takes what the others found of the shared coefficients. */
 function startingRows(
   problem: BandProblem,
   usable: Int32Array,
   { limits, seed }: RejectionOptions,
 ): { readonly start: Int32Array; readonly weights: Float64Array } {
-  const weights = new Float64Array(problem.observation.length).fill(Number.NaN);
-  const kept: number[] = [];
-  for (const { rows } of rowsByNight(problem, usable)) {
-    const robust = startRobustly({
+  const startOf = (rows: Int32Array, priors: readonly Prior[]): RobustStart | null =>
+    startRobustly({
       design: designOf(problem, rows),
       columns: problem.sought.length,
       response: pick(problem.response, rows),
       rowSigma: Float64Array.from(rows, (row) =>
         Math.hypot(problem.sigma[row]!, problem.starSigma[problem.star[row]!]!),
       ),
-      priors: modelPriors(problem),
+      priors,
       bisquare: limits.bisquare,
       seed,
     });
+  const nights = rowsByNight(problem, usable);
+  const priors = modelPriors(problem);
+  const isFull = nights.map(({ rows }) => {
+    const { min, max } = rangeOf(problem.colour, rows) ?? { min: 0, max: 0 };
+    return nights.length === 1 || max - min >= limits.colourRange;
+  });
+  const starts = nights.map(({ rows }, k) => (isFull[k] ? startOf(rows, priors) : null));
+  const borrowed = [...priors, ...sharedPriors(problem, starts)];
+  const weights = new Float64Array(problem.observation.length).fill(Number.NaN);
+  const kept: number[] = [];
+  for (const [k, { rows }] of nights.entries()) {
+    const robust = starts[k] ?? (isFull[k] ? null : startOf(rows, borrowed));
     for (let i = 0; i < rows.length; i += 1) {
       const row = rows[i]!;
       if (robust !== null) weights[row] = robust.weights[i]!;
@@ -117,6 +132,22 @@ function startingRows(
     }
   }
   return { start: Int32Array.from(kept).sort(), weights };
+}
+
+/** Size of coefficients in colour where nothing at all is known of them. Common practice, no source. */
+const usualColourTerm = 0.1;
+/** To so much the starts of single nights are trusted at best. Our own rule. */
+const leastSpread = 0.01;
+
+/** The shared coefficients as the starts of the nights found them, for nights that cannot find them. */
+function sharedPriors({ sought }: BandProblem, starts: readonly (RobustStart | null)[]): readonly Prior[] {
+  return sought.flatMap(({ name, term }, column) => {
+    if (term.status === 'prior' || !colourCoefficients.includes(name)) return [];
+    const values = starts.flatMap((start) => (start === null ? [] : [start.coefficients[column]!]));
+    if (values.length === 0) return [{ column, value: 0, sigma: usualColourTerm }];
+    const value = median(values);
+    return [{ column, value, sigma: Math.max(leastSpread, scaleByMad(values, value)) }];
+  });
 }
 
 function judge(
@@ -158,15 +189,7 @@ function frameDegrees(problem: BandProblem, { rows, hasFrameScatter }: NightFit)
   if (!hasFrameScatter) return Math.max(1, rows.length - problem.sought.length);
   const frames = new Set(Array.from(rows, (row) => problem.frame[row]!)).size;
   const between = problem.sought.filter(
-    ({ name, term }) => term.status === 'free' && frameCoefficients.has(name),
+    ({ name, term }) => term.status === 'free' && nightCoefficients.includes(name),
   ).length;
   return Math.max(1, frames - between);
 }
-
-/** Coefficients that only frames can determine. */
-const frameCoefficients: ReadonlySet<string> = new Set([
-  'zeroPoint',
-  'extinction',
-  'drift',
-  'extinctionDrift',
-]);

@@ -13,6 +13,8 @@
  * is not taken for cloud, half of its frames must stand out by 2 standard errors each. The window is then tested as
  * above. The limit counts all windows, though they overlap: it is on the safe side.
  *
+ * Frames at its edges that are rejected by themselves, to the same side, are added to it.
+ *
  * Groups compete: the one of largest |z| is taken out first and the others are tested again without its rows.
  *
  * Sources: Cook and Weisberg 1982, Residuals and Influence in Regression, section 2.2 (mean-shift model and Bonferroni's
@@ -96,10 +98,37 @@ export function findStructures(
     });
     const ratio = ({ shift, error }: Shift): number => Math.abs(shift / error);
     const [worst] = tested.sort((a, b) => ratio(b.structure) - ratio(a.structure));
-    if (worst === undefined) return found;
+    if (worst === undefined) return joinRuns(view, usable, found);
     accept(worst.structure);
     candidates = tested.slice(1).map(({ group }) => group);
   }
+}
+
+/** Frames at the edge of a run that were rejected by themselves, to the same side, belong to it: a cloud thins out. */
+function joinRuns(view: NightView, usable: Int32Array, found: readonly Structure[]): readonly Structure[] {
+  const order = frameStates(view, usable).map(({ frame }) => frame);
+  let structures = found;
+  for (const run of found.filter(({ kind }) => kind === 'run')) {
+    let grown = run;
+    for (;;) {
+      const edges = [order.indexOf(grown.frames[0]!) - 1, order.indexOf(grown.frames.at(-1)!) + 1];
+      const neighbour = structures.find(
+        ({ kind, frames, shift }) =>
+          kind === 'frame' &&
+          edges.includes(order.indexOf(frames[0]!)) &&
+          Math.sign(shift) === Math.sign(grown.shift),
+      );
+      if (neighbour === undefined) break;
+      const rows = Int32Array.from([...grown.rows, ...neighbour.rows]).sort();
+      const frames = order.filter(
+        (frame) => grown.frames.includes(frame) || neighbour.frames.includes(frame),
+      );
+      const joined: Structure = { ...grown, ...(shiftOfGroup(view, rows) ?? grown), frames, rows };
+      structures = structures.flatMap((one) => (one === neighbour ? [] : [one === grown ? joined : one]));
+      grown = joined;
+    }
+  }
+  return structures;
 }
 
 type Group = Pick<Structure, 'kind' | 'star' | 'frames' | 'rows' | 'limit'>;

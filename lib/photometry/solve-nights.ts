@@ -8,6 +8,7 @@
  * | what they can determine at all | determination.ts |
  * | robust start, mixed model, rejection until nothing changes | robust-start.ts, fit-band.ts, reject-observations.ts |
  * | what the rest can determine | determination.ts |
+ * | checks beside the fit | side-results.ts, cross-checks.ts |
  * | outcome per band and night, every observation's part in it, findings | band-solution.ts, observation-results.ts, fit-findings.ts |
  *
  * The caller sees to it that published errors are known: an observation of a star without one is not fitted, because to
@@ -22,6 +23,7 @@ import { type BandModel, type FitModel } from './fit-model';
 import { type BandSolution, type Finding, type NightSolution } from './night-solution';
 import { emptyResults, recordFit, recordMissing, recordUnfitted } from './observation-results';
 import { fitBelieved, type Rejection } from './reject-observations';
+import { sideResults } from './side-results';
 import { overrules, type StandardObservations } from './standard-observations';
 
 /** Solves the bands of a model for one night, or for several nights jointly: zero point, extinction and their drifts are
@@ -98,7 +100,7 @@ function solveBand(
     const own = every.filter((row) => problem.night[row] === night);
     const fit = fits.find((one) => one.night === night);
     if (fit === undefined) return undeterminedSolution(problem, night, own.filter(isUsable));
-    return determinedSolution(problem, fit, own.length - fit.rows.length);
+    return determinedSolution(problem, fit, own.length - fit.rows.length, sideResults(problem, fit));
   });
   if (rejection !== null) findings.push(...determinedFindings(problem, rejection, solutions, observations));
   return { bands: solutions, findings, rejection };

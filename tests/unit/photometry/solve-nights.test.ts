@@ -38,12 +38,19 @@ function expectTruth(
 }
 
 describe('solveNights', () => {
-  it('finds the truth of a clean night in five bands and rejects next to nothing', () => {
-    const night = solved({ bands: ['U', 'B', 'V', 'R', 'I'], seed: 3 }, model('U', 'B', 'V', 'R', 'I'));
-    expectTruth(night, 4);
-    for (const { nRejected, nUsed } of night.solution.bands)
-      expect(nRejected).toBeLessThanOrEqual(0.01 * nUsed);
-  });
+  it(
+    'finds the truth of a clean night in five bands and rejects next to nothing',
+    { timeout: 30_000 },
+    () => {
+      const night = solved(
+        { bands: ['U', 'B', 'V', 'R', 'I'], seed: 3, frames: 16, starsPerFrame: 6 },
+        model('U', 'B', 'V', 'R', 'I'),
+      );
+      expectTruth(night, 4);
+      for (const { nRejected, nUsed } of night.solution.bands)
+        expect(nRejected).toBeLessThanOrEqual(0.01 * nUsed);
+    },
+  );
 
   it('one observation in ten being grossly wrong does not move the coefficients by more than their errors', () => {
     const night = solved({

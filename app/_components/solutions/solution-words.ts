@@ -38,6 +38,11 @@ export function summaryWords(solution: Solution): string {
   ].join(', ');
 }
 
+/** A colour index as people write it: `B−V` of `BV`. */
+export function indexWords(index: string): string {
+  return /^[A-Z]{2}$/.test(index) ? `${index.slice(0, 1)}−${index.slice(1)}` : index;
+}
+
 export type SolveStanding = 'running' | 'not finished' | 'undetermined' | 'solved';
 
 /** How far a solution has come. */

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { changeInErrors, solutionBefore } from '@/app/_components/solutions/coefficient-change';
-import { standingOf, summaryWords } from '@/app/_components/solutions/solution-words';
+import { indexWords, standingOf, summaryWords } from '@/app/_components/solutions/solution-words';
 import { coefficient, solution } from './solution';
 
 describe('the change of a coefficient', () => {
@@ -33,6 +33,11 @@ describe('the solution before', () => {
 });
 
 describe('a solution in words', () => {
+  it('writes a colour index as a difference', () => {
+    expect(indexWords('BV')).toBe('B−V');
+    expect(indexWords('B−V')).toBe('B−V');
+  });
+
   it('is one line of model, bands, airmass and counts', () => {
     expect(summaryWords(solution())).toBe(
       'Mixed model, B and V, airmass after Young 1994, 212 observations of 37 standards on 40 frames, 9 rejected',

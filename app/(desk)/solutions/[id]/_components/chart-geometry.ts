@@ -1,7 +1,7 @@
 import type { ResidualPlot, ResidualPoint } from './residual-points';
 
 /** Where the axes leave room for the marks, px. */
-export const chart = { height: 212, top: 8, right: 10, bottom: 2, yAxis: 46, xAxis: 38 } as const;
+export const chart = { height: 212, top: 8, right: 20, bottom: 2, yAxis: 46, xAxis: 38 } as const;
 
 export interface Box {
   readonly x1: number;

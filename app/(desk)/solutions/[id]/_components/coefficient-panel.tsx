@@ -38,7 +38,7 @@ export function CoefficientPanel({ title, found, before }: CoefficientPanelProps
       <DataTable caption={title} head={<Head solved={solved} />}>
         {names.map((name) => (
           <Row key={name} className="align-top">
-            <Cell heading className="whitespace-normal">
+            <Cell heading className="whitespace-normal!">
               {coefficientWords[name].title}
               <span className="block text-small text-ink-2">{coefficientWords[name].unit}</span>
             </Cell>
@@ -98,7 +98,7 @@ function CoefficientCell({ coefficient, before }: CoefficientCellProps) {
   const parts = figureParts(value, error, 4);
   const change = changeInErrors(coefficient, before);
   return (
-    <Cell numeric className="whitespace-normal">
+    <Cell numeric className="whitespace-normal!">
       {parts.value}
       <span className="block text-ink-2">
         {parts.error === null ? null : <span className="whitespace-nowrap">± {parts.error}</span>}{' '}

@@ -19,7 +19,7 @@ export function CovarianceTables({ band, found }: CovarianceTablesProps) {
       <DataTable caption={`Intervals in ${band}`} head={<IntervalHead />}>
         {found.coefficients.map(({ name, interval_95, variance_inflation }, index) => (
           <Row key={name}>
-            <Cell heading className="whitespace-normal">
+            <Cell heading className="whitespace-normal!">
               {titles[index]}
             </Cell>
             <Cell numeric>{interval_95 === null ? noValue : `± ${formatPlain(interval_95, 2)}`}</Cell>
@@ -71,7 +71,7 @@ function Matrix({ caption, titles, rows, digits }: MatrixProps) {
         <tr>
           <HeadCell>{caption.split(' ')[0]}</HeadCell>
           {titles.map((title) => (
-            <HeadCell key={title} numeric className="max-w-20 whitespace-normal">
+            <HeadCell key={title} numeric className="max-w-20 whitespace-normal!">
               {title}
             </HeadCell>
           ))}
@@ -80,7 +80,7 @@ function Matrix({ caption, titles, rows, digits }: MatrixProps) {
     >
       {rows.map((row, index) => (
         <Row key={titles[index]}>
-          <Cell heading className="whitespace-normal">
+          <Cell heading className="whitespace-normal!">
             {titles[index]}
           </Cell>
           {row.map((value, column) => (

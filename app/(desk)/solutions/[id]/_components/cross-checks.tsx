@@ -71,7 +71,7 @@ export function CrossChecks({ band, found }: CrossChecksProps) {
           })}
           {checks.map(({ name, of, value, error, n }) => (
             <Row key={name}>
-              <Cell heading className="whitespace-normal">
+              <Cell heading className="whitespace-normal!">
                 {name}
               </Cell>
               <Cell>{of}</Cell>

@@ -1,3 +1,4 @@
+import { indexWords } from '@/app/_components/solutions/solution-words';
 import { Finding } from '@/app/_components/ui/finding';
 import { formatFixed, formatWithError, noValue } from '@/app/_components/ui/format-figure';
 import { formatMinutes } from '@/app/_components/ui/format-time';
@@ -67,7 +68,7 @@ function coverage(solved: readonly Solved[]): readonly KeyValue[] {
   return [
     ...rowsOf('Airmass covered', solved, ({ airmass }) => range(airmass)),
     ...rowsOf('Colour covered', solved, ({ colour, colour_index }) =>
-      colour === null ? null : `${colour_index} ${range(colour) ?? noValue}`,
+      colour === null ? null : `${indexWords(colour_index)} ${range(colour) ?? noValue}`,
     ),
     ...rowsOf('Time covered, UTC', solved, ({ utc }) =>
       utc === null ? null : `${formatMinutes(utc.first)} to ${formatMinutes(utc.last)}`,

@@ -24,7 +24,8 @@ function subjectWords({ coefficient, band, night_date }: SolutionFinding): strin
   const what = coefficient === null ? '' : coefficientWords[coefficient].title;
   const where = band === null ? '' : what === '' ? `Band ${band}` : ` in ${band}`;
   const when = night_date === null ? '' : ` on ${formatDateInWords(night_date)}`;
-  return `${what}${where}${when}`.trim();
+  const words = `${what}${where}${when}`.trim();
+  return words.charAt(0).toUpperCase() + words.slice(1);
 }
 
 function OneFinding({ finding }: { readonly finding: SolutionFinding }) {

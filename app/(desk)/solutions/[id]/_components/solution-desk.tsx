@@ -2,6 +2,7 @@
 
 import dynamic from 'next/dynamic';
 import { useMemo, useState } from 'react';
+import { indexWords } from '@/app/_components/solutions/solution-words';
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Button } from '@/app/_components/ui/button';
 import { EmptyState } from '@/app/_components/ui/empty-state';
@@ -99,7 +100,7 @@ export function SolutionDesk({ solution }: { readonly solution: Solution }) {
 function sharedIndex(solution: Solution, names: readonly Band[]): string | null {
   const indices = new Set(names.map((name) => solution.bands[name]?.colour_index ?? ''));
   const [index] = indices;
-  return indices.size === 1 && index !== undefined && index !== '' ? index : null;
+  return indices.size === 1 && index !== undefined && index !== '' ? indexWords(index) : null;
 }
 
 function ResidualsNote({ solved, words }: { readonly solved: readonly Band[]; readonly words: string }) {

@@ -24,6 +24,7 @@ export const Job = z
       .string()
       .meta({ description: 'What it works on, in words', example: 'standards before midnight' }),
     set: PublicId.nullable().meta({ description: 'The measurement set it works on' }),
+    solution: PublicId.nullable().meta({ description: 'The solution it works on' }),
     state: JobState,
     progress: z.number().min(0).max(1),
     message: z.string().meta({ description: 'What is being done' }),

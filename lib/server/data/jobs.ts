@@ -62,6 +62,8 @@ export interface JobRow {
   readonly mailRecipient: string | null;
   readonly setName: string | null;
   readonly setPublicId: string | null;
+  readonly solutionNumber: number | null;
+  readonly solutionPublicId: string | null;
   readonly createdAt: Date;
   readonly startedAt: Date | null;
   readonly finishedAt: Date | null;
@@ -72,6 +74,7 @@ const jobRows = `SELECT j.id, j.public_id AS publicId, j.kind, j.payload, j.stat
        j.cancel_requested_at IS NOT NULL AS isCancelRequested, j.created_by_id AS createdById, p.name AS createdBy,
        j.programme_id AS programmeId, n.public_id AS nightPublicId, n.date AS nightDate, t.code AS telescope,
        m.subject AS mailSubject, m.recipient AS mailRecipient, s.name AS setName, s.public_id AS setPublicId,
+       q.number AS solutionNumber, q.public_id AS solutionPublicId,
        j.created_at AS createdAt, j.started_at AS startedAt, j.finished_at AS finishedAt
   FROM jobs j
   LEFT JOIN people p ON p.id = j.created_by_id
@@ -80,7 +83,9 @@ const jobRows = `SELECT j.id, j.public_id AS publicId, j.kind, j.payload, j.stat
   LEFT JOIN mails m ON j.kind = 'send-mail'
     AND m.public_id = CONVERT(JSON_VALUE(j.payload, '$.mail') USING ascii) COLLATE ascii_bin
   LEFT JOIN measurement_sets s ON j.kind = 'check-measurements'
-    AND s.public_id = CONVERT(JSON_VALUE(j.payload, '$.set') USING ascii) COLLATE ascii_bin`;
+    AND s.public_id = CONVERT(JSON_VALUE(j.payload, '$.set') USING ascii) COLLATE ascii_bin
+  LEFT JOIN solutions q ON j.kind IN ('solve-night', 'transform-targets')
+    AND q.public_id = CONVERT(JSON_VALUE(j.payload, '$.solution') USING ascii) COLLATE ascii_bin`;
 
 /** One job; asks for no scope, because whoever calls asks policy with what it finds. */
 export function findJob(publicId: string, tx: Tx | null = null): Promise<JobRow | null> {

@@ -4,7 +4,7 @@ import { select, selectOne } from './database';
 import { rowArrays, type RowArray } from './row-arrays';
 
 /** A set of targets holds targets only; in a mixed set they are what is not on a frame of standards. */
-const isTargetRow = `m.state IN ('matched', 'in use') AND (m.kind = 'target' OR (m.kind = 'mixed' AND f.type <> 'standard'))`;
+export const isTargetRow = `m.state IN ('matched', 'in use') AND (m.kind = 'target' OR (m.kind = 'mixed' AND f.type <> 'standard'))`;
 
 export interface TargetFrameRow {
   readonly id: number;

@@ -1,16 +1,13 @@
 import 'server-only';
 import { execute, select, selectOne, type Tx } from './database';
 import { newPublicId } from './public-id';
+import { isTargetRow } from './target-tables';
 
-/**
- * Rows of a night that are targets: those of sets of targets, and in mixed sets those on frames that are not a
- * standard's. `q` counts a set's rows on a frame.
- */
+/** Rows of a night that are targets; `q` counts a set's rows on a frame. */
 const targetRows = `measurement_set_frames q
   JOIN measurement_sets m ON m.id = q.set_id
   JOIN frames f ON f.id = q.frame_id
- WHERE m.night_id = :nightId AND m.state IN ('matched', 'in use')
-   AND (m.kind = 'target' OR (m.kind = 'mixed' AND f.type <> 'standard'))`;
+ WHERE m.night_id = :nightId AND ${isTargetRow}`;
 
 /** Programmes whose targets were measured in a night; null for frames that belong to none. */
 async function targetProgrammes(tx: Tx, nightId: number): Promise<readonly (number | null)[]> {
@@ -54,6 +51,24 @@ export async function withdrawTransformations(tx: Tx, solutionId: number): Promi
     { solutionId },
     tx,
   );
+}
+
+interface TargetSpan {
+  readonly airmassMin: number;
+  readonly airmassMax: number;
+  readonly utcFirst: Date;
+  readonly utcLast: Date;
+}
+
+/** What a night's targets span in airmass and time; null without any. */
+export async function targetSpan(nightId: number): Promise<TargetSpan | null> {
+  const rows = await select<TargetSpan>(
+    `SELECT MIN(f.airmass) AS airmassMin, MAX(f.airmass) AS airmassMax,
+            MIN(f.utc_mid) AS utcFirst, MAX(f.utc_mid) AS utcLast
+       FROM ${targetRows} AND f.airmass IS NOT NULL HAVING COUNT(*) > 0`,
+    { nightId },
+  );
+  return rows[0] ?? null;
 }
 
 export interface ApprovalCounts {

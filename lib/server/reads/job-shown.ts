@@ -9,6 +9,13 @@ import { may } from '@/lib/server/policy/matrix';
 const utc = (instant: Date): string => instant.toISOString();
 const utcOrNull = (instant: Date | null): string | null => instant && instant.toISOString();
 
+/** What a job works on, in words. */
+function aboutOf(row: JobRow): string {
+  if (row.mailSubject !== null) return `${row.mailSubject} (to ${row.mailRecipient ?? ''})`;
+  if (row.solutionNumber !== null) return `solution ${row.solutionNumber}`;
+  return row.setName ?? '';
+}
+
 /** A job as this caller sees it. */
 export function shownJob(caller: Caller, row: JobRow): Job {
   const error = JobError.safeParse(row.error);
@@ -16,9 +23,9 @@ export function shownJob(caller: Caller, row: JobRow): Job {
     id: row.publicId,
     kind: row.kind,
     title: isJobKind(row.kind) ? jobTitles[row.kind] : row.kind,
-    about:
-      row.mailSubject === null ? (row.setName ?? '') : `${row.mailSubject} (to ${row.mailRecipient ?? ''})`,
+    about: aboutOf(row),
     set: row.setPublicId,
+    solution: row.solutionPublicId,
     state: row.state,
     progress: row.progress,
     message: row.message,

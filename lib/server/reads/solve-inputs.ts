@@ -2,6 +2,7 @@ import 'server-only';
 import { createHash } from 'node:crypto';
 import type { SolutionFinding } from '@/lib/contracts/api/solution';
 import type { VerdictLimits } from '@/lib/photometry/night-evidence';
+import type { Range } from '@/lib/photometry/night-solution';
 import { bandPlace } from '@/lib/photometry/bands';
 import { overrules, type StandardObservations } from '@/lib/photometry/standard-observations';
 import { readSettings } from '@/lib/contracts/settings';
@@ -22,6 +23,7 @@ import {
 } from '@/lib/server/data/solve-inputs';
 import { exclusionsOf, type StoredExclusion } from '@/lib/server/data/solution-writes';
 import { requireSolution, type SolutionRow } from '@/lib/server/data/solutions';
+import { targetSpan } from '@/lib/server/data/transformations';
 import type { JobCaller } from '@/lib/server/policy/caller';
 import { dataScope } from '@/lib/server/policy/scope';
 import { frameAirmasses, type FrameAirmass } from './frame-airmasses';
@@ -49,6 +51,8 @@ export interface SolveInputs {
   readonly findings: readonly SolutionFinding[];
   readonly history: Awaited<ReturnType<typeof extinctionHistory>>;
   readonly limits: VerdictLimits;
+  /** What the targets of its own night span; null without any, or without standards to count the hours from. */
+  readonly targets: { readonly airmass: Range; readonly hours: Range } | null;
 }
 
 /** Everything that a night is solved with, as it is at this moment. */
@@ -94,6 +98,17 @@ export async function solveInputs(caller: JobCaller, id: string): Promise<SolveI
     findings: leftOut(parts),
     history,
     limits: readSettings(house?.settings).verdict,
+    targets: await targetRanges(solution.nightId, utcZero[0] ?? null),
+  };
+}
+
+async function targetRanges(nightId: number, utcZero: Date | null): Promise<SolveInputs['targets']> {
+  const span = await targetSpan(nightId);
+  if (span === null || utcZero === null) return null;
+  const hours = (utc: Date): number => (utc.getTime() - utcZero.getTime()) / hour_ms;
+  return {
+    airmass: { min: span.airmassMin, max: span.airmassMax },
+    hours: { min: hours(span.utcFirst), max: hours(span.utcLast) },
   };
 }
 

@@ -51,11 +51,17 @@ const countable = 10;
 const triesOf = ({ tries, max_tries }: Job): string =>
   max_tries > countable ? String(tries) : `${tries} of ${max_tries}`;
 
+function subjectOf({ set, solution }: Job): Route | null {
+  if (set !== null) return `/measurement-sets/${set}` as Route;
+  return solution === null ? null : (`/solutions/${solution}` as Route);
+}
+
 function About({ job }: { readonly job: Job }) {
   const night = job.night_date === null ? null : `${job.telescope ?? ''} ${job.night_date}`.trim();
+  const subject = subjectOf(job);
   return (
     <>
-      {job.set === null ? job.about : <Link href={`/measurement-sets/${job.set}` as Route}>{job.about}</Link>}
+      {subject === null ? job.about : <Link href={subject}>{job.about}</Link>}
       {job.about !== '' && night !== null ? ', ' : null}
       {night === null || job.night === null ? null : (
         <Link className="whitespace-nowrap" href={`/nights/${job.night}` as Route}>

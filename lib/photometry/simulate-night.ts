@@ -24,6 +24,8 @@ import type { TargetMeasurements } from './target-measurements';
 export interface NightRecipe {
   /** An integer of 32 bits. */
   readonly seed: number;
+  /** Seed of the standard stars, for nights that share them; that of the night when absent. */
+  readonly starSeed?: number;
   /** Truth; hours count from the mean time of the standards. One frame of each band at every visit. */
   readonly bands: Readonly<Partial<Record<BandName, SimulatedBand>>>;
   readonly nFields: number;
@@ -55,8 +57,8 @@ export interface SimulatedNight {
   };
 }
 
-/** Parts of the seed: plan of the standards, plan of the targets. The measurements have seeds of their own. */
-const streams = { standards: 10, targets: 11 } as const;
+/** Parts of the seed: plan of the standards, plan of the targets, standard stars. The measurements have seeds of their own. */
+const streams = { standards: 10, targets: 11, stars: 12 } as const;
 /** Chance that a star of the field is not measured on a frame. */
 const missed = 0.08;
 const hoursPerDay = 24;
@@ -151,7 +153,8 @@ function planStandards(recipe: NightRecipe, bands: readonly BandName[]): Simulat
     });
   }
   const mean = visits.frame.reduce((sum, f) => sum + visits.hours[f]!, 0) / visits.frame.length;
-  const stars = drawStars(random, nFields * starsPerField, {
+  const starRandom = createRandom(recipe.starSeed ?? recipe.seed, streams.stars);
+  const stars = drawStars(starRandom, nFields * starsPerField, {
     V: { min: 10.4, max: 13.2 },
     BV: { min: -0.2, max: 1.6 },
     perGroup: starsPerField,

@@ -6,12 +6,13 @@ import { startDatabaseServer } from '@/tests/support/database-server';
 import { databaseEnvironment } from '@/tests/support/environment';
 import { migrateDatabase, seedReferenceData } from '@/tests/support/scripts';
 import type { Bench, Figure } from './bench';
+import { engine } from './engine.bench';
 import { figureTable, isMet } from './figure-table';
 import { latency } from './latency.bench';
 import { upload } from './upload.bench';
 
 /** In this order; every bench cleans up after itself. */
-const benches: readonly Bench[] = [upload, latency];
+const benches: readonly Bench[] = [upload, latency, engine];
 
 /** Runs the benches whose names hold one of the words given, all without words. */
 async function main(words: readonly string[]): Promise<number> {

@@ -17,6 +17,12 @@ describe('simulateNight', () => {
     );
   });
 
+  it('nights of one star seed have the same standards, measured anew', () => {
+    const [one, two] = [1, 2].map((seed) => simulateNight(nightRecipe(seed, { starSeed: 9 })).standards);
+    expect(two?.standards).toEqual(one?.standards);
+    expect(two?.instMag).not.toEqual(one?.instMag);
+  });
+
   it('visits give one frame in each band, a few stars on each, over the whole range of airmass', () => {
     const { standards } = simulateNight(nightRecipe(1));
     expect(standards.frameNumbers).toHaveLength(48);

@@ -109,6 +109,24 @@ describe('transformTargets', () => {
     expect(turned.counts).toEqual(sorted.counts);
   });
 
+  it('the worked example of lib/photometry/README.md comes out as written there', () => {
+    const frames: readonly FrameOf[] = [
+      { band: 'V', airmass: 1.2345 },
+      { band: 'B', airmass: 1.2345 },
+    ];
+    const night = targetMeasurements(frames, [
+      { star: 0, frame: 0, mag: 13.22515 },
+      { star: 0, frame: 1, mag: 14.534117 },
+    ]);
+    const unsure = [calibration('V', inV, { errors: { zeroPoint: 0.01 } }), calibration('B', inB)];
+    const found = transformTargets(night, unsure, usualOptions);
+    const printed = { absolute: 1e-6, unit: 'mag' } as const;
+    expectWithin(calibratedValue(found, 'BV'), 0.609, printed);
+    expectWithin(calibratedValue(found, 'V'), 10.574, printed);
+    expectWithin(calibratedValue(found, 'V', 'systematic'), 0.009431, printed);
+    expectWithin(calibratedValue(found, 'BV', 'systematic'), 0.009329, printed);
+  });
+
   it('a star in V alone takes the assumed colour, whose error is systematic; without one it has no magnitude', () => {
     const frames: readonly FrameOf[] = [{ band: 'V', airmass: 1.5 }];
     const night = noiselessTargets([{ V: 12, BV: 0.7 }], frames, closedForm);

@@ -145,3 +145,70 @@ export function standardNight(change: Partial<NightPlan> = {}): SimulatedNight {
     },
   };
 }
+
+/** Several nights as one set of observations; each keeps stars and frames of its own. */
+export function joinNights(nights: readonly StandardObservations[]): StandardObservations {
+  const [first] = nights;
+  if (first === undefined) throw new Error('There is no night.');
+  const floats = (of: (night: StandardObservations) => Float64Array): Float64Array =>
+    Float64Array.from(nights.flatMap((night) => [...of(night)]));
+  const shifted = (
+    of: (night: StandardObservations) => Uint32Array,
+    lengthOf: (night: StandardObservations) => number,
+  ): Uint32Array => {
+    let before = 0;
+    return Uint32Array.from(
+      nights.flatMap((night) => {
+        const places = Array.from(of(night), (place) => place + before);
+        before += lengthOf(night);
+        return places;
+      }),
+    );
+  };
+  const published = (of: 'standards' | 'standardErrors'): StandardObservations['standards'] => ({
+    V: floats((night) => night[of].V),
+    BV: floats((night) => night[of].BV),
+    UB: floats((night) => night[of].UB),
+    VR: floats((night) => night[of].VR),
+    VI: floats((night) => night[of].VI),
+  });
+  return {
+    night: Uint16Array.from(nights.flatMap(({ band }, k) => Array.from(band, () => k))),
+    star: shifted(
+      ({ star }) => star,
+      ({ starNames }) => starNames.length,
+    ),
+    frame: shifted(
+      ({ frame }) => frame,
+      ({ frameNumbers }) => frameNumbers.length,
+    ),
+    band: Uint8Array.from(nights.flatMap(({ band }) => [...band])),
+    instMag: floats(({ instMag }) => instMag),
+    instErr: floats(({ instErr }) => instErr),
+    airmass: floats(({ airmass }) => airmass),
+    hours: floats(({ hours }) => hours),
+    overrule: Uint8Array.from(nights.flatMap(({ overrule }) => [...overrule])),
+    starNames: nights.flatMap(({ starNames }) => starNames),
+    frameNumbers: Uint32Array.from(nights.flatMap(({ frameNumbers }) => [...frameNumbers])),
+    nightNames: nights.map((_, k) => `2026-03-${14 + k}`),
+    standards: published('standards'),
+    standardErrors: published('standardErrors'),
+  };
+}
+
+/** The same observations in another order, or some of them left out: `order` names the ones to take. */
+export function takeObservations(from: StandardObservations, order: readonly number[]): StandardObservations {
+  const at = <T>(column: ArrayLike<T>): T[] => order.map((o) => column[o] as T);
+  return {
+    ...from,
+    night: Uint16Array.from(at(from.night)),
+    star: Uint32Array.from(at(from.star)),
+    frame: Uint32Array.from(at(from.frame)),
+    band: Uint8Array.from(at(from.band)),
+    instMag: Float64Array.from(at(from.instMag)),
+    instErr: Float64Array.from(at(from.instErr)),
+    airmass: Float64Array.from(at(from.airmass)),
+    hours: Float64Array.from(at(from.hours)),
+    overrule: Uint8Array.from(at(from.overrule)),
+  };
+}

@@ -1,4 +1,5 @@
-import { exposureAirmass } from '@/lib/astro/exposure-airmass';
+import { airmassAt, exposureSky } from '@/lib/astro/exposure-airmass';
+import { directionOf } from '@/lib/astro/vector';
 import { FrameInput } from '@/lib/contracts/api/frame';
 import { createRandom } from '@/lib/numerics/random';
 import { instrumentalOffset, type BandCoefficients } from '@/lib/photometry/transformation-model';
@@ -120,15 +121,10 @@ export function targetTable(
   const lines = ['frame,star,ra,dec,inst_mag,inst_err,peak,flag'];
   for (const field of fields) {
     for (let index = 0; index < field.n; index += 1) {
-      const airmass = exposureAirmass('young1994', {
-        site,
-        ra: field.ra,
-        dec: field.dec,
-        utcStart: startOf(field, index),
-        exposure_s: exposure,
-      });
+      const sky = exposureSky(site, { utcStart: startOf(field, index), exposure_s: exposure });
       const band = bandOf(index);
       for (const star of starsOf(field)) {
+        const airmass = airmassAt('young1994', sky, directionOf(star.ra, star.dec));
         const offset = instrumentalOffset(truth[band], { airmass, colour: star.BV, hours: 0 });
         const err = 0.005 + 0.01 * random.uniform();
         const mag =

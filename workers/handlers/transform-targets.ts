@@ -62,15 +62,17 @@ async function transform(run: Run, inputs: TransformInputs, folder: string): Pro
     if (!own || state !== 'queued') continue;
     const part = results.length / inputs.transformations.length;
     // Counted before the columns move to the thread.
-    const nMeasurements = own.measurements.star.length;
+    const nRead = own.measurements.star.length;
     run.progress(
       share.read + part * (share.transformed - share.read),
-      `Transforming ${figure(nMeasurements)} measurements${programme === null ? '' : ` of ${programme}`}`,
+      `Transforming ${figure(nRead)} measurements${programme === null ? '' : ` of ${programme}`}`,
     );
     const ownFolder = path.join(folder, String(id));
     await mkdir(ownFolder);
-    const { nStars, slices } = await inThread({ ...orderOf(inputs, own), folder: ownFolder }, run.signal);
-    results.push({ id, nStars, slices, nMeasurements, nLeftOut: own.nLeftOut });
+    const order = { ...orderOf(inputs, own), folder: ownFolder };
+    const { nStars, slices, nWithoutAirmass } = await inThread(order, run.signal);
+    const nMeasurements = nRead - nWithoutAirmass;
+    results.push({ id, nStars, slices, nMeasurements, nLeftOut: own.nLeftOut + nWithoutAirmass });
   }
   const stars = results.reduce((sum, { nStars }) => sum + nStars, 0);
   const stored = await storeCalibrated(run.caller, inputs, {
@@ -88,6 +90,8 @@ async function transform(run: Run, inputs: TransformInputs, folder: string): Pro
 
 const orderOf = (inputs: TransformInputs, own: TargetColumns): Omit<TransformOrder, 'folder'> => ({
   measurements: own.measurements,
+  formula: inputs.formula,
+  skies: own.skies,
   names: own.names,
   ra: own.ra,
   dec: own.dec,

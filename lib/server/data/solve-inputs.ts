@@ -49,9 +49,6 @@ export interface SolveFrame {
   readonly nightId: number;
   readonly number: number;
   readonly band: Band | null;
-  /** J2000 [deg] */
-  readonly ra: number | null;
-  readonly dec: number | null;
   readonly utcStart: Date;
   readonly utcMid: Date;
   /** [s] */
@@ -63,8 +60,8 @@ export interface SolveFrame {
 export async function framesOfSets(setIds: readonly number[]): Promise<readonly SolveFrame[]> {
   if (setIds.length === 0) return [];
   return select<SolveFrame>(
-    `SELECT f.id, f.night_id AS nightId, f.number, f.band, f.ra, f.decl AS \`dec\`, f.utc_start AS utcStart,
-            f.utc_mid AS utcMid, f.exposure, f.version
+    `SELECT f.id, f.night_id AS nightId, f.number, f.band, f.utc_start AS utcStart, f.utc_mid AS utcMid,
+            f.exposure, f.version
        FROM frames f
       WHERE f.id IN (SELECT q.frame_id FROM measurement_set_frames q WHERE q.set_id IN (:setIds))
       ORDER BY f.utc_mid, f.number, f.id`,
@@ -110,6 +107,12 @@ export async function readStandardRows(setId: number, into: StandardColumns): Pr
 export interface PublishedStar {
   readonly id: number;
   readonly name: string;
+  /** J2000, at the epoch 2000.0 [deg] */
+  readonly ra: number;
+  readonly dec: number;
+  /** [mas/yr] */
+  readonly pmRa: number | null;
+  readonly pmDec: number | null;
   readonly v: number;
   readonly bv: number;
   readonly ub: number | null;
@@ -124,11 +127,12 @@ export interface PublishedStar {
   readonly citation: string;
 }
 
-/** Published magnitudes of the standards. */
+/** Published magnitudes and places of the standards. */
 export async function publishedStars(ids: readonly number[]): Promise<readonly PublishedStar[]> {
   if (ids.length === 0) return [];
   return select<PublishedStar>(
-    `SELECT s.id, s.name, s.v, s.bv, s.ub, s.vr, COALESCE(s.vi, s.vr + s.ri) AS vi,
+    `SELECT s.id, s.name, s.ra, s.decl AS \`dec\`, s.pm_ra AS pmRa, s.pm_dec AS pmDec,
+            s.v, s.bv, s.ub, s.vr, COALESCE(s.vi, s.vr + s.ri) AS vi,
             COALESCE(s.e_v, o.default_error) AS eV, COALESCE(s.e_bv, o.default_error) AS eBv,
             COALESCE(s.e_ub, o.default_error) AS eUb, COALESCE(s.e_vr, o.default_error) AS eVr,
             COALESCE(s.e_vi, o.default_error) AS eVi, o.citation

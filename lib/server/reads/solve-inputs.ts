@@ -26,7 +26,7 @@ import { requireSolution, type SolutionRow } from '@/lib/server/data/solutions';
 import { targetSpan } from '@/lib/server/data/transformations';
 import type { JobCaller } from '@/lib/server/policy/caller';
 import { dataScope } from '@/lib/server/policy/scope';
-import { frameAirmasses, type FrameAirmass } from './frame-airmasses';
+import { standardAirmasses, type StandardAirmasses } from './standard-airmasses';
 
 /** Which row of which set each observation is, shape (n) each: the fit knows nothing of it. */
 export interface ObservationKeys {
@@ -67,7 +67,6 @@ export async function solveInputs(caller: JobCaller, id: string): Promise<SolveI
     extinctionHistory(solution.telescopeId, solution.nightId),
   ]);
   const frames = await framesOfSets(sets.map((set) => set.id));
-  const airmasses = await frameAirmasses(solution.model.airmassFormula, instrument, frames);
   const rows: StandardColumns = {
     setId: [],
     rowNo: [],
@@ -80,8 +79,12 @@ export async function solveInputs(caller: JobCaller, id: string): Promise<SolveI
   const bands = new Set<string | null>(solution.model.fit.bands.map(({ band }) => band));
   // A frame of a band that was not asked for is none of this solve's; one without a band might be.
   const asked = frames.filter(({ band }) => band === null || bands.has(band));
+  const published = await publishedStars([...new Set(rows.standardId)]);
+  const observed = { rows, frames: asked, stars: published };
+  const airmasses = await standardAirmasses(solution.model.airmassFormula, instrument, observed);
   const order = inOrderOfTime(rows, asked, airmasses);
-  const stars = await publishedStars([...new Set(order.map((row) => rows.standardId[row] ?? 0))]);
+  const inOrder = new Set(order.map((row) => rows.standardId[row]));
+  const stars = published.filter((star) => inOrder.has(star.id));
   const parts = { solution, nights, frames: asked, airmasses, rows, order, stars, exclusions };
   const { observations, keys, utcZero } = assemble(parts);
   const used = new Set(keys.frameId);
@@ -115,7 +118,7 @@ async function targetRanges(nightId: number, utcZero: Date | null): Promise<Solv
 interface Parts {
   readonly nights: readonly SolveNight[];
   readonly frames: readonly SolveFrame[];
-  readonly airmasses: ReadonlyMap<number, FrameAirmass>;
+  readonly airmasses: StandardAirmasses;
   readonly rows: StandardColumns;
   /** Places in `rows` of the observations, in order of time. */
   readonly order: readonly number[];
@@ -123,24 +126,19 @@ interface Parts {
   readonly exclusions: readonly StoredExclusion[];
 }
 
-/** Places of the rows whose frame has an airmass, in order of time; on one frame as they stand in the file. */
+/** Places of the rows that have an airmass, in order of time; on one frame as they stand in the file. */
 function inOrderOfTime(
   rows: StandardColumns,
   frames: readonly SolveFrame[],
-  airmasses: ReadonlyMap<number, FrameAirmass>,
+  { airmass }: StandardAirmasses,
 ): readonly number[] {
-  const ranks = new Map(
-    frames.filter(({ id }) => hasAirmass(airmasses.get(id))).map(({ id }, rank) => [id, rank]),
-  );
+  const ranks = new Map(frames.map(({ id }, rank) => [id, rank]));
   const rank = (row: number): number => ranks.get(rows.frameId[row] ?? 0) ?? -1;
   return rows.frameId
     .map((_, row) => row)
-    .filter((row) => rank(row) >= 0)
+    .filter((row) => !Number.isNaN(airmass[row]))
     .sort((a, b) => rank(a) - rank(b) || a - b);
 }
-
-const hasAirmass = (found: FrameAirmass | undefined): found is { readonly airmass: number } =>
-  found !== undefined && 'airmass' in found;
 
 const hour_ms = 3_600_000;
 
@@ -181,10 +179,7 @@ function assemble(parts: Parts): Assembled {
     band: Uint8Array.from(observed, ({ band }) => bandPlace[requireFound(band ?? undefined, 'band')]),
     instMag: Float64Array.from(column('instMag')),
     instErr: Float64Array.from(column('instErr')),
-    airmass: Float64Array.from(observed, ({ id }) => {
-      const found = airmasses.get(id);
-      return hasAirmass(found) ? found.airmass : NaN;
-    }),
+    airmass: Float64Array.from(order, (row) => airmasses.airmass[row] ?? NaN),
     hours: Float64Array.from(
       observed,
       ({ utcMid }, row) => (utcMid.getTime() - (utcZero[night[row] ?? 0] ?? NaN)) / hour_ms,
@@ -258,16 +253,15 @@ function hashOf(observations: StandardObservations): string {
 const mostNamed = 8;
 
 /** One finding a night and cause, for the frames whose standards the fit could not be given. */
-function leftOut({ nights, frames, airmasses, rows }: Parts): readonly SolutionFinding[] {
-  const measured = new Set(rows.frameId);
+function leftOut({ nights, frames, airmasses }: Parts): readonly SolutionFinding[] {
   const causes = new Map<string, { date: string; why: string; numbers: number[] }>();
   for (const frame of frames) {
-    const found = airmasses.get(frame.id);
-    if (found === undefined || hasAirmass(found) || !measured.has(frame.id)) continue;
+    const why = airmasses.why.get(frame.id);
+    if (why === undefined) continue;
     const date = nights.find(({ id }) => id === frame.nightId)?.date ?? '';
-    const cause = causes.get(`${date} ${found.why}`) ?? { date, why: found.why, numbers: [] };
+    const cause = causes.get(`${date} ${why}`) ?? { date, why, numbers: [] };
     cause.numbers.push(frame.number);
-    causes.set(`${date} ${found.why}`, cause);
+    causes.set(`${date} ${why}`, cause);
   }
   return [...causes.values()].map(({ date, why, numbers }) => {
     const named = numbers.slice(0, mostNamed).join(', ') + (numbers.length > mostNamed ? ' and others' : '');
@@ -278,7 +272,7 @@ function leftOut({ nights, frames, airmasses, rows }: Parts): readonly SolutionF
       band: null,
       night_date: date,
       coefficient: null,
-      reason: `${frame} ${why}, so its standards were left out.`,
+      reason: `${frame} ${why}, so standards on it were left out.`,
       remedy: 'Correct the frame in the log, or choose another airmass formula, and solve again.',
     };
   });

@@ -1,5 +1,6 @@
 import 'server-only';
 import { radPerDeg } from '@/lib/astro/angles';
+import type { ExposureSky } from '@/lib/astro/exposure-airmass';
 import { starKey } from '@/lib/contracts/star-name';
 import { bandPlace } from '@/lib/photometry/bands';
 import { mergeStars, nameOfPosition } from '@/lib/photometry/merge-stars';
@@ -19,6 +20,8 @@ import type { TransformInputs, TargetFrame } from './transform-inputs';
 /** What one programme measured in the night: columns, and its stars by name and place. */
 export interface TargetColumns {
   readonly measurements: TargetMeasurements;
+  /** One for each frame. */
+  readonly skies: readonly (ExposureSky | null)[];
   readonly names: readonly string[];
   /** J2000, mean of the measurements [deg]; NaN without one. */
   readonly ra: Float64Array;
@@ -185,6 +188,7 @@ function newTable(frames: readonly TargetFrame[], { capacity, isShared, saturati
         frameBjd: per(({ bjd }) => bjd),
         frameOffset: per(() => NaN),
       },
+      skies: frames.map(({ sky }) => sky),
       names: Array.from(merged.named, (at, star) => {
         const name = stars.names[at] ?? '';
         return name === '' ? nameOfPosition(merged.ra[star] ?? NaN, merged.dec[star] ?? NaN) : name;

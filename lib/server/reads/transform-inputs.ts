@@ -1,10 +1,11 @@
 import 'server-only';
 import { setImmediate as turn } from 'node:timers/promises';
-import { exposureAirmass } from '@/lib/astro/exposure-airmass';
+import { airmassAt, exposureSky, type ExposureSky } from '@/lib/astro/exposure-airmass';
 import { starTimes } from '@/lib/astro/light-travel';
 import { skyMoment } from '@/lib/astro/sky-moment';
 import type { AirmassFormula } from '@/lib/astro/airmass';
 import type { Site } from '@/lib/astro/site';
+import { directionOf } from '@/lib/astro/vector';
 import { toScienceName } from '@/lib/contracts/coefficients';
 import { AirmassFormula as AirmassFormulaSchema } from '@/lib/contracts/solve-options';
 import { Fault } from '@/lib/faults/fault';
@@ -32,7 +33,10 @@ export interface TargetFrame {
   /** A frame of standards: in a mixed set its stars are no targets. */
   readonly isStandard: boolean;
   readonly band: TargetFrameRow['band'];
+  /** Of its middle. */
   readonly airmass: number;
+  /** From which each star on it has an airmass of its own. */
+  readonly sky: ExposureSky | null;
   readonly hours: number;
   readonly bjd: number;
 }
@@ -42,6 +46,8 @@ export interface TransformInputs {
   readonly nightId: number;
   readonly transformations: readonly TransformationRow[];
   readonly calibrations: readonly BandCalibration[];
+  /** The one that the extinction was found with. */
+  readonly formula: AirmassFormula;
   readonly frames: readonly TargetFrame[];
   /** [counts]; Infinity where the camera's is not known. */
   readonly saturation: number;
@@ -81,6 +87,7 @@ export async function transformInputs(
     nightId: night.id,
     transformations,
     calibrations: bands.flatMap((band) => calibrationOf(band, origin)),
+    formula,
     frames: await allOnSky(frames, { site: instrument, formula, origin }),
     saturation: saturation ?? Number.POSITIVE_INFINITY,
     options: { ...usualOptions, nightWithCare: solution.verdict === 'usable with care' },
@@ -137,21 +144,20 @@ function onSky(frame: TargetFrameRow, { site, formula, origin }: Sky): TargetFra
   const { id, programmeId, band, ra, decl } = frame;
   const hours = origin === null ? NaN : hoursFrom(origin, frame.utcMid);
   const known = { id, programmeId, isStandard: frame.type === 'standard', band, hours };
-  if (ra === null || decl === null) return { ...known, airmass: NaN, bjd: NaN };
+  if (ra === null || decl === null) return { ...known, airmass: NaN, sky: null, bjd: NaN };
   const place = { longitude: site.longitude, latitude: site.latitude, elevation: site.elevation };
   const bjd = starTimes(skyMoment(place, frame.utcMid.getTime()), ra, decl).bjdTdb;
-  return { ...known, airmass: airmassOf(frame, { site: place, formula }), bjd };
+  const sky = exposureSky(place, { utcStart: frame.utcStart.getTime(), exposure_s: frame.exposure });
+  return { ...known, airmass: airmassOrNone(formula, sky, { ra, decl }), sky, bjd };
 }
 
-function airmassOf(frame: TargetFrameRow, { site, formula }: Omit<Sky, 'origin'>): number {
+function airmassOrNone(
+  formula: AirmassFormula,
+  sky: ExposureSky,
+  { ra, decl }: { readonly ra: number; readonly decl: number },
+): number {
   try {
-    return exposureAirmass(formula, {
-      site,
-      ra: frame.ra ?? NaN,
-      dec: frame.decl ?? NaN,
-      utcStart: frame.utcStart.getTime(),
-      exposure_s: frame.exposure,
-    });
+    return airmassAt(formula, sky, directionOf(ra, decl));
   } catch (error) {
     // Below the horizon, or beyond the formula: the log takes such frames, and a magnitude cannot be had from them.
     if (error instanceof RangeError) return NaN;

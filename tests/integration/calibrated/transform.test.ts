@@ -79,6 +79,26 @@ it('magnitudes come out at the truth within the errors that they state', async (
   expect(await filesIn('work')).toEqual([]);
 });
 
+it('a star far from the middle of its frame is brought through the air above itself', async () => {
+  const apart = stars.map((star, i) => ({ ...star, dec: star.dec - (i % 2 === 0 ? 0 : 40) }));
+  await takeTargets(
+    noor,
+    night,
+    targetTable([thistle], () => apart),
+  );
+  const solution = await approved([world.thistle]);
+  await transform({ solution, night: night.id });
+  const stored = await storedStars(solution);
+  const mean = (odd: number): number => {
+    const off = stored.filter((_, i) => i % 2 === odd).map(({ v }, i) => v - (apart[2 * i + odd]?.V ?? NaN));
+    return off.reduce((sum, value) => sum + value, 0) / off.length;
+  };
+  // By the airmass of the middle the southern half would come out fainter by a tenth or more.
+  expect(stored).toHaveLength(400);
+  expectWithin(mean(0), 0, { absolute: 0.003, unit: 'mag' });
+  expectWithin(mean(1), 0, { absolute: 0.003, unit: 'mag' });
+});
+
 it('one mail goes to each investigator of a programme, and to nobody else', async () => {
   await takeTargets(noor, night, table);
   const solution = await approved();

@@ -1,8 +1,15 @@
 import { describe, expect, it } from 'vitest';
-import { airmass } from '@/lib/astro/airmass';
-import { exposureAirmass, meanAirmass, requireExposure_s } from '@/lib/astro/exposure-airmass';
+import { airmass, airmassFormulas } from '@/lib/astro/airmass';
+import {
+  exposureAirmass,
+  exposureSky,
+  meanAirmass,
+  measuredAirmasses,
+  requireExposure_s,
+} from '@/lib/astro/exposure-airmass';
 import { horizontalPlace } from '@/lib/astro/horizontal-place';
 import { skyMoment } from '@/lib/astro/sky-moment';
+import { createRandom } from '@/lib/numerics/random';
 import { expectWithin } from '@/tests/support/numbers';
 import { siteOf } from '@/tests/support/sky-oracle';
 
@@ -43,12 +50,87 @@ describe('airmass over a long exposure', () => {
     expect(() => requireExposure_s(exposure_s)).toThrow(/Exposure time/);
   });
 
+  it('a place that is none is refused', () => {
+    expect(() => exposureAirmass('young1994', { ...rising, ra: NaN })).toThrow(/Right ascension/);
+    expect(() => exposureAirmass('young1994', { ...rising, dec: 91 })).toThrow(/Declination/);
+  });
+
   it.each([
     [NaN, 1, 1],
     [1, 0.5, 1],
     [1, 1, Infinity],
   ])('a mean of %d, %d and %d is refused', (start, mid, end) => {
     expect(() => meanAirmass(start, mid, end)).toThrow(/Airmass/);
+  });
+});
+
+describe('airmasses of many stars on many frames', () => {
+  const exposures = [0, 1800, 5400, 9000].map((later_s) => ({
+    utcStart: rising.utcStart + later_s * 1000,
+    exposure_s: 600,
+  }));
+  const skies = exposures.map((exposure) => exposureSky(site, exposure));
+
+  /** Stars over 30° around the field, all on each frame. */
+  function wideField(nStars: number) {
+    const random = createRandom(11);
+    const place = (middle: number): Float64Array =>
+      Float64Array.from({ length: nStars }, () => middle + 30 * (random.uniform() - 0.5));
+    const rows = Array.from({ length: nStars * skies.length }, (_, m) => m);
+    return {
+      ra: place(rising.ra),
+      dec: place(rising.dec),
+      star: Uint32Array.from(rows, (m) => m % nStars),
+      frame: Uint32Array.from(rows, (m) => Math.floor(m / nStars)),
+    };
+  }
+
+  it.each(airmassFormulas)('by %s are those that the altitude gives, star by star and instant', (formula) => {
+    const field = wideField(50);
+    const found = measuredAirmasses(formula, skies, field);
+    let [least, most] = [Infinity, 0];
+    for (const [m, value] of found.entries()) {
+      const { utcStart, exposure_s } = exposures[field.frame[m] ?? -1] ?? { utcStart: NaN, exposure_s: NaN };
+      const star = field.star[m] ?? -1;
+      const place = [field.ra[star] ?? NaN, field.dec[star] ?? NaN] as const;
+      const [start = NaN, mid = NaN, end = NaN] = [0, 0.5, 1].map((part) => {
+        const moment = skyMoment(site, utcStart + part * exposure_s * 1000);
+        return airmass(formula, horizontalPlace(moment, ...place).zenithDistance);
+      });
+      expectWithin(value, (start + 4 * mid + end) / 6, { absolute: 1e-9, unit: 'airmass' });
+      if (field.frame[m] === 0) [least, most] = [Math.min(least, value), Math.max(most, value)];
+    }
+    expect(most - least).toBeGreaterThan(0.5);
+  });
+
+  it('are none without a place, without a sky, and below the horizon, and the others keep theirs', () => {
+    const [sky = null] = skies;
+    const found = measuredAirmasses('young1994', [sky, null], {
+      ra: Float64Array.of(rising.ra, NaN, rising.ra + 180),
+      dec: Float64Array.of(rising.dec, NaN, rising.dec),
+      star: Uint32Array.of(1, 2, 0, 0),
+      frame: Uint32Array.of(0, 0, 1, 0),
+    });
+    expect([...found.subarray(0, 3)]).toEqual([NaN, NaN, NaN]);
+    const own = exposureAirmass('young1994', { ...rising, exposure_s: 600 });
+    expectWithin(found[3] ?? NaN, own, { absolute: 1e-12, unit: 'airmass' });
+  });
+
+  it('are none beyond what the formula holds for', () => {
+    // From zenith distances of 80 to 90° at this instant.
+    const dec = Float64Array.from({ length: 60 }, (_, s) => rising.dec - s);
+    const stars = { ra: new Float64Array(60).fill(rising.ra), dec, frame: new Uint32Array(60) };
+    const star = Uint32Array.from(dec.keys());
+    const nNone = (formula: 'young1994' | 'hardie1962'): number =>
+      measuredAirmasses(formula, skies, { ...stars, star }).filter(Number.isNaN).length;
+    expect(nNone('hardie1962')).toBeGreaterThan(nNone('young1994'));
+  });
+
+  it('are refused when stars and frames do not pair', () => {
+    const field = wideField(2);
+    expect(() => measuredAirmasses('young1994', skies, { ...field, frame: new Uint32Array(1) })).toThrow(
+      /in pairs/,
+    );
   });
 });
 

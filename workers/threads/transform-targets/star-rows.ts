@@ -8,7 +8,7 @@ import type { TransformOrder, Transformed } from './messages';
 export function writeStars(
   { folder, names, ra, dec }: Pick<TransformOrder, 'folder' | 'names' | 'ra' | 'dec'>,
   stars: CalibratedStars,
-): Transformed {
+): Omit<Transformed, 'nWithoutAirmass'> {
   const slices: Slice[] = [];
   const file = rowFile(folder, 'stars', (slice) => slices.push(slice));
   let nStars = 0;

@@ -1,6 +1,7 @@
 import { execute, insert } from '@/lib/server/data/database';
 import { newPublicId } from '@/lib/server/data/public-id';
 import type { PersonCaller } from '@/lib/server/policy/caller';
+import { noInputs, usualModel } from './solution-json';
 
 interface NewSolution {
   readonly night: string;
@@ -24,7 +25,7 @@ export async function newSolution(made: NewSolution): Promise<MadeSolution> {
     `INSERT INTO solutions
        (public_id, night_id, number, state, model, inputs, software_version, outcome, suggested_verdict, verdict,
         created_by_id, solved_at, proposed_by_id, proposed_at, approved_by_id, approved_at)
-     SELECT :publicId, n.id, :number, :state, '{}', '{"standardsSource":"Landolt 1992"}', '1.0.0', :outcome,
+     SELECT :publicId, n.id, :number, :state, :model, :inputs, '1.0.0', :outcome,
             'photometric', IF(:proposer IS NULL, NULL, 'photometric'), :by, IF(:outcome IS NULL, NULL, NOW(3)),
             :proposer, IF(:proposer IS NULL, NULL, NOW(3)), :approver, IF(:approver IS NULL, NULL, NOW(3))
        FROM nights n WHERE n.public_id = :night`,
@@ -33,6 +34,8 @@ export async function newSolution(made: NewSolution): Promise<MadeSolution> {
       night: made.night,
       number: made.number,
       state: made.state,
+      model: JSON.stringify(usualModel),
+      inputs: JSON.stringify(noInputs),
       outcome: made.outcome === undefined ? 'determined' : made.outcome,
       by: made.by.personId,
       proposer: made.proposedBy?.personId ?? null,

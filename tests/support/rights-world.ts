@@ -1,11 +1,10 @@
 import { readFile } from 'node:fs/promises';
 import path from 'node:path';
+import { setTimeout as pause } from 'node:timers/promises';
 import { expect, inject } from 'vitest';
 import type { MadeToken, NewToken } from '@/lib/contracts/api/token';
 import { createToken } from '@/lib/contracts/api/token';
 import type { z } from 'zod';
-import type { SolutionModel } from '@/lib/contracts/solution-model';
-import { SolveOptions } from '@/lib/contracts/solve-options';
 import { execute, insert, inTransaction, selectOne } from '@/lib/server/data/database';
 import { personByEmail } from '@/lib/server/data/people';
 import { newPublicId } from '@/lib/server/data/public-id';
@@ -17,6 +16,7 @@ import { queueJob, untilJob } from './jobs';
 import { addStars, newResult, newSolution } from './results';
 import { newPerson, newProgramme, testPassword } from './people';
 import { root } from './scripts';
+import { noInputs, usualModel } from './solution-json';
 
 /**
  * Who calls, in the order of a row's signs. The observer is the night's, the other observer is not; the PI leads MH26B-04
@@ -125,14 +125,12 @@ async function newSetInUse(nightId: number): Promise<{ id: number; publicId: str
 /** A draft without a job, so that it stays one. */
 async function newDraft(nightId: number, createdById: number): Promise<{ id: number; publicId: string }> {
   const publicId = newPublicId();
-  const model = { options: SolveOptions.parse({}), airmassFormula: 'young1994', fit: { bands: [] } };
-  const inputs = { sets: [], standardsSource: '', equipmentEpoch: null, frameVersions: null };
   const { id } = await inTransaction((tx) =>
     insertSolution(tx, {
       publicId,
       nightId,
-      model: model as unknown as SolutionModel,
-      inputs,
+      model: usualModel,
+      inputs: noInputs,
       softwareVersion: '0.0.0',
       followsId: null,
       createdById,
@@ -172,7 +170,7 @@ async function removeSolutions(nightId: number, firstId: number): Promise<void> 
   );
   const running = (): Promise<unknown> =>
     selectOne(`SELECT id FROM jobs WHERE ${ofNight} AND state = 'running' LIMIT 1`, values);
-  await expect.poll(running, { timeout: 30_000 }).toBeNull();
+  while ((await running()) !== null) await pause(100);
   const those = 'SELECT id FROM solutions WHERE night_id = :nightId AND id >= :firstId';
   await execute(
     `DELETE k FROM solution_coefficients k JOIN solution_bands b ON b.id = k.solution_band_id

@@ -46,6 +46,13 @@ export async function newSolution(made: NewSolution): Promise<MadeSolution> {
   return { id, publicId };
 }
 
+const madeWith = {
+  assumedColour: { value: 0.65, error: 0.35 },
+  lowSignal: 12,
+  largeOffset: 0.09,
+  nightWithCare: false,
+};
+
 interface NewResult {
   readonly solution: MadeSolution;
   readonly night: string;
@@ -57,10 +64,18 @@ interface NewResult {
 /** A transformation of a night's targets; returns its internal id. */
 export async function newResult({ solution, night, programme, state = 'done' }: NewResult): Promise<number> {
   return insert(
-    `INSERT INTO transformations (public_id, solution_id, night_id, programme_id, state, finished_at)
-     SELECT :publicId, :solution, n.id, :programme, :state, IF(:state = 'done', NOW(3), NULL)
+    `INSERT INTO transformations (public_id, solution_id, night_id, programme_id, state, finished_at, options)
+     SELECT :publicId, :solution, n.id, :programme, :state, IF(:state = 'done', NOW(3), NULL),
+            IF(:state = 'done', :options, NULL)
        FROM nights n WHERE n.public_id = :night`,
-    { publicId: newPublicId(), solution: solution.id, night, programme, state },
+    {
+      publicId: newPublicId(),
+      solution: solution.id,
+      night,
+      programme,
+      state,
+      options: JSON.stringify(madeWith),
+    },
     null,
   );
 }

@@ -21,6 +21,8 @@ export interface ResultRow {
   readonly standardsSource: string | null;
   readonly approvedBy: string | null;
   readonly approvedAt: Date | null;
+  /** What it was made with, as it was stored; null until it is made. */
+  readonly options: unknown;
 }
 
 /** Results of a night in the scope, made or on their way: by programme, of each the latest approved solution first. */
@@ -30,7 +32,7 @@ export async function listResultRows(scope: Scope, nightId: number): Promise<rea
     `SELECT t.id, t.state, t.finished_at AS finishedAt, g.code AS programme, g.title AS programmeTitle,
             s.public_id AS solution, s.number, s.state AS solutionState, s.verdict,
             s.software_version AS softwareVersion, JSON_VALUE(s.inputs, '$.standardsSource') AS standardsSource,
-            a.name AS approvedBy, s.approved_at AS approvedAt
+            a.name AS approvedBy, s.approved_at AS approvedAt, t.options
        FROM transformations t
        JOIN solutions s ON s.id = t.solution_id
        LEFT JOIN programmes g ON g.id = t.programme_id

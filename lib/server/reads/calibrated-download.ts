@@ -7,6 +7,7 @@ import {
   calibratedColumns,
   calibratedFormulas,
 } from '@/lib/contracts/calibrated-columns';
+import { transformOptionWords } from '@/lib/contracts/transform-options';
 import { Fault } from '@/lib/faults/fault';
 import { csvRow, exportedCells, jsonRow } from '@/lib/formats/calibrated-rows';
 import { provenanceJson, provenanceLines, type Provenance } from '@/lib/formats/provenance';
@@ -109,6 +110,11 @@ const hashed: Readonly<Record<Format, string>> = {
   json: 'every byte between the line that opens items and the line feed before the bracket that closes it',
 };
 
+/** Each once: programmes of a night are transformed together, but those of an earlier day may differ. */
+const optionsOf = (results: readonly ResultRow[]): readonly string[] => [
+  ...new Set(results.flatMap(({ options }) => (options === null ? [] : transformOptionWords(options)))),
+];
+
 async function provenanceOf(
   night: NightRow,
   results: readonly ResultRow[],
@@ -133,6 +139,7 @@ async function provenanceOf(
       standards_source: first.standardsSource,
       standards_used: standards.map(({ source, names }) => `${source}: ${names}`),
       formulas: calibratedFormulas,
+      options: optionsOf(results),
       cautions: calibratedCautions(first.verdict),
       software: `Evenfall ${packageFile.version}`,
       exported_at: new Date().toISOString(),

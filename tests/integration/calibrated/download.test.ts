@@ -112,6 +112,10 @@ it('a CSV file begins with where it comes from, and its checksum is that of its 
     '# verdict: photometric',
     '# approved_by: a photometrist of the observatory',
     '# standards_source: Landolt 1992',
+    '# options:',
+    '#   a star without B or without V is taken to have B-V 0.65 ± 0.35 mag, and is flagged',
+    '#   a star is flagged where the signal-to-noise ratio of all that is used in a band is below 12',
+    '#   a magnitude is flagged where the offset of a frame that it rests on is above 0.09 mag',
     `# sha256: ${sha256(body)}`,
   ])
     expect(head).toContain(line);
@@ -153,7 +157,7 @@ it('numbers keep their digits, totals are made of both errors, and a formula is 
 it('a JSON file is as the interface says, and its checksum is that of its items', async () => {
   const text = await textOf('pi', {});
   const { provenance, items } = JSON.parse(text) as {
-    provenance: { sha256: string; solution: string; columns: unknown[] };
+    provenance: { sha256: string; solution: string; columns: unknown[]; options: string[] };
     items: unknown[];
   };
   expect(items).toHaveLength(4500);
@@ -162,6 +166,8 @@ it('a JSON file is as the interface says, and its checksum is that of its items'
   const begin = text.indexOf('"items":[\n') + '"items":[\n'.length;
   expect(provenance.sha256).toBe(sha256(text.slice(begin, text.lastIndexOf('\n]'))));
   expect(provenance.solution).toBe(solutions.approved);
+  // Those of three programmes are the same: each is said once.
+  expect(provenance.options).toHaveLength(3);
   expect(provenance.columns).toHaveLength(calibratedColumns.length);
 });
 

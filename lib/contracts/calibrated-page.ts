@@ -150,7 +150,13 @@ export interface CalibratedResult {
  */
 export type NoResult =
   | { readonly why: 'hidden' | 'no-solution' | 'no-targets' }
-  | { readonly why: 'running'; readonly job: Pick<Job, 'id' | 'state' | 'progress' | 'message'> | null };
+  | {
+      readonly why: 'running';
+      readonly job: Pick<Job, 'id' | 'state' | 'progress' | 'message'> | null;
+      readonly solution: string;
+      /** Whether the caller may queue a new job when this one has come to nothing. */
+      readonly mayStart: boolean;
+    };
 
 /** All that a night's page of results shows. */
 export interface CalibratedPage {
@@ -171,3 +177,6 @@ export interface CalibratedPage {
 /** Results that a person has opened. */
 export const SeenResults = z.object({ night: PathId, programme: z.string().max(40) });
 export type SeenResults = z.output<typeof SeenResults>;
+
+/** Asks for magnitudes whose job came to nothing. */
+export const TransformAgain = z.strictObject({ solution: PathId });

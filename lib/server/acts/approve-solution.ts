@@ -12,6 +12,7 @@ import { insertComment } from '@/lib/server/data/solution-writes';
 import { nightOf, requireSolution, solutionSubject, type SolutionRow } from '@/lib/server/data/solutions';
 import { dropQueuedTransformations, queueTransformations } from '@/lib/server/data/transformations';
 import { enqueue } from '@/lib/server/jobs/enqueue';
+import { transformJob } from '@/lib/server/jobs/transform-job';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { dataScope } from '@/lib/server/policy/scope';
@@ -118,11 +119,6 @@ async function queueTargets(tx: Tx, caller: PersonCaller, solution: SolutionRow)
   await takeIntoUse(tx, await lockSetsOf(tx, solution.id));
   const programmes = await queueTransformations(tx, solution.id, solution.nightId);
   if (programmes === 0) return 0;
-  await enqueue(tx, caller, {
-    kind: 'transform-targets',
-    payload: { solution: solution.publicId, night: solution.nightPublicId },
-    dedupeKey: `transform-targets:${solution.publicId}`,
-    nightId: solution.nightId,
-  });
+  await enqueue(tx, caller, transformJob(solution));
   return programmes;
 }

@@ -66,7 +66,7 @@ export interface TransformJobRow {
 export function transformJob(nightId: number): Promise<TransformJobRow | null> {
   return selectOne<TransformJobRow>(
     `SELECT public_id AS id, state, progress, message FROM jobs
-      WHERE night_id = :nightId AND kind = 'transform-targets' ORDER BY id DESC LIMIT 1`,
+      WHERE night_id = :nightId AND kind = 'transform-targets' ORDER BY jobs.id DESC LIMIT 1`,
     { nightId },
   );
 }

@@ -36,6 +36,12 @@ export async function insertJob(tx: Tx, job: NewJobRow): Promise<string> {
   return living?.publicId ?? job.publicId;
 }
 
+/** Whether a job with the key is queued or running. */
+export async function hasLivingJob(tx: Tx, dedupeKey: string): Promise<boolean> {
+  const row = await selectOne('SELECT id FROM jobs WHERE dedupe_key = :dedupeKey', { dedupeKey }, tx);
+  return row !== null;
+}
+
 export type JobState = 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
 
 export interface JobRow {

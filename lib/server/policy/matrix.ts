@@ -57,6 +57,7 @@ const rules = {
   'solution.propose': photometrist,
   'solution.approve': photometrist,
   'solution.withdraw': photometrist,
+  'solution.transform': any(manager, photometrist),
   'calibrated.see': any(manager, photometrist, ownNight, investigator),
   'release.publish': any(photometrist, pi),
   'release.end-proprietary-period': pi,

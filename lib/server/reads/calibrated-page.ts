@@ -27,7 +27,9 @@ import {
 } from '@/lib/server/data/calibrated-stars';
 import { findNight, requireNight, type NightRow } from '@/lib/server/data/nights';
 import { observatory } from '@/lib/server/data/observatory';
+import { solutionSubject } from '@/lib/server/data/solutions';
 import type { Caller } from '@/lib/server/policy/caller';
+import { may } from '@/lib/server/policy/matrix';
 import { dataScope, nightScope } from '@/lib/server/policy/scope';
 
 /** What a night's page of results shows: stars of one programme by one solution, or why there are none. */
@@ -42,7 +44,7 @@ export async function calibratedPage(
   if (!(await findNight(scope, id))) return { ...nothing, result: { why: 'hidden' } };
   const rows = await listResultRows(scope, night.id);
   const programme = query.programme ?? codeOf(rows[0]);
-  if (programme === null) return { ...nothing, result: await whyNothing(night.id, []) };
+  if (programme === null) return { ...nothing, result: await whyNothing(caller, night.id, []) };
   const own = rows.filter((row) => codeOf(row) === programme);
   const made = own.filter(({ state }) => state === 'done');
   const row =
@@ -64,16 +66,19 @@ export async function calibratedPage(
       number,
       state: solutionState,
     })),
-    result: row ? await resultOf(night, row, query) : await whyNothing(night.id, own),
+    result: row ? await resultOf(night, row, query) : await whyNothing(caller, night.id, own),
   };
 }
 
 /** Empty for targets of no programme; null where there is no row. */
 const codeOf = (row: ResultRow | undefined): string | null => (row ? (row.programme ?? '') : null);
 
-async function whyNothing(nightId: number, own: readonly ResultRow[]): Promise<NoResult> {
-  if (own.some(({ solutionState, state }) => solutionState === 'approved' && state === 'queued')) {
-    return { why: 'running', job: await transformJob(nightId) };
+async function whyNothing(caller: Caller, nightId: number, own: readonly ResultRow[]): Promise<NoResult> {
+  const row = own.find(({ solutionState, state }) => solutionState === 'approved' && state === 'queued');
+  if (row) {
+    const [job, subject] = await Promise.all([transformJob(nightId), solutionSubject(nightId)]);
+    const mayStart = may(caller, 'solution.transform', subject);
+    return { why: 'running', job, solution: row.solution, mayStart };
   }
   return { why: (await hasApprovedSolution(nightId)) ? 'no-targets' : 'no-solution' };
 }

@@ -255,6 +255,15 @@ describe('where there is nothing to show', () => {
     });
   });
 
+  it.each([
+    ['manager', true],
+    ['photometrist', true],
+    ['observer', false],
+    ['thistlePi', false],
+  ])('says whether the %s may start it again: %s', async (name, mayStart) => {
+    expect((await page(name, { programme: 'MH26B-04' }, waiting)).result).toMatchObject({ mayStart });
+  });
+
   it('says that there was no target of theirs', async () => {
     expect((await page('marrowCo', {}, waiting)).result).toEqual({ why: 'no-targets' });
   });

@@ -123,6 +123,7 @@ const table = {
   'solution.propose': photometrists,
   'solution.approve': photometrists,
   'solution.withdraw': photometrists,
+  'solution.transform': { manager: 'all', photometrist: 'all' },
   'calibrated.see': dataOfProgramme,
   'release.publish': { photometrist: 'all', pi: ownProgrammes },
   'release.end-proprietary-period': { pi: ownProgrammes },

@@ -201,6 +201,8 @@ describe('the results of a night', () => {
 });
 
 describe('a night without results', () => {
+  const running = { why: 'running', solution: 'abcdefghjkmn', mayStart: false } as const;
+
   it.each([
     ['hidden', 'Not yours to see'],
     ['no-solution', 'No approved solution yet'],
@@ -211,8 +213,23 @@ describe('a night without results', () => {
   });
 
   it('shows how far the transformation is', () => {
-    show(<NoResult page={page} reason={{ why: 'running', job: null }} />);
+    show(<NoResult page={page} reason={{ ...running, job: null }} />);
     expect(screen.getByRole('progressbar').getAttribute('aria-valuetext')).toBe('under way');
     expect(screen.getByRole('link', { name: 'solution 1, superseded' })).toBeTruthy();
+  });
+
+  it.each([
+    ['cancelled', 'The transformation was cancelled'],
+    ['failed', 'The transformation failed'],
+  ] as const)('offers to start one that was %s again, to those who may', (state, title) => {
+    const job = { id: 'jjjjjjjjjjjj', state, progress: 0.4, message: '' };
+    show(<NoResult page={page} reason={{ ...running, job, mayStart: true }} />);
+    expect(screen.getByText(title)).toBeTruthy();
+    const button = screen.getByRole('button', { name: 'Transform the targets' });
+    expect(button.closest('form')?.querySelector('input')?.value).toBe('abcdefghjkmn');
+    cleanup();
+    show(<NoResult page={page} reason={{ ...running, job }} />);
+    expect(screen.queryByRole('button')).toBeNull();
+    expect(screen.getByText(/A photometrist or a manager can start the transformation again/)).toBeTruthy();
   });
 });

@@ -5,12 +5,14 @@ import Link from 'next/link';
 import { useRouter } from 'next/navigation';
 import { useEffect } from 'react';
 import { useJob } from '@/app/_components/hooks/use-job';
+import { ActButton } from '@/app/_components/ui/act-button';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { Panel } from '@/app/_components/ui/panel';
 import { ProgressBar } from '@/app/_components/ui/progress-bar';
 import { hasEnded } from '@/lib/contracts/api/job';
 import type { CalibratedPage, NoResult as Reason } from '@/lib/contracts/calibrated-page';
+import { transformAgainAction } from '../actions';
 import { resultsAddress } from './results-address';
 
 interface NoResultProps {
@@ -22,7 +24,7 @@ interface NoResultProps {
 export function NoResult({ page, reason }: NoResultProps) {
   return (
     <Panel title="Calibrated magnitudes">
-      {reason.why === 'running' ? <Running job={reason.job} /> : <Why night={page.night} why={reason.why} />}
+      {reason.why === 'running' ? <Running reason={reason} /> : <Why night={page.night} why={reason.why} />}
       <Earlier page={page} />
     </Panel>
   );
@@ -82,9 +84,10 @@ function Why({
 
 const look_ms = 3000;
 
-function Running({ job: first }: { readonly job: Extract<Reason, { why: 'running' }>['job'] }) {
+function Running({ reason }: { readonly reason: Extract<Reason, { why: 'running' }> }) {
+  const { job: first, solution, mayStart } = reason;
   const router = useRouter();
-  const { job, link } = useJob(first?.id ?? null);
+  const { job, link } = useJob(first !== null && !hasEnded(first.state) ? first.id : null);
   const present = job ?? first;
   const isOver = job !== null && hasEnded(job.state);
   useEffect(() => {
@@ -100,9 +103,24 @@ function Running({ job: first }: { readonly job: Extract<Reason, { why: 'running
     return (
       <EmptyState
         title={present.state === 'failed' ? 'The transformation failed' : 'The transformation was cancelled'}
-        action={<LinkButton href={'/jobs' as Route}>Jobs</LinkButton>}
+        action={
+          mayStart ? (
+            <ActButton
+              action={transformAgainAction}
+              values={{ solution }}
+              look="primary"
+              busyLabel="Queuing…"
+              onDone={() => {
+                router.refresh();
+              }}
+            >
+              Transform the targets
+            </ActButton>
+          ) : null
+        }
       >
-        The solution is approved, but its magnitudes could not be made. A manager can start the job again.
+        The solution is approved, but its magnitudes were not made.{' '}
+        {mayStart ? null : 'A photometrist or a manager can start the transformation again.'}
       </EmptyState>
     );
   }

@@ -7,7 +7,8 @@
 # into it. Set beforehand:
 #
 #   EVENFALL_URL         address of the service, such as http://127.0.0.1:3000
-#   TELESCOPE, NIGHT_DATE   the telescope's code and the date of the local evening, such as 2026-10-15
+#   TELESCOPE, NIGHT_DATE
+#                        the telescope's code and the date of the local evening, such as 2026-10-15
 #   OBSERVER, PHOTOMETRIST, APPROVER, INVESTIGATOR
 #                        an API token each; tokens are made on the account page, or by POST /tokens
 set -euo pipefail

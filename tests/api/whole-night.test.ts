@@ -28,7 +28,7 @@ describe('the example script of the interface', () => {
       env: {
         ...process.env,
         EVENFALL_URL: inject('baseUrl'),
-        TELESCOPE: 'LK08',
+        TELESCOPE: 'larkspur',
         NIGHT_DATE: night.date,
         OBSERVER: await demoToken('observer'),
         PHOTOMETRIST: await demoToken('photometrist'),

@@ -531,6 +531,7 @@ command_start() {
   start_database
   load_data
   start_application
+  [[ $EVENFALL_DEMO != 1 ]] || quiet_step 'Calibrating nights of the demo' script db/seeders/main.ts demo-decisions
   ready_line
   while :; do watch; done
 }

@@ -49,3 +49,8 @@ export async function seedDatabase(database: DatabaseAddress, env: Variables): P
   await seedReferenceData(database);
   await run(database, script('db/seeders/main.ts', 'demo'), env);
 }
+
+/** Brings the demo's nights to where its people have come, as the start script does once the application runs. */
+export async function decideDemoNights(database: DatabaseAddress, env: Variables): Promise<void> {
+  await run(database, script('db/seeders/main.ts', 'demo-decisions'), env);
+}

@@ -4,7 +4,7 @@ import path from 'node:path';
 import type { TestProject } from 'vitest/node';
 import { stopChild } from './child';
 import { freePort } from './free-port';
-import { migrateDatabase, seedDatabase, startProgram } from './scripts';
+import { decideDemoNights, migrateDatabase, seedDatabase, startProgram } from './scripts';
 import { startApplication } from './server';
 import { returnDatabaseServer, takeDatabaseServer } from './shared-database-server';
 
@@ -27,6 +27,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
   await seedDatabase(database, env);
   const catcher = startProgram(database, 'workers/mail-catcher.ts', env);
   const application = await startApplication({ database, dataFolder, env });
+  await decideDemoNights(database, env);
 
   project.provide('baseUrl', application.baseUrl);
   project.provide('servedDatabase', database);

@@ -1,8 +1,10 @@
+import { expect } from 'vitest';
 import { measure } from '@/db/seeders/demo/make-files';
 import { observeNight, readDemoSky } from '@/db/seeders/demo/demo-nights';
 import { readDemoWorld } from '@/db/seeders/demo/demo-world';
 import { nightTables } from '@/db/seeders/demo/sample-uploads';
 import type { FrameInput } from '@/lib/contracts/api/frame';
+import { expectWithin } from './numbers';
 
 /** What a walk through the whole job brings along: an observer's log, the tables made from its frames, and the truth. */
 export interface WalkNight {
@@ -59,18 +61,51 @@ export async function walkNight(date: string, seed: number): Promise<WalkNight> 
   };
 }
 
-/** How far results are from the truth in their own errors. */
-export interface Pulls {
-  readonly n: number;
-  readonly mean: number;
-  readonly deviation: number;
+type Row = Readonly<Record<string, string>>;
+
+/** Rows of a downloaded table by their headers; its first lines, with #, are the provenance. */
+export function readCalibrated(text: string): readonly Row[] {
+  const [head = '', ...lines] = text
+    .trimEnd()
+    .split(/\r?\n/)
+    .filter((line) => !line.startsWith('#'));
+  const names = head.split(',');
+  return lines.map((line) => {
+    const cells = line.split(',');
+    return Object.fromEntries(names.map((name, place) => [name, cells[place] ?? '']));
+  });
 }
 
-export function pulls(
-  differences: readonly { readonly difference: number; readonly error: number }[],
-): Pulls {
-  const values = differences.map(({ difference, error }) => difference / error);
-  const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-  const variance = values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (values.length - 1);
-  return { n: values.length, mean, deviation: Math.sqrt(variance) };
+const mean = (values: readonly number[]): number =>
+  values.reduce((sum, value) => sum + value, 0) / values.length;
+
+/**
+ * Holds downloaded magnitudes to the truth. Coefficients and frame offsets are common to all stars of a field: they move
+ * the mean, by no more than the errors say. About it the stars scatter by no more than their random errors, which hold
+ * the frames' share too.
+ */
+export function expectTruth(rows: readonly Row[], { truth }: WalkNight): void {
+  const known = rows.flatMap((row) => {
+    const star = truth.get(row['star'] ?? '');
+    return star === undefined || row['flags'] !== '' ? [] : [{ row, star }];
+  });
+  expect(known.length).toBeGreaterThan(300);
+  for (const quantity of ['V', 'BV'] as const) {
+    const stars = known.map(({ row, star }) => ({
+      difference: Number(row[quantity]) - star[quantity],
+      random: Number(row[`${quantity}_random`]),
+      systematic: Number(row[`${quantity}_systematic`]),
+      total: Number(row[`${quantity}_total`]),
+    }));
+    for (const { random, systematic, total } of stars) {
+      expectWithin(total, Math.hypot(random, systematic), { absolute: 2e-4, unit: 'mag' });
+    }
+    const bright = stars.toSorted((a, b) => a.total - b.total).slice(0, 50);
+    const common = mean(bright.map(({ difference }) => difference));
+    expect(Math.abs(common)).toBeLessThan(3 * mean(bright.map(({ total }) => total)));
+    const pulls = stars.map(({ difference, random }) => (difference - common) / random);
+    const deviation = Math.sqrt(mean(pulls.map((pull) => pull ** 2)));
+    expect(deviation).toBeGreaterThan(0.7);
+    expect(deviation).toBeLessThan(1.15);
+  }
 }

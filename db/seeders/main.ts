@@ -17,7 +17,7 @@ async function load(what: string | undefined): Promise<string> {
       return seedDemo(database(), { password, now: Date.now() });
     }
     case 'demo-decisions':
-      return decideNights({
+      return decideNights(database(), {
         photometrist: 'photometrist@evenfall.example',
         approver: 'photometrist2@evenfall.example',
         patience_ms: 120_000,

@@ -1,3 +1,4 @@
+import type { Sequelize } from 'sequelize';
 import { SolveOptions } from '@/lib/contracts/solve-options';
 import { isFault } from '@/lib/faults/fault';
 import { approveSolution } from '@/lib/server/acts/approve-solution';
@@ -35,7 +36,8 @@ export interface DecideOptions {
  * through; the jobs in between are done by the application, which must be running. A night that anybody has solved is
  * left alone. Says what it did.
  */
-export async function decideNights(options: DecideOptions): Promise<string> {
+export async function decideNights(sequelize: Sequelize, options: DecideOptions): Promise<string> {
+  await sequelize.authenticate();
   const people = await Promise.all([options.photometrist, options.approver].map(callerByEmail));
   const [photometrist, approver] = people;
   // Somebody may have closed an account while trying the program out.

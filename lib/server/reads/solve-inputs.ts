@@ -26,6 +26,7 @@ import { requireSolution, type SolutionRow } from '@/lib/server/data/solutions';
 import { targetSpan } from '@/lib/server/data/transformations';
 import type { JobCaller } from '@/lib/server/policy/caller';
 import { dataScope } from '@/lib/server/policy/scope';
+import { onlyLatest } from './only-latest';
 import { standardAirmasses, type StandardAirmasses } from './standard-airmasses';
 
 /** Which row of which set each observation is, shape (n) each: the fit knows nothing of it. */
@@ -67,7 +68,7 @@ export async function solveInputs(caller: JobCaller, id: string): Promise<SolveI
     extinctionHistory(solution.telescopeId, solution.nightId),
   ]);
   const frames = await framesOfSets(sets.map((set) => set.id));
-  const rows: StandardColumns = {
+  const all: StandardColumns = {
     setId: [],
     rowNo: [],
     frameId: [],
@@ -75,7 +76,8 @@ export async function solveInputs(caller: JobCaller, id: string): Promise<SolveI
     instMag: [],
     instErr: [],
   };
-  for (const set of sets) await readStandardRows(set.id, rows);
+  for (const set of sets) await readStandardRows(set.id, all);
+  const { rows, findings: measuredAgain } = onlyLatest(all, sets);
   const bands = new Set<string | null>(solution.model.fit.bands.map(({ band }) => band));
   // A frame of a band that was not asked for is none of this solve's; one without a band might be.
   const asked = frames.filter(({ band }) => band === null || bands.has(band));
@@ -98,7 +100,7 @@ export async function solveInputs(caller: JobCaller, id: string): Promise<SolveI
     keys,
     exclusions,
     hash: hashOf(observations),
-    findings: leftOut(parts),
+    findings: [...measuredAgain, ...leftOut(parts)],
     history,
     limits: readSettings(house?.settings).verdict,
     targets: await targetRanges(solution.nightId, utcZero[0] ?? null),

@@ -10,7 +10,7 @@
  * | all free terms | more observations than terms |
  */
 import { colourCoefficients, nightCoefficients, type BandProblem } from './band-problem';
-import { colourIndexWords, coefficientWords, counted, listed, sentence } from './finding-words';
+import { colourIndexWords, coefficientWords, counted, listed, sentence, figure } from './finding-words';
 import { rowsByNight, sharesFrames } from './fit-band';
 import { type CoefficientName, type FitLimits } from './fit-model';
 import { type Finding, type Range } from './night-solution';
@@ -210,4 +210,4 @@ export function rankFindings(
 }
 
 const spelt = (range: Range | null): string =>
-  range === null ? 'none known' : `${range.min.toFixed(2)} to ${range.max.toFixed(2)}`;
+  range === null ? 'none known' : `${figure(range.min, 2)} to ${figure(range.max, 2)}`;

@@ -41,6 +41,16 @@ export function counted(n: number, one: string, many = `${one}s`): string {
   return `${n === 0 ? 'no' : String(n)} ${n === 1 ? one : many}`;
 }
 
+/** A figure with a true minus.
+ * @param value - any
+ * @param digits - behind the point [1]
+ * @returns such as "−0.03"; a zero has no sign
+ * @source definition */
+export function figure(value: number, digits: number): string {
+  const words = value.toFixed(digits);
+  return Number(words) === 0 ? words.replace('-', '') : words.replace('-', '−');
+}
+
 /** A sentence with a capital at its beginning.
  * @param words - the sentence
  * @returns likewise

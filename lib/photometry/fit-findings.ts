@@ -1,6 +1,6 @@
 /** What a person should know about a fit that gave numbers, and about observations that could not enter one. */
 import { type BandProblem, type MissingRow } from './band-problem';
-import { coefficientWords, counted, fainterOrBrighter, listed, sentence } from './finding-words';
+import { coefficientWords, counted, fainterOrBrighter, listed, sentence, figure } from './finding-words';
 import { type BandSolution, type Finding } from './night-solution';
 import { structureWords } from './observation-results';
 import { type Rejection } from './reject-observations';
@@ -9,8 +9,11 @@ import { overrules, type StandardObservations } from './standard-observations';
 
 /** Share of observations rejected that a good night hardly reaches. Our own rule. */
 const manyRejected = 0.1;
-/** Variance inflation from which coefficients count as hard to tell apart. Common practice, no source. */
-const strongInflation = 10;
+/**
+ * Variance inflation from which coefficients count as hard to tell apart. Common practice is 10; the product of airmass and
+ * colour, in the model beside both, brings colour term and second order to 10 or 20 in every good night.
+ */
+const strongInflation = 30;
 /** Errors by which a prior may differ from what the observations alone say. Our own rule. */
 const priorSigmas = 3;
 /** First-order extinction beyond which something else is being measured. Our own rule [mag per airmass] */
@@ -191,7 +194,7 @@ function coefficientFindings(solution: BandSolution, where: string): readonly Fi
     if (name === 'extinction' && (value < 0 || value > largestExtinction)) {
       add(
         'suspicious-extinction',
-        `The extinction in ${where} is ${value.toFixed(3)} ± ${error.toFixed(3)} mag per airmass: ${value < 0 ? 'no air brightens stars' : 'more than clear air can dim'}.`,
+        `The extinction in ${where} is ${figure(value, 3)} ± ${error.toFixed(3)} mag per airmass: ${value < 0 ? 'no air brightens stars' : 'more than clear air can dim'}.`,
         'Look for a change of transparency during the night, and for a drift.',
       );
     }
@@ -201,7 +204,7 @@ function coefficientFindings(solution: BandSolution, where: string): readonly Fi
       if (sigmas > priorSigmas) {
         add(
           'prior-disagrees',
-          `The ${words} in ${where} was known beforehand as ${term.value} ± ${term.error}, but with the observations it is ${value.toFixed(4)} ± ${error.toFixed(4)}: they differ by ${sigmas.toFixed(1)} standard errors.`,
+          `The ${words} in ${where} was known beforehand as ${String(term.value).replace('-', '−')} ± ${term.error}, but with the observations it is ${figure(value, 4)} ± ${error.toFixed(4)}: they differ by ${sigmas.toFixed(1)} standard errors.`,
           'Check whether the prior belongs to this equipment and site, or free the coefficient.',
         );
       }

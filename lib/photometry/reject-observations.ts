@@ -71,14 +71,9 @@ export function fitBelieved(problem: BandProblem, rows: Int32Array, options: Rej
     fit = fitBand(problem, used);
   }
   for (let round = 0; ; round += 1) {
-    const inFit = new Set(used);
     const judged = fit.kind === 'determined' ? judge(problem, rows, fit.nights, options.limits) : null;
     if (judged === null) return { fit, used, ...unjudged(problem), weights, converged: true };
-    const next = usable.filter(
-      (row) =>
-        problem.overrule[row] === overrules.keepIn ||
-        (judged.verdicts[row]?.kind === 'believed' && (round < onlyOutFrom || inFit.has(row))),
-    );
+    const next = believedRows(problem, usable, judged.verdicts, { used, onlyOut: round >= onlyOutFrom });
     const isSame = next.length === used.length && next.every((row, i) => row === used[i]);
     if (isSame || round === maxRounds) return { fit, used, ...judged, weights, converged: isSame };
     const refit = fitBand(problem, next);
@@ -124,14 +119,57 @@ function startingRows(
   const kept: number[] = [];
   for (const [k, { rows }] of nights.entries()) {
     const robust = starts[k] ?? (isFull[k] ? null : startOf(rows, borrowed));
+    const isNear = Array.from(
+      rows,
+      (_, i) => robust === null || Math.abs(robust.standardised[i]!) <= limits.rejectSigmas,
+    );
+    const [frames, stars] = [problem.frame, problem.star].map((of) => shareNear(of, rows, isNear));
     for (let i = 0; i < rows.length; i += 1) {
       const row = rows[i]!;
       if (robust !== null) weights[row] = robust.weights[i]!;
-      const isNear = robust === null || Math.abs(robust.standardised[i]!) <= limits.rejectSigmas;
-      if (isNear || problem.overrule[row] === overrules.keepIn) kept.push(row);
+      const isWhole = frames!.get(problem.frame[row]!)! >= half && stars!.get(problem.star[row]!)! >= half;
+      if ((isNear[i]! && isWhole) || problem.overrule[row] === overrules.keepIn) kept.push(row);
     }
   }
   return { start: Int32Array.from(kept).sort(), weights };
+}
+
+/**
+ * Rows of the next fit. What is outside comes in only with most of its frame and of its star: a few rows of a clouded
+ * frame alone would bring in the others, as at the start.
+ */
+function believedRows(
+  problem: BandProblem,
+  usable: Int32Array,
+  verdicts: readonly (RowVerdict | null)[],
+  { used, onlyOut }: { readonly used: Int32Array; readonly onlyOut: boolean },
+): Int32Array {
+  const inFit = new Set(used);
+  const isBelieved = Array.from(usable, (row) => verdicts[row]?.kind === 'believed');
+  const [frames, stars] = [problem.frame, problem.star].map((of) => shareNear(of, usable, isBelieved));
+  return usable.filter((row, i) => {
+    if (problem.overrule[row] === overrules.keepIn) return true;
+    if (!isBelieved[i]! || inFit.has(row)) return isBelieved[i]!;
+    return !onlyOut && frames!.get(problem.frame[row]!)! >= half && stars!.get(problem.star[row]!)! >= half;
+  });
+}
+
+const half = 0.5;
+
+/** Share of the rows of each frame, or star, that lie near. */
+function shareNear(
+  of: Int32Array,
+  rows: Int32Array,
+  isNear: readonly boolean[],
+): ReadonlyMap<number, number> {
+  const counts = new Map<number, { near: number; all: number }>();
+  for (let i = 0; i < rows.length; i += 1) {
+    const count = counts.get(of[rows[i]!]!) ?? { near: 0, all: 0 };
+    count.all += 1;
+    if (isNear[i]!) count.near += 1;
+    counts.set(of[rows[i]!]!, count);
+  }
+  return new Map([...counts].map(([place, { near, all }]) => [place, near / all]));
 }
 
 /** Size of coefficients in colour where nothing at all is known of them. Common practice, no source. */
@@ -164,10 +202,11 @@ function judge(
     const own = rows.filter((row) => problem.night[row] === night.night);
     const dofObservation = Math.max(1, night.rows.length - problem.sought.length);
     const limit = studentTLimit(normalTail(limits.rejectSigmas), dofObservation);
+    const { components, dofFrame } = expectedScatter(problem, night);
     const structures = findStructures(
-      view,
+      viewNight(problem, night.rows, components, night.priors) ?? view,
       own.filter((row) => problem.overrule[row] === overrules.none),
-      { rejectSigmas: limits.rejectSigmas, dofObservation, dofFrame: frameDegrees(problem, night) },
+      { rejectSigmas: limits.rejectSigmas, dofObservation, dofFrame },
     );
     all.push(...structures);
     const places = new Map(Array.from(night.rows, (row, i) => [row, i] as const));
@@ -182,6 +221,25 @@ function judge(
     }
   }
   return { verdicts, structures: all };
+}
+
+/** Scatter of frames in a good night [mag], and the degrees of freedom that it counts for. Common practice, no source. */
+const goodFrames = { scatter: 0.005, degrees: 4 } as const;
+
+/**
+ * What frames are expected to scatter: as they do in the fit, joined with what is known of good nights as the degrees of
+ * freedom weigh them. From five frames alone Student's t would allow a frame 30 standard errors, and a bank of cloud would
+ * be taken for scatter; with many frames nothing but the fit counts.
+ */
+function expectedScatter(
+  problem: BandProblem,
+  night: NightFit,
+): { readonly components: NightFit['components']; readonly dofFrame: number } {
+  const own = frameDegrees(problem, night);
+  if (!night.hasFrameScatter) return { components: night.components, dofFrame: own };
+  const dofFrame = own + goodFrames.degrees;
+  const block = (own * night.components.block + goodFrames.degrees * goodFrames.scatter ** 2) / dofFrame;
+  return { components: { ...night.components, block }, dofFrame };
 }
 
 /** Degrees of freedom of the scatter of frames: frames less the coefficients that only differ between frames. */

@@ -67,7 +67,8 @@ export function startRobustly(input: StartInput): RobustStart | null {
   const robust = fitRobust({
     ...rows,
     loss: { kind: 'tukey', c: bisquare },
-    scale: { kind: 'mad' },
+    // Held: found anew in each step it would grow with a bank of cloud until the cloud lay within it.
+    scale: trimmed.kind === 'determined' ? { kind: 'held', value: trimmed.scale } : { kind: 'mad' },
     start: trimmed.kind === 'determined' ? trimmed.coefficients : null,
   });
   if (robust.kind === 'undetermined') return null;

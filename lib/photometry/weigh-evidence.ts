@@ -17,7 +17,7 @@
  * Source: limits of scatter and drift: common practice, no source.
  */
 import { bandOrder, type BandName } from './bands';
-import { colourIndexWords, counted, listed, sentence } from './finding-words';
+import { colourIndexWords, counted, figure, listed, sentence } from './finding-words';
 import type {
   EvidenceItem,
   ExtinctionHistory,
@@ -42,9 +42,13 @@ const fewestRuns = -3;
 const oddExtinction = 3;
 /** Nights from which a history says something. */
 const shortestHistory = 3;
-/** What targets may lie outside the standards without being said to [airmass] and [h]. */
-const airmassMargin = 0.05;
-const hoursMargin = 0.25;
+/**
+ * What targets may lie outside the standards before it speaks for care [airmass] and [h]. The flags of the magnitudes tell
+ * every step outside; the night is judged by those that matter: 0.2 airmass times a usual error of the extinction, 0.005,
+ * is 0.001 mag.
+ */
+const airmassMargin = 0.2;
+const hoursMargin = 0.5;
 
 /** Weighs the evidence on one night.
  * @param solution - of the night, or of several
@@ -106,7 +110,7 @@ function scatter(bands: readonly BandSolution[], limits: VerdictLimits): Evidenc
   const items: EvidenceItem[] = [];
   const good = found.filter(({ value, limit }) => value <= limit);
   if (good.length > 0) {
-    const parts = good.map(({ band, value }, k) => `${value.toFixed(3)}${k === 0 ? ' mag' : ''} in ${band}`);
+    const parts = good.map(({ band, value }, k) => `${figure(value, 3)}${k === 0 ? ' mag' : ''} in ${band}`);
     const same = new Set(good.map(({ limit }) => limit)).size === 1;
     const within = listed(good.map(({ limit }) => String(limit)));
     items.push(
@@ -117,8 +121,8 @@ function scatter(bands: readonly BandSolution[], limits: VerdictLimits): Evidenc
     if (value <= limit) continue;
     const isBad = value > limits.notPhotometric;
     const words = isBad
-      ? `scatter ${value.toFixed(3)} mag in ${band}: above ${limits.notPhotometric}, where a night counts as not photometric.`
-      : `scatter ${value.toFixed(3)} mag in ${band}: above ${limit}, the limit of a photometric night.`;
+      ? `scatter ${figure(value, 3)} mag in ${band}: above ${limits.notPhotometric}, where a night counts as not photometric.`
+      : `scatter ${figure(value, 3)} mag in ${band}: above ${limit}, the limit of a photometric night.`;
     items.push(item(isBad ? 'against' : 'care', 'scatter', band, words));
   }
   return items;
@@ -150,12 +154,12 @@ function drift(bands: readonly BandSolution[], limits: VerdictLimits): EvidenceI
     if (driftTest === null || driftTest.error === 0) return [];
     const { value, error } = driftTest;
     const sigmas = Math.abs(value) / error;
-    const figures = `${value.toFixed(4)} ± ${error.toFixed(4)} mag per hour`;
+    const figures = `${figure(value, 4)} ± ${figure(error, 4)} mag per hour`;
     const length = hours === null ? 0 : hours.max - hours.min;
     if (sigmas < limits.driftSigma) {
       return [item('for', 'drift', band, `no significant drift in ${band}: ${figures}.`)];
     }
-    const words = `the zero point in ${band} drifts by ${figures}, ${sigmas.toFixed(1)} standard errors: ${Math.abs(value * length).toFixed(3)} mag over the ${length.toFixed(1)} hours of the standards.`;
+    const words = `the zero point in ${band} drifts by ${figures}, ${figure(sigmas, 1)} standard errors: ${Math.abs(value * length).toFixed(3)} mag over the ${figure(length, 1)} hours of the standards.`;
     return [item('care', 'drift', band, words)];
   });
 }
@@ -163,7 +167,7 @@ function drift(bands: readonly BandSolution[], limits: VerdictLimits): EvidenceI
 function runs(bands: readonly BandSolution[]): EvidenceItem[] {
   return bands.flatMap(({ band, runsTest }) => {
     if (runsTest === null || runsTest >= fewestRuns) return [];
-    const words = `residuals in ${band} keep their sign from frame to frame more often than chance would (deviate ${runsTest.toFixed(1)}): something changed slowly.`;
+    const words = `residuals in ${band} keep their sign from frame to frame more often than chance would (deviate ${figure(runsTest, 1)}): something changed slowly.`;
     return [item('care', 'runs', band, words)];
   });
 }
@@ -177,13 +181,13 @@ function extinction(bands: readonly BandSolution[], history: ExtinctionHistory):
     const expected = Math.hypot(past.scatter, found.error);
     const sigmas = expected > 0 ? (found.value - past.mean) / expected : 0;
     const isOdd = Math.abs(sigmas) > oddExtinction;
-    const words = `extinction ${found.value.toFixed(3)} in ${band}: ${Math.abs(sigmas).toFixed(1)} standard deviations ${sigmas < 0 ? 'below' : 'above'} the site’s mean of ${past.mean.toFixed(3)} over ${counted(past.n, 'night')}.`;
+    const words = `extinction ${figure(found.value, 3)} in ${band}: ${Math.abs(sigmas).toFixed(1)} standard deviations ${sigmas < 0 ? 'below' : 'above'} the site’s mean of ${figure(past.mean, 3)} over ${counted(past.n, 'night')}.`;
     return [item(isOdd ? 'care' : 'for', 'extinction', band, words)];
   });
 }
 
 const rangeWords = ({ min, max }: Range, digits: number): string =>
-  `${min.toFixed(digits)} to ${max.toFixed(digits)}`;
+  `${figure(min, digits)} to ${figure(max, digits)}`;
 
 function coverage(bands: readonly BandSolution[], { targets }: EvidenceContext): EvidenceItem[] {
   return bands.flatMap(({ band, airmass, colour, hours }) => {
@@ -214,7 +218,7 @@ function beyondWords(targets: Range, standards: Range): string {
   const before = standards.min - targets.min;
   const after = targets.max - standards.max;
   return listed([
-    ...(before > hoursMargin ? [`up to ${before.toFixed(1)} hours before the first standard`] : []),
-    ...(after > hoursMargin ? [`up to ${after.toFixed(1)} hours after the last`] : []),
+    ...(before > hoursMargin ? [`up to ${figure(before, 1)} hours before the first standard`] : []),
+    ...(after > hoursMargin ? [`up to ${figure(after, 1)} hours after the last`] : []),
   ]);
 }

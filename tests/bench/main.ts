@@ -6,13 +6,16 @@ import { startDatabaseServer } from '@/tests/support/database-server';
 import { databaseEnvironment } from '@/tests/support/environment';
 import { migrateDatabase, seedReferenceData } from '@/tests/support/scripts';
 import type { Bench, Figure } from './bench';
+import { download } from './download.bench';
 import { engine } from './engine.bench';
 import { figureTable, isMet } from './figure-table';
 import { latency } from './latency.bench';
+import { solve } from './solve.bench';
+import { transform } from './transform.bench';
 import { upload } from './upload.bench';
 
 /** In this order; every bench cleans up after itself. */
-const benches: readonly Bench[] = [upload, latency, engine];
+const benches: readonly Bench[] = [upload, latency, engine, transform, download, solve];
 
 /** Runs the benches whose names hold one of the words given, all without words. */
 async function main(words: readonly string[]): Promise<number> {

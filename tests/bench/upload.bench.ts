@@ -1,15 +1,9 @@
-import { createReadStream } from 'node:fs';
 import { rm } from 'node:fs/promises';
 import path from 'node:path';
-import { UploadQuery } from '@/lib/contracts/api/measurement-set';
-import { receiveMeasurements } from '@/lib/server/acts/receive-measurements';
-import { storeMeasurements } from '@/lib/server/acts/store-measurements';
-import type { PersonCaller } from '@/lib/server/policy/caller';
-import { checkMeasurements } from '@/workers/handlers/check-measurements';
 import type { Bench, BenchWorld, Figure } from './bench';
 import { loadPlainly } from './plain-load';
 import { peakMemory } from './peak-memory';
-import { benchNight, forgetSet, type BenchNight } from './bench-night';
+import { benchNight, forgetSet, takeTable, type BenchNight } from './bench-night';
 import { million, writeTable } from './write-table';
 
 /** A night of a wide-field camera, with positions only. */
@@ -67,26 +61,14 @@ async function warmUp(world: BenchWorld, night: BenchNight): Promise<void> {
 }
 
 async function uploadAndCheck(
-  { caller, id }: { readonly caller: PersonCaller; readonly id: string },
+  night: BenchNight,
   file: string,
 ): Promise<{ readonly seconds: number; readonly growth_MiB: number }> {
   const memory = peakMemory();
   const begun_ms = performance.now();
-  const stored = await storeMeasurements(caller, id, createReadStream(file));
-  const received = { ...stored, fileName: path.basename(file), contentType: 'text/csv' };
-  const { set } = await receiveMeasurements(caller, id, UploadQuery.parse({}), received);
-  const result = await checkMeasurements({
-    id: 'bench',
-    payload: { set },
-    caller: { kind: 'job', jobId: 'bench', personId: caller.personId, requestId: 'bench' },
-    attempt: 1,
-    maxTries: 1,
-    signal: new AbortController().signal,
-    progress: () => undefined,
-  });
+  const set = await takeTable(night, file);
   const seconds = (performance.now() - begun_ms) / 1000;
   const growth_MiB = memory.stop();
-  if (result.state !== 'matched') throw new Error(`The table was refused: ${result.faults} faults.`);
   await forgetSet(set);
   return { seconds, growth_MiB };
 }

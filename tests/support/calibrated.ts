@@ -10,7 +10,6 @@ import { newPublicId } from '@/lib/server/data/public-id';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { transformTargets } from '@/workers/handlers/transform-targets';
 import type { JobRun } from '@/workers/handler';
-import { check, upload } from './measurements';
 
 /** Truth of the simulated night, per band. */
 export const truth = {
@@ -145,18 +144,6 @@ export function targetTable(
     }
   }
   return `${lines.join('\n')}\n`;
-}
-
-/** Uploads a table of targets and takes it. */
-export async function takeTargets(
-  observer: PersonCaller,
-  night: TargetNight,
-  content: string,
-): Promise<string> {
-  const { set } = await upload(observer, night.id, content, { kind: 'target' });
-  const result = await check({ set, person: observer });
-  if (result.state !== 'matched') throw new Error(`The table was refused: ${result.faults} faults.`);
-  return set;
 }
 
 export interface NewSolution {

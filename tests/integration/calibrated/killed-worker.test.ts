@@ -4,7 +4,6 @@ import type { PersonCaller } from '@/lib/server/policy/caller';
 import {
   newSolution,
   storedStars,
-  takeTargets,
   targetNight,
   targetTable,
   transformationStates,
@@ -16,6 +15,7 @@ import { jobNow, queueJob, untilJob } from '@/tests/support/jobs';
 import { newCaller, newLogWorld, type LogWorld } from '@/tests/support/log-world';
 import { filesIn, mailsOf, removeOriginals } from '@/tests/support/measurements';
 import { root, script } from '@/tests/support/scripts';
+import { takeTargets } from '@/tests/support/take-targets';
 
 removeOriginals();
 const children: Child[] = [];

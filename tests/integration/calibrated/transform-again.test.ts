@@ -8,7 +8,6 @@ import {
   newSolution,
   setSolutionState,
   storedStars,
-  takeTargets,
   targetNight,
   targetTable,
   transform,
@@ -21,6 +20,7 @@ import { faultOf } from '@/tests/support/fault-of';
 import { jobNow } from '@/tests/support/jobs';
 import { newCaller, newLogWorld, type LogWorld } from '@/tests/support/log-world';
 import { removeOriginals } from '@/tests/support/measurements';
+import { takeTargets } from '@/tests/support/take-targets';
 
 removeOriginals();
 const thistle: FieldFrames = { object: 'Thistle 3', ra: 83.5, dec: 22.1, first: 1, n: 2, begin_hours: 3 };

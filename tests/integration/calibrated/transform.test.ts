@@ -8,7 +8,6 @@ import {
   newSolution,
   setSolutionState,
   storedStars,
-  takeTargets,
   targetNight,
   targetTable,
   transform,
@@ -21,6 +20,7 @@ import { emptyTables } from '@/tests/support/database';
 import { newCaller, newLogWorld, type LogWorld } from '@/tests/support/log-world';
 import { filesIn, mailsOf, removeOriginals } from '@/tests/support/measurements';
 import { expectWithin } from '@/tests/support/numbers';
+import { takeTargets } from '@/tests/support/take-targets';
 
 removeOriginals();
 

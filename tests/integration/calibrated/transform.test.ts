@@ -93,7 +93,7 @@ it('a star far from the middle of its frame is brought through the air above its
     const off = stored.filter((_, i) => i % 2 === odd).map(({ v }, i) => v - (apart[2 * i + odd]?.V ?? NaN));
     return off.reduce((sum, value) => sum + value, 0) / off.length;
   };
-  // By the airmass of the middle the southern half would come out fainter by a tenth or more.
+  // By the airmass of the middle the southern half would come out wrong by 0.08 mag.
   expect(stored).toHaveLength(400);
   expectWithin(mean(0), 0, { absolute: 0.003, unit: 'mag' });
   expectWithin(mean(1), 0, { absolute: 0.003, unit: 'mag' });

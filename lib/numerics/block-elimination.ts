@@ -83,6 +83,20 @@ export function reduceForGroup(group: EliminationGroup, qr: QrFactor, v: Float64
   return reduced;
 }
 
+/** The column of one of the border's subjects in S T½.
+ * @param group - of the rows
+ * @param s - place of the subject in the border [1]
+ * @param tau - its error [unit]
+ * @returns shape (n) [unit]
+ * @accuracy exact
+ * @source definition */
+export function borderColumn(group: EliminationGroup, s: number, tau: number): Float64Array {
+  const { border } = group;
+  const column = new Float64Array(border.length);
+  for (let i = 0; i < column.length; i += 1) if (border[i] === s) column[i] = tau;
+  return column;
+}
+
 interface BorderTerm {
   readonly v: Float64Array;
   readonly u: Float64Array;
@@ -102,7 +116,12 @@ export function groupWithoutBorder(
 ): Float64Array {
   const { border } = group;
   const { v, u } = of;
-  return v.map((value, i) => (border[i]! >= 0 ? value - borderTau[border[i]!]! * u[border[i]!]! : value));
+  const rest = v.slice();
+  for (let i = 0; i < rest.length; i += 1) {
+    const s = border[i]!;
+    if (s >= 0) rest[i]! -= borderTau[s]! * u[s]!;
+  }
+  return rest;
 }
 
 const dotFrom = (a: Float64Array, b: Float64Array, from: number): number => {
@@ -130,13 +149,7 @@ function reduceGroup(
   const qr = factorQr(whitened.design, whitened.response.length, group.own.columns);
   applyQTransposed(qr, whitened.response);
   const seen = [...new Set(group.border.filter((s) => s >= 0))].sort((a, b) => a - b);
-  const reduced = seen.map((s) =>
-    reduceForGroup(
-      group,
-      qr,
-      Float64Array.from(group.border, (at) => (at === s ? borderTau[s]! : 0)),
-    ),
-  );
+  const reduced = seen.map((s) => reduceForGroup(group, qr, borderColumn(group, s, borderTau[s]!)));
   const sides = Array.from({ length: sharedColumns }, (_, j) =>
     reduceForGroup(group, qr, group.shared.subarray(j * rows, (j + 1) * rows)),
   );

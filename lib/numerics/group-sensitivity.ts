@@ -12,7 +12,7 @@
  *
  * Symbols of the border as in `block-elimination`.
  */
-import { type Elimination, groupWithoutBorder, reduceForGroup } from './block-elimination';
+import { borderColumn, type Elimination, groupWithoutBorder, reduceForGroup } from './block-elimination';
 import { inverseR, solveR } from './householder-qr';
 import { type Noise } from './mixed-noise';
 import { applyProjection, type Projection, projectNoise } from './noise-traces';
@@ -78,12 +78,7 @@ export function senseGroup(elimination: Elimination, k: number): GroupSensitivit
   const q = input.sharedColumns;
   const inverse = inverseR(qr);
   const alone = projectNoise(group.noise, group.own.design, inverse, p);
-  const left = seen.map((s) =>
-    applyProjection(
-      alone,
-      Float64Array.from(group.border, (at) => (at === s ? input.borderTau[s]! : 0)),
-    ),
-  );
+  const left = seen.map((s) => applyProjection(alone, borderColumn(group, s, input.borderTau[s]!)));
   const solved = seen.map((s) => combine(left, (t) => borderInverse[s * size + seen[t]!]!, rows));
   const remaining = Array.from({ length: q }, (_, j) =>
     groupWithoutBorder(group, input.borderTau, {

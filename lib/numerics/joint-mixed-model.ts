@@ -27,6 +27,7 @@ import {
   hasNoScale,
   requireGroup,
   requirePriors,
+  solvedResiduals,
 } from './mixed-group';
 import { factorNoise, layoutNoise, type NoiseLayout } from './mixed-noise';
 import { estimateComponents, refineComponents, type RemlEstimate } from './reml';
@@ -108,7 +109,10 @@ export function fitJointMixedModel(input: JointMixedModelInput): JointMixedModel
   let components = estimates.filter((estimate) => estimate !== null);
   let elimination = solve(input, { border, layouts, components });
   for (let step = 0; step < input.refinements; step += 1) {
-    components = components.map((estimate, k) => refine(elimination, k, groups[k]!, estimate));
+    // One step of the joint likelihood in the components of each group.
+    components = components.map((estimate, k) =>
+      refineComponents(estimate, senseGroup(elimination, k), solvedResiduals(elimination, k)),
+    );
     elimination = solve(input, { border, layouts, components });
   }
   return collect(input, elimination, components);
@@ -141,7 +145,7 @@ function estimateAlone(group: JointGroup, input: JointMixedModelInput): RemlEsti
   };
   const layout = layoutNoise({ ...group, subjectSigma: input.subjectSigma, elsewhere: null });
   if (hasNoScale(layout, part, group.observationScatter)) return null;
-  return estimateComponents(layout, part, [group.observationScatter, group.blockScatter]);
+  return estimateComponents(layout, part, [group.observationScatter, group.blockScatter], group.near ?? null);
 }
 
 interface Border {
@@ -186,18 +190,6 @@ function solve(input: JointMixedModelInput, { border, layouts, components }: Giv
     sharedPriors: input.sharedPriors,
     borderTau: border.tau,
   });
-}
-
-/** One step of the joint likelihood in the components of group k. */
-function refine(
-  elimination: Elimination,
-  k: number,
-  group: JointGroup,
-  estimate: RemlEstimate,
-): RemlEstimate {
-  const sense = senseGroup(elimination, k);
-  const { sums } = describeGroup(elimination, k, group, estimate);
-  return refineComponents(estimate, sense, sums.v);
 }
 
 function collect(

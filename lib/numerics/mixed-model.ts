@@ -72,7 +72,12 @@ export function fitMixedModel(input: MixedModelInput): MixedModelFit | Undetermi
   const layout = layoutNoise({ ...input, elsewhere: null });
   if (hasNoScale(layout, part, input.observationScatter))
     return { kind: 'undetermined', reason: 'no-scale', dependent: [] };
-  const reml = estimateComponents(layout, part, [input.observationScatter, input.blockScatter]);
+  const reml = estimateComponents(
+    layout,
+    part,
+    [input.observationScatter, input.blockScatter],
+    input.near ?? null,
+  );
   const noise = factorNoise(layout, reml.components);
   const none = new Int32Array(layout.rows).fill(-1);
   // A joint model of one group, in which nothing is shared.

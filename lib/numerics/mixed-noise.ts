@@ -201,7 +201,8 @@ function addBlock(matrix: Float64Array, { layout, precision, from, to }: BlockRo
 /** A₀⁻¹ v, blocks alone. */
 function solveBlocks({ layout, precision, kappa }: Noise, v: Float64Array): Float64Array {
   const { rowsByBlock, blockStart } = layout;
-  const x = v.map((value, i) => value * precision[i]!);
+  const x = new Float64Array(v.length);
+  for (let i = 0; i < v.length; i += 1) x[i] = v[i]! * precision[i]!;
   for (let b = 0; b < kappa.length; b += 1) {
     if (kappa[b] === 0) continue;
     let sum = 0;
@@ -227,7 +228,12 @@ function gather({ slot, slotTau }: NoiseLayout, v: Float64Array): Float64Array {
 
 /** v − S T½ u. */
 function withoutSubjects({ slot, slotTau }: NoiseLayout, v: Float64Array, u: Float64Array): Float64Array {
-  return v.map((value, i) => (slot[i]! >= 0 ? value - slotTau[slot[i]!]! * u[slot[i]!]! : value));
+  const rest = v.slice();
+  for (let i = 0; i < rest.length; i += 1) {
+    const s = slot[i]!;
+    if (s >= 0) rest[i]! -= slotTau[s]! * u[s]!;
+  }
+  return rest;
 }
 
 /** A⁻¹ v.
@@ -253,7 +259,8 @@ function whitenBlocks(
   v: Float64Array,
 ): Float64Array {
   const { rowsByBlock, blockStart } = layout;
-  const x = v.map((value, i) => value * Math.sqrt(precision[i]!));
+  const x = new Float64Array(v.length);
+  for (let i = 0; i < v.length; i += 1) x[i] = v[i]! * Math.sqrt(precision[i]!);
   for (let b = 0; b < kappa.length; b += 1) {
     if (kappa[b] === 0) continue;
     const sum = blockPrecision[b]!;
@@ -280,13 +287,10 @@ function whitenBlocks(
 export function whiten(noise: Noise, v: Float64Array): Float64Array {
   const { layout, lower } = noise;
   const slots = layout.slotTau.length;
-  const x = whitenBlocks(noise, v);
-  if (slots === 0) return x;
+  if (slots === 0) return whitenBlocks(noise, v);
   // B′W v = T½ S′ W′W v = T½ S′ A₀⁻¹ v.
   const u = gather(layout, solveBlocks(noise, v));
   solveLower(lower, slots, u);
   solveLowerTransposed(lower, slots, u, 1);
-  const none = new Float64Array(v.length);
-  const correction = whitenBlocks(noise, withoutSubjects(layout, none, u));
-  return x.map((value, i) => value + correction[i]!);
+  return whitenBlocks(noise, withoutSubjects(layout, v, u));
 }

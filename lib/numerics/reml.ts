@@ -9,9 +9,9 @@
  * of nine starts, bounds included, is improved by Newton steps that stay within the bounds (Bertsekas 1982, SIAM Journal
  * on Control and Optimization 20, 221).
  */
-import { fitWhitened, type LinearPart } from './generalised-least-squares';
+import { fitWhitened, type LinearPart, type WhitenedFit } from './generalised-least-squares';
 import { applyQTransposed, factorQr, inverseR } from './householder-qr';
-import { type Components, factorNoise, type NoiseLayout, solveNoise } from './mixed-noise';
+import { type Components, factorNoise, type Noise, type NoiseLayout, solveNoise } from './mixed-noise';
 import { applyProjection, type Projection, projectNoise, spreadBlockSums } from './noise-traces';
 
 /** A component is estimated, or held at a standard deviation that the caller knows. */
@@ -38,6 +38,8 @@ export interface Termination {
 
 export interface RemlEstimate {
   readonly components: Components;
+  /** Where the search ended, before any refinement: the next one, for nearly the same rows, may begin there. */
+  readonly near: Components;
   readonly observation: Scatter;
   readonly block: Scatter;
   readonly criterion: number;
@@ -73,10 +75,18 @@ interface Problem {
 
 const asComponents = (theta: Pair): Components => ({ observation: theta[0], block: theta[1] });
 
-function criterionAt({ layout, part }: Problem, theta: Pair): number {
+/** The fit at given components. */
+interface Point {
+  readonly theta: Pair;
+  readonly noise: Noise;
+  readonly fit: WhitenedFit;
+  readonly criterion: number;
+}
+
+function pointAt({ layout, part }: Problem, theta: Pair): Point {
   const noise = factorNoise(layout, asComponents(theta));
   const fit = fitWhitened(noise, part);
-  return noise.logDet + fit.logDetInformation + fit.chi2;
+  return { theta, noise, fit, criterion: noise.logDet + fit.logDetInformation + fit.chi2 };
 }
 
 interface Derivatives {
@@ -85,9 +95,7 @@ interface Derivatives {
   readonly information: readonly [number, number, number];
 }
 
-function derivativesAt({ layout, part }: Problem, theta: Pair): Derivatives {
-  const noise = factorNoise(layout, asComponents(theta));
-  const fit = fitWhitened(noise, part);
+function derivativesAt({ part }: Problem, { noise, fit }: Point): Derivatives {
   const projection = projectNoise(noise, part.design, inverseR(fit.qr), fit.qr.rank);
   return derivativesOf(projection, projection, solveNoise(noise, residuals(part, fit.coefficients)));
 }
@@ -137,17 +145,20 @@ function newtonStep({ gradient, information }: Derivatives, moves: readonly [boo
 }
 
 interface Descent {
-  readonly theta: Pair;
-  readonly criterion: number;
+  readonly point: Point;
+  readonly slope: Derivatives;
   readonly termination: Termination;
 }
 
-function descend(problem: Problem, start: Pair, startCriterion: number): Descent {
+function descend(problem: Problem, start: Point): Descent {
   const { free, least } = problem;
-  let theta = start;
-  let criterion = startCriterion;
-  for (let iterations = 0; iterations < maxIterations; iterations += 1) {
-    const slope = derivativesAt(problem, theta);
+  let point = start;
+  for (let iterations = 0; ; iterations += 1) {
+    const slope = derivativesAt(problem, point);
+    if (iterations === maxIterations) {
+      return { point, slope, termination: { reason: 'iteration-limit', iterations } };
+    }
+    const { theta, criterion } = point;
     const moves = [0, 1].map(
       (k) => free[k]! && !(theta[k]! <= least[k]! && slope.gradient[k]! >= 0),
     ) as unknown as readonly [boolean, boolean];
@@ -155,18 +166,17 @@ function descend(problem: Problem, start: Pair, startCriterion: number): Descent
     const flat = [0, 1].every(
       (k) => !moves[k] || Math.abs(slope.gradient[k]!) <= gradientTolerance * Math.sqrt(Math.abs(size[k]!)),
     );
-    if (flat) return { theta, criterion, termination: { reason: 'converged', iterations } };
+    if (flat) return { point, slope, termination: { reason: 'converged', iterations } };
     const step = newtonStep(slope, moves);
     const next = lineSearch(problem, { theta, criterion, step, gradient: slope.gradient });
     if (next === null) {
       // Where the promised gain drowns in the criterion's rounding there is nothing left to find.
       const promised = -(step[0] * slope.gradient[0] + step[1] * slope.gradient[1]);
       const reason = promised <= 1e-9 * (1 + Math.abs(criterion)) ? 'converged' : 'stalled';
-      return { theta, criterion, termination: { reason, iterations } };
+      return { point, slope, termination: { reason, iterations } };
     }
-    ({ theta, criterion } = next);
+    point = next;
   }
-  return { theta, criterion, termination: { reason: 'iteration-limit', iterations: maxIterations } };
 }
 
 interface Line {
@@ -177,7 +187,7 @@ interface Line {
 }
 
 /** Halves the step, bent along the bounds, until the criterion falls as the gradient promised, to a ten-thousandth. */
-function lineSearch(problem: Problem, line: Line): { theta: Pair; criterion: number } | null {
+function lineSearch(problem: Problem, line: Line): Point | null {
   const { theta, criterion, step, gradient } = line;
   for (let scale = 1; scale > 1e-9; scale /= 2) {
     const next: Pair = [
@@ -186,9 +196,10 @@ function lineSearch(problem: Problem, line: Line): { theta: Pair; criterion: num
     ];
     const moved: Pair = [next[0] - theta[0], next[1] - theta[1]];
     if (moved[0] === 0 && moved[1] === 0) return null;
-    const value = criterionAt(problem, next);
     const promised = gradient[0] * moved[0] + gradient[1] * moved[1];
-    if (promised < 0 && value <= criterion + 1e-4 * promised) return { theta: next, criterion: value };
+    if (!(promised < 0)) continue;
+    const point = pointAt(problem, next);
+    if (point.criterion <= criterion + 1e-4 * promised) return point;
   }
   return null;
 }
@@ -213,15 +224,17 @@ function componentCovariance(
  * @param layout - who shares what
  * @param part - design of full column rank, priors included; response [unit]
  * @param rules - what to estimate and what to hold, [observation, block] [unit]
+ * @param near - where to begin, from a fit of nearly the same rows; null for nine starts [unit²]
  * @returns components, their standard errors, the criterion at the minimum, and how the search ended
  * @throws {RangeError} when a held scatter leaves a row without any variance
  * @accuracy criterion 1e-8, components 1e-6 relative, against a dense minimisation; of several minima the one that the
- * best of nine starts leads to
+ * best of nine starts, or the near one, leads to
  * @source Patterson and Thompson 1971, Biometrika 58, 545; Gilmour, Thompson and Cullis 1995, Biometrics 51, 1440 */
 export function estimateComponents(
   layout: NoiseLayout,
   part: LinearPart,
   rules: readonly [ScatterRule, ScatterRule],
+  near: Components | null,
 ): RemlEstimate {
   let shared = false;
   for (let b = 0; b + 1 < layout.blockStart.length; b += 1) {
@@ -244,14 +257,17 @@ export function estimateComponents(
   const scale = Math.max(crude, 1e-12 * size);
   const least: Pair = [free[0] && bare ? (floorShare * scale) ** 2 : held[0], held[1]];
   const problem: Problem = { layout, part, free, least };
-  const descent = search(problem, scale, hasFreedom);
-  const { theta } = descent;
+  const descent = free[0] || free[1] ? descend(problem, bestStart(problem, scale, near)) : null;
+  const point = descent === null ? pointAt(problem, least) : descent.point;
+  const { theta } = point;
   const inside = [0, 1].map((k) => free[k]! && theta[k]! > least[k]!) as unknown as readonly [
     boolean,
     boolean,
   ];
   const covariance =
-    inside[0] || inside[1] ? componentCovariance(derivativesAt(problem, theta), inside) : new Float64Array(4);
+    descent !== null && (inside[0] || inside[1])
+      ? componentCovariance(descent.slope, inside)
+      : new Float64Array(4);
   const scatter = (k: 0 | 1, state: Scatter['state']): Scatter => {
     const sigma = Math.sqrt(theta[k]);
     return {
@@ -264,33 +280,32 @@ export function estimateComponents(
     rules[k].kind === 'hold' ? 'held' : inside[k] ? 'estimated' : 'at-zero';
   return {
     components: asComponents(theta),
+    near: asComponents(theta),
     observation: scatter(0, stateOf(0)),
     block: scatter(1, rules[1].kind === 'estimate' && !separable ? 'not-separable' : stateOf(1)),
-    criterion: descent.criterion,
+    criterion: point.criterion,
     componentCovariance: covariance,
-    termination: descent.termination,
+    termination: descent?.termination ?? { reason: hasFreedom ? 'fixed' : 'no-freedom', iterations: 0 },
   };
 }
 
-/** The best of the starts, followed down. */
-function search(problem: Problem, scale: number, hasFreedom: boolean): Descent {
+/** The best of nine starts. A near one stands for them, unless it lies at a bound: what held it there may be gone. */
+function bestStart(problem: Problem, scale: number, near: Components | null): Point {
   const { free, least } = problem;
+  if (near !== null) {
+    const theta: Pair = [free[0] ? near.observation : least[0], free[1] ? near.block : least[1]];
+    if ([0, 1].every((k) => !free[k] || theta[k]! > least[k]!)) return pointAt(problem, theta);
+  }
   const startsOf = (k: 0 | 1): number[] =>
     free[k] ? [least[k], (0.3 * scale) ** 2, scale ** 2] : [least[k]];
-  let best: Pair = least;
-  let lowest = Infinity;
+  let best = pointAt(problem, least);
   for (const observation of startsOf(0)) {
     for (const block of startsOf(1)) {
-      const value = criterionAt(problem, [observation, block]);
-      if (value < lowest) {
-        lowest = value;
-        best = [observation, block];
-      }
+      const point = pointAt(problem, [observation, block]);
+      if (point.criterion < best.criterion) best = point;
     }
   }
-  if (free[0] || free[1]) return descend(problem, best, lowest);
-  const reason = hasFreedom ? 'fixed' : 'no-freedom';
-  return { theta: best, criterion: lowest, termination: { reason, iterations: 0 } };
+  return best;
 }
 
 interface JointTraces extends Traces {

@@ -217,6 +217,18 @@ function faultOf(
   return null;
 }
 
+/** Rows of one night: they stand together, as rows are sorted by night first.
+ * @param problem - of the band
+ * @param place - of the night [1]
+ * @returns numbers of its rows, ascending [1]
+ * @source definition */
+export function rowsOfNight(problem: BandProblem, place: number): Int32Array {
+  const { night } = problem;
+  const first = night.indexOf(place);
+  if (first < 0) return new Int32Array(0);
+  return Int32Array.from({ length: night.lastIndexOf(place) + 1 - first }, (_, k) => first + k);
+}
+
 /** Design of some rows of a band, one column for each coefficient that is sought.
  * @param problem - of the band
  * @param rows - numbers of rows, shape (m) [1]

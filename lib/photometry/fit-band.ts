@@ -23,6 +23,8 @@ export interface NightFit {
   /** Of each coefficient's t interval, shape (p). */
   readonly degreesOfFreedom: Float64Array;
   readonly components: Components;
+  /** Where the search for those of nearly the same rows may begin. */
+  readonly near: Components;
   /** Whether some frame has two rows, so that its scatter can be told from that of observations. */
   readonly hasFrameScatter: boolean;
   readonly chi2: number;
@@ -60,8 +62,16 @@ export function rowsByNight(
   problem: BandProblem,
   rows: Int32Array,
 ): readonly { readonly night: number; readonly rows: Int32Array }[] {
-  const nights = [...new Set(Array.from(rows, (row) => problem.night[row]!))].sort((a, b) => a - b);
-  return nights.map((night) => ({ night, rows: rows.filter((row) => problem.night[row] === night) }));
+  const byNight = new Map<number, number[]>();
+  for (const row of rows) {
+    const night = problem.night[row]!;
+    const known = byNight.get(night);
+    if (known === undefined) byNight.set(night, [row]);
+    else known.push(row);
+  }
+  return [...byNight]
+    .map(([night, own]) => ({ night, rows: Int32Array.from(own) }))
+    .sort((a, b) => a.night - b.night);
 }
 
 /** Whether some frame has two of the rows.
@@ -76,16 +86,23 @@ export function sharesFrames(problem: BandProblem, rows: Int32Array): boolean {
 /** Fits a band by restricted maximum likelihood: one night by itself, several jointly.
  * @param problem - of the band
  * @param rows - numbers of rows that take part, shape (m) [1]
+ * @param before - a fit of nearly the same rows, which saves time; null for none
  * @returns the fit of every night that has rows, or what cannot be told apart
  * @accuracy as lib/numerics/mixed-model and joint-mixed-model
  * @source see there */
-export function fitBand(problem: BandProblem, rows: Int32Array): BandFit {
-  return problem.nights > 1 ? fitJointly(problem, rows) : fitAlone(problem, rows, modelPriors(problem));
+export function fitBand(problem: BandProblem, rows: Int32Array, before: BandFit | null): BandFit {
+  const known = before?.kind === 'determined' ? before.nights : [];
+  if (problem.nights > 1) return fitJointly(problem, rows, known);
+  return fitAlone(problem, rows, { priors: modelPriors(problem), near: known[0]?.near ?? null });
 }
 
 const usual: ScatterRule = { kind: 'estimate' };
 
-function groupOf(problem: BandProblem, rows: Int32Array): Omit<GroupRows, 'design' | 'priors'> {
+function groupOf(
+  problem: BandProblem,
+  rows: Int32Array,
+  near: Components | null,
+): Omit<GroupRows, 'design' | 'priors'> {
   return {
     response: pick(problem.response, rows),
     sigma: pick(problem.sigma, rows),
@@ -93,21 +110,30 @@ function groupOf(problem: BandProblem, rows: Int32Array): Omit<GroupRows, 'desig
     block: sharesFrames(problem, rows) ? blocksOf(problem, rows) : null,
     observationScatter: usual,
     blockScatter: usual,
+    ...(near === null ? {} : { near }),
   };
 }
 
 const hasEnded = ({ reason }: Termination): boolean =>
   reason === 'converged' || reason === 'fixed' || reason === 'no-freedom';
 
+export interface AloneOptions {
+  /** On the columns of the problem. */
+  readonly priors: readonly Prior[];
+  /** Where the search for the components begins, from a fit of nearly the same rows; null for none [mag²]. */
+  readonly near: Components | null;
+}
+
 /** Fits rows of one night.
  * @param problem - of the band
  * @param rows - of the night, shape (n) [1]
- * @param priors - on the columns of the problem
+ * @param options - priors, and where to begin
  * @returns the fit, or what cannot be told apart
  * @accuracy as lib/numerics/mixed-model
  * @source see there */
-export function fitAlone(problem: BandProblem, rows: Int32Array, priors: readonly Prior[]): BandFit {
-  const group = groupOf(problem, rows);
+export function fitAlone(problem: BandProblem, rows: Int32Array, options: AloneOptions): BandFit {
+  const { priors, near } = options;
+  const group = groupOf(problem, rows, near);
   const fit = fitMixedModel({
     ...group,
     design: designOf(problem, rows),
@@ -128,6 +154,7 @@ export function fitAlone(problem: BandProblem, rows: Int32Array, priors: readonl
         covariance: fit.covariance,
         degreesOfFreedom: fit.degreesOfFreedom,
         components: componentsOf(fit),
+        near: fit.near,
         hasFrameScatter: group.block !== null,
         chi2: fit.chi2,
         conditionNumber: fit.conditionNumber,
@@ -157,7 +184,8 @@ function columnsOf(design: Float64Array, n: number, columns: readonly number[]):
 }
 
 /** Zero point, extinction and their drifts are each night's own; the other columns are shared. */
-function fitJointly(problem: BandProblem, rows: Int32Array): BandFit {
+function fitJointly(problem: BandProblem, rows: Int32Array, before: readonly NightFit[]): BandFit {
+  const nearOf = new Map(before.map(({ night, near }) => [night, near] as const));
   const nights = rowsByNight(problem, rows);
   const places = problem.sought.map((_, column) => column);
   const own = places.filter((column) => nightCoefficients.includes(problem.sought[column]!.name));
@@ -171,7 +199,7 @@ function fitJointly(problem: BandProblem, rows: Int32Array): BandFit {
   const groups = nights.map((night) => {
     const design = designOf(problem, night.rows);
     return {
-      ...groupOf(problem, night.rows),
+      ...groupOf(problem, night.rows, nearOf.get(night.night) ?? null),
       design: columnsOf(design, night.rows.length, own),
       columns: own.length,
       sharedDesign: columnsOf(design, night.rows.length, shared),
@@ -223,6 +251,7 @@ function fitJointly(problem: BandProblem, rows: Int32Array): BandFit {
         covariance,
         degreesOfFreedom,
         components: componentsOf(group),
+        near: group.near,
         hasFrameScatter: groups[k]!.block !== null,
         chi2: chi2Of(problem, nightRows, group),
         conditionNumber: group.conditionNumber,

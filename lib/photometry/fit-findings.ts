@@ -1,6 +1,6 @@
 /** What a person should know about a fit that gave numbers, and about observations that could not enter one. */
-import { type BandProblem, type MissingRow } from './band-problem';
-import { coefficientWords, counted, fainterOrBrighter, listed, sentence, figure } from './finding-words';
+import { rowsOfNight, type BandProblem, type MissingRow } from './band-problem';
+import { coefficientWords, counted, fainterOrBrighter, figure, listed, sentence } from './finding-words';
 import { type BandSolution, type Finding } from './night-solution';
 import { structureWords } from './observation-results';
 import { type Rejection } from './reject-observations';
@@ -91,7 +91,7 @@ export function determinedFindings(
         `Every frame in ${where} has one star, so the scatter of frames cannot be told from that of observations; the latter holds both.`,
       );
     }
-    const mine = rowsOf(problem, night);
+    const mine = rowsOfNight(problem, night);
     const usable = mine.filter((row) => problem.overrule[row] === overrules.none);
     const rejected = usable.filter((row) => (rejection.verdicts[row]?.kind ?? 'believed') !== 'believed');
     if (rejected.length > manyRejected * usable.length) {
@@ -116,9 +116,6 @@ export function determinedFindings(
   return found;
 }
 
-const rowsOf = ({ night, observation }: BandProblem, place: number): readonly number[] =>
-  Array.from(observation, (_, row) => row).filter((row) => night[row] === place);
-
 function structureRemedy({ kind, shift }: Structure): string {
   switch (kind) {
     case 'star':
@@ -137,7 +134,7 @@ function overruledFindings(
   rejection: Rejection,
   { night, where }: { readonly night: number; readonly where: string },
 ): readonly Finding[] {
-  const mine = rowsOf(problem, night);
+  const mine = rowsOfNight(problem, night);
   const against = (row: number): boolean => (rejection.verdicts[row]?.kind ?? 'believed') !== 'believed';
   const out = mine.filter((row) => problem.overrule[row] === overrules.keepOut);
   const kept = mine.filter((row) => problem.overrule[row] === overrules.keepIn);
@@ -161,7 +158,7 @@ function overruledFindings(
   }
   if (kept.length > 0) {
     const outliers = kept.filter(against);
-    const shifts = outliers.flatMap((row) => {
+    const shifts = [...outliers].flatMap((row) => {
       const verdict = rejection.verdicts[row];
       return verdict?.kind === 'outlier' ? [fainterOrBrighter(verdict.shift)] : [];
     });

@@ -1,6 +1,6 @@
 /** What a fit says of every observation that it was given. */
 import { colourForBand, magnitudeInBand } from './bands';
-import { designOf, type BandProblem, type MissingRow } from './band-problem';
+import { designOf, rowsOfNight, type BandProblem, type MissingRow } from './band-problem';
 import { fainterOrBrighter, listed } from './finding-words';
 import { type NightFit } from './fit-band';
 import { observationReasons, type BandSolution, type ObservationResults } from './night-solution';
@@ -89,8 +89,7 @@ export function recordFit(
   for (const fit of rejection.fit.nights) {
     const view = viewNight(problem, fit.rows, fit.components, fit.priors);
     const places = new Map(Array.from(fit.rows, (row, i) => [row, i] as const));
-    for (let row = 0; row < problem.observation.length; row += 1) {
-      if (problem.night[row] !== fit.night) continue;
+    for (const row of rowsOfNight(problem, fit.night)) {
       const o = problem.observation[row]!;
       const isUsed = places.has(row);
       const { residual, error } = residualOf(problem, fit, row, isUsed);

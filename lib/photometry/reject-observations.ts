@@ -64,11 +64,11 @@ export function fitBelieved(problem: BandProblem, rows: Int32Array, options: Rej
   const usable = rows.filter((row) => problem.overrule[row] !== overrules.keepOut);
   const { start, weights } = startingRows(problem, usable, options);
   let used = start;
-  let fit = fitBand(problem, used);
+  let fit = fitBand(problem, used, null);
   // Without the rows that the start rejects a coefficient may hang in the air; then all of them begin.
   if (fit.kind === 'undetermined' && used.length < usable.length) {
     used = usable;
-    fit = fitBand(problem, used);
+    fit = fitBand(problem, used, null);
   }
   for (let round = 0; ; round += 1) {
     const judged = fit.kind === 'determined' ? judge(problem, rows, fit.nights, options.limits) : null;
@@ -76,7 +76,7 @@ export function fitBelieved(problem: BandProblem, rows: Int32Array, options: Rej
     const next = believedRows(problem, usable, judged.verdicts, { used, onlyOut: round >= onlyOutFrom });
     const isSame = next.length === used.length && next.every((row, i) => row === used[i]);
     if (isSame || round === maxRounds) return { fit, used, ...judged, weights, converged: isSame };
-    const refit = fitBand(problem, next);
+    const refit = fitBand(problem, next, fit);
     if (refit.kind === 'undetermined') return { fit: refit, used: next, ...judged, weights, converged: true };
     used = next;
     fit = refit;
@@ -196,10 +196,11 @@ function judge(
 ): Pick<Rejection, 'verdicts' | 'structures'> | null {
   const verdicts: (RowVerdict | null)[] = Array.from(problem.observation, () => null);
   const all: Structure[] = [];
+  const rowsOf = new Map(rowsByNight(problem, rows).map((one) => [one.night, one.rows] as const));
   for (const night of nights) {
     const view = viewNight(problem, night.rows, night.components, night.priors);
     if (view === null) return null;
-    const own = rows.filter((row) => problem.night[row] === night.night);
+    const own = rowsOf.get(night.night) ?? new Int32Array(0);
     const dofObservation = Math.max(1, night.rows.length - problem.sought.length);
     const limit = studentTLimit(normalTail(limits.rejectSigmas), dofObservation);
     const { components, dofFrame } = expectedScatter(problem, night);

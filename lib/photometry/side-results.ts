@@ -68,7 +68,7 @@ function driftTest(problem: BandProblem, fit: NightFit): SideResults['driftTest'
     sought: [...problem.sought, { name: 'drift', term: { status: 'free' } }],
   };
   if (fit.rows.length <= widened.sought.length) return null;
-  const beside = fitAlone(widened, fit.rows, fit.priors);
+  const beside = fitAlone(widened, fit.rows, { priors: fit.priors, near: fit.components });
   if (beside.kind === 'undetermined') return null;
   const [night] = beside.nights;
   if (night === undefined) return null;

@@ -14,7 +14,7 @@
  * The caller sees to it that published errors are known: an observation of a star without one is not fitted, because to
  * take it as exact, or to make one up, would be a decision on science (0.003 mag is common practice, no source).
  */
-import { bandProblem, type BandProblem, type MissingRow } from './band-problem';
+import { bandProblem, rowsOfNight, type BandProblem, type MissingRow } from './band-problem';
 import { determinedSolution, undeterminedSolution } from './band-solution';
 import { nightFindings, rankFindings, sharedFindings, type DeterminationOptions } from './determination';
 import { rowsByNight } from './fit-band';
@@ -97,7 +97,7 @@ function solveBand(
   }
   const fits = rejection?.fit.kind === 'determined' ? rejection.fit.nights : [];
   const solutions = observations.nightNames.map((_, night): BandSolution => {
-    const own = every.filter((row) => problem.night[row] === night);
+    const own = rowsOfNight(problem, night);
     const fit = fits.find((one) => one.night === night);
     if (fit === undefined) return undeterminedSolution(problem, night, own.filter(isUsable));
     return determinedSolution(problem, fit, own.length - fit.rows.length, sideResults(problem, fit));

@@ -2,11 +2,12 @@
 
 import { useEffect, useRef } from 'react';
 
+/** A tick box has the focus after it was ticked, and takes no letters. */
+const typedInto =
+  'input:not([type="checkbox"], [type="radio"], [type="button"], [type="submit"]), textarea, select, dialog[open]';
+
 function isTyping(target: EventTarget | null): boolean {
-  return (
-    target instanceof HTMLElement &&
-    (target.isContentEditable || target.closest('input, textarea, select, dialog[open]') !== null)
-  );
+  return target instanceof HTMLElement && (target.isContentEditable || target.closest(typedInto) !== null);
 }
 
 /** Does something at a single key, unless somebody is typing, a dialogue is open, or the key belongs to the browser. */

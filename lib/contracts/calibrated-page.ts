@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import type { CalibratedFlag } from '@/lib/photometry/calibrated-flags';
+import { calibratedFlags, type CalibratedFlag } from '@/lib/photometry/calibrated-flags';
 import type { Verdict } from '@/lib/photometry/night-evidence';
 import type { CalibratedStar } from './api/calibrated';
 import type { Job } from './api/job';
@@ -26,6 +26,10 @@ export type CalibratedSort = (typeof calibratedSorts)[number];
 export const calibratedPerPage = 100;
 /** Most stars that the diagram draws; of more, an even choice. */
 export const mostDiagramStars = 5000;
+
+/** A caution that all stars of a night share says nothing of any of them: the page says it once, for the night. */
+export const cautionOfNight: CalibratedFlag = 'night_with_care';
+export const bitOfNight = 1 << calibratedFlags[cautionOfNight].bit;
 
 /** A limit of a range as people type it: also with a comma or a true minus sign. */
 const Limit = z
@@ -68,7 +72,7 @@ export interface CalibratedPageQuery {
   readonly v_to?: number;
   readonly bv_from?: number;
   readonly bv_to?: number;
-  /** Only stars without a caution. */
+  /** Only stars without a caution of their own. */
   readonly clean?: boolean;
   readonly sort?: CalibratedSort;
   readonly descending?: boolean;

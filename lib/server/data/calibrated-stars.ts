@@ -1,5 +1,10 @@
 import 'server-only';
-import type { CalibratedPageQuery, CalibratedSort, DiagramStar } from '@/lib/contracts/calibrated-page';
+import {
+  bitOfNight,
+  type CalibratedPageQuery,
+  type CalibratedSort,
+  type DiagramStar,
+} from '@/lib/contracts/calibrated-page';
 import { select, selectOne, type SqlValues } from './database';
 
 /** A row as it is stored, under the names of the interface; the total errors are the reader's to make. */
@@ -69,6 +74,8 @@ function orderOf({ sort, descending }: CalibratedPageQuery): string {
   return `${sortKeys[sort]} IS NULL, ${sortKeys[sort]} ${direction}, c.star_no`;
 }
 
+const isClean = `(c.flags | ${bitOfNight}) = ${bitOfNight}`;
+
 interface Narrowed {
   readonly where: string;
   readonly values: SqlValues;
@@ -82,7 +89,7 @@ function narrowed(transformation: number, query: CalibratedPageQuery): Narrowed 
     query.v_to === undefined ? '' : 'c.v <= :vTo',
     query.bv_from === undefined ? '' : 'c.bv >= :bvFrom',
     query.bv_to === undefined ? '' : 'c.bv <= :bvTo',
-    query.clean === true ? 'c.flags = 0' : '',
+    query.clean === true ? isClean : '',
   ];
   return {
     where: conditions.filter((sql) => sql !== '').join(' AND '),
@@ -112,7 +119,7 @@ export interface StarSummary {
 export async function starSummary(transformation: number, bits: readonly number[]): Promise<StarSummary> {
   const perBit = bits.map((bit) => `COUNT(IF(c.flags & ${1 << bit}, 1, NULL)) AS bit${bit}`);
   const row = await selectOne<Readonly<Record<string, number>>>(
-    `SELECT COUNT(*) AS nStars, COUNT(IF(c.flags = 0, 1, NULL)) AS nClean, COUNT(c.b) AS nB, COUNT(c.ub) AS nUB,
+    `SELECT COUNT(*) AS nStars, COUNT(IF(${isClean}, 1, NULL)) AS nClean, COUNT(c.b) AS nB, COUNT(c.ub) AS nUB,
             COUNT(c.vr) AS nVR, COUNT(c.vi) AS nVI, ${perBit.join(', ')}
        FROM ${table} WHERE c.transformation_id = :transformation`,
     { transformation },
@@ -196,5 +203,5 @@ export async function diagramStars(
       WHERE q.place MOD :step = 0 OR q.star_no = :at ORDER BY q.star_no`,
     { ...values, step, at: at ?? null },
   );
-  return rows.map(({ flags, ...star }) => ({ ...star, hasCautions: flags !== 0 }));
+  return rows.map(({ flags, ...star }) => ({ ...star, hasCautions: (flags & ~bitOfNight) !== 0 }));
 }

@@ -25,8 +25,8 @@ import {
   starSummary,
   type StarRow,
 } from '@/lib/server/data/calibrated-stars';
+import { nightById } from '@/lib/server/data/night-names';
 import { findNight, requireNight, type NightRow } from '@/lib/server/data/nights';
-import { observatory } from '@/lib/server/data/observatory';
 import { solutionSubject } from '@/lib/server/data/solutions';
 import type { Caller } from '@/lib/server/policy/caller';
 import { may } from '@/lib/server/policy/matrix';
@@ -128,9 +128,10 @@ async function resultOf(
 }
 
 async function originOf(night: NightRow, row: ResultRow): Promise<CalibratedOrigin> {
+  const name = await nightById(night.id);
   return {
-    observatory: (await observatory())?.name ?? '',
-    telescope: night.telescope,
+    observatory: name.observatory,
+    telescope: name.telescopeName,
     solution: row.solution,
     number: row.number,
     state: row.solutionState,

@@ -174,6 +174,24 @@ describe('the list of stars', () => {
     expect(await names({ star: "'" })).toEqual([]);
   });
 
+  it('counts a caution that the whole night has against no single star', async () => {
+    await execute(
+      'UPDATE calibrated_magnitudes SET flags = flags | 64 WHERE star LIKE :t',
+      { t: 'T %' },
+      null,
+    );
+    const { stars, nClean, cautions, diagram } = await result('thistlePi', { clean: true });
+    await execute(
+      'UPDATE calibrated_magnitudes SET flags = flags & ~64 WHERE star LIKE :t',
+      { t: 'T %' },
+      null,
+    );
+    expect(stars.map(({ star, flags }) => [star, flags])).toEqual([['T 2', ['night_with_care']]]);
+    expect(nClean).toBe(1);
+    expect(cautions[0]).toEqual({ flag: 'night_with_care', nStars: 4 });
+    expect(diagram.map(({ star, hasCautions }) => [star, hasCautions])).toEqual([['T 2', false]]);
+  });
+
   it('has the total error of each magnitude beside its parts, and its cautions by name', async () => {
     const [first, , third] = (await result('thistlePi')).stars;
     expectWithin(first?.V_total ?? NaN, Math.hypot(0.02, 0.004), { absolute: 1e-12, unit: 'mag' });
@@ -200,6 +218,7 @@ describe('the list of stars', () => {
     ]);
     const old = await result('thistlePi', { solution: earlier.publicId });
     expect(old.origin).toMatchObject({ number: 1, state: 'superseded', standardsSource: 'Landolt 1992' });
+    expect(old.origin.telescope).toBe('Larkspur 0.8 m');
     expect(old.stars.map(({ V }) => V)).toEqual([12.5]);
   });
 });

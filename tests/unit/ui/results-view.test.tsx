@@ -112,7 +112,19 @@ describe('the results of a night', () => {
   it('say cautions in words, with how many stars carry them', () => {
     show(<ResultsView page={page} result={result} query={{}} />);
     expect(rowOf('T 2').textContent).toContain('Colour outside the range of the standards; Low signal');
-    expect(screen.getByText('1,100 of 1,184 stars have none')).toBeTruthy();
+    expect(screen.getByText('1,100 of 1,184 stars have none of their own')).toBeTruthy();
+  });
+
+  it('say once, not at each star, that the night is usable with care', () => {
+    const stars = [star(1, { flags: ['low_signal', 'night_with_care'] })];
+    const cautions = [
+      { flag: 'night_with_care', nStars: 1184 },
+      { flag: 'low_signal', nStars: 84 },
+    ] as const;
+    show(<ResultsView page={page} result={{ ...result, stars, cautions }} query={{}} />);
+    expect(rowOf('T 1').textContent).toContain('Low signal');
+    expect(screen.queryByText(/The night is usable with care/)).toBeNull();
+    expect(screen.getAllByText(/judged usable with care/)).toHaveLength(1);
   });
 
   it('mark the row of a star that is chosen in the diagram', () => {

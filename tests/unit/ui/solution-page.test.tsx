@@ -152,7 +152,33 @@ describe('evidence and findings', () => {
     expect(screen.getByText('1.04 to 2.11')).toBeTruthy();
   });
 
-  it('name coefficient, reason and remedy, what stops the fit first', async () => {
+  it('stand together where they are alike, what speaks against the night first', () => {
+    const said = (speaks: 'for' | 'care' | 'against', kind: string, words: string) =>
+      ({ speaks, kind, band: null, words }) as const;
+    const evidence = [
+      said('for', 'drift', 'No drift in B.'),
+      said('for', 'drift', 'No drift in V.'),
+      said('against', 'scatter', 'Scatter in B.'),
+    ];
+    render(<EvidencePanel solution={solution({ evidence })} />);
+    const words = screen.getAllByText(/^(For|Against)$/).map((one) => one.parentElement?.textContent);
+    expect(words.map((one) => one?.trim())).toEqual([
+      expect.stringMatching(/Against ?Scatter in B\.$/),
+      expect.stringMatching(/For ?No drift in B\.No drift in V\.$/),
+    ]);
+  });
+
+  it('say in tables what the standards of many bands covered', () => {
+    const band = solvedBand([coefficient('extinction', 0.1, 0.003)]);
+    render(<EvidencePanel solution={solution({ bands: { B: band, V: band, I: band } })} />);
+    const covered = screen.getByRole('table', { name: 'What the standards covered' });
+    const row = within(covered).getByRole('row', { name: /^I/ });
+    expect(row.textContent).toBe('I1.04 to 2.11−0.19 to 1.64B−V19:24 to 05:12');
+    const checks = screen.getByRole('table', { name: 'Checks of the fit' });
+    expect(within(checks).getByRole('row', { name: /^V/ }).textContent).toBe('V−0.00070 ± 0.000900.40.011');
+  });
+
+  it('give reason and remedy, what stops the fit first', async () => {
     const note = {
       weight: 'note',
       kind: 'frames',
@@ -167,16 +193,28 @@ describe('evidence and findings', () => {
       weight: 'stop',
       band: 'V',
       coefficient: 'extinction',
-      reason: 'The airmass ranges over 0.22 only.',
+      reason: 'The airmass in V ranges over 0.22 only.',
       remedy: 'Hold it at the site’s mean.',
     } as const;
     render(<FindingList findings={[note, stop]} />);
     const items = screen.getAllByRole('listitem').map(({ textContent }) => textContent);
     await waitFor(() =>
-      expect(items[0]).toContain(
-        'Extinction in V: The airmass ranges over 0.22 only.Hold it at the site’s mean.',
-      ),
+      expect(items[0]).toContain('The airmass in V ranges over 0.22 only.Hold it at the site’s mean.'),
     );
     expect(items[1]).toBe('One star on each frame.');
+  });
+
+  it('say of which night they are where several were solved together', () => {
+    const finding = {
+      weight: 'caution',
+      kind: 'frames',
+      band: 'V',
+      night_date: '2026-11-03',
+      coefficient: null,
+      reason: 'Look.',
+      remedy: '',
+    } as const;
+    render(<FindingList findings={[finding]} isJoint />);
+    expect(screen.getByRole('listitem').textContent).toContain('3 November 2026: Look.');
   });
 });

@@ -1,13 +1,13 @@
 import { indexWords } from '@/app/_components/solutions/solution-words';
 import { Finding } from '@/app/_components/ui/finding';
 import { formatFixed, formatWithError, noValue } from '@/app/_components/ui/format-figure';
-import { formatMinutes } from '@/app/_components/ui/format-time';
 import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Tone } from '@/app/_components/ui/tone-mark';
 import type { Solution, SolutionBand } from '@/lib/contracts/api/solution';
-import { bands, type Band } from '@/lib/contracts/bands';
+import { bands } from '@/lib/contracts/bands';
 import { CrossChecks } from './cross-checks';
+import { CoverageTables, rangeWords, utcWords, type Solved } from './coverage-tables';
 import { FoldOut } from './fold-out';
 
 type Speaks = Solution['evidence'][number]['speaks'];
@@ -23,13 +23,16 @@ export function EvidencePanel({ solution }: { readonly solution: Solution }) {
   return (
     <Panel title="Evidence on the night" flush>
       <div className="grid gap-2.5 px-3.5 py-3">
-        {solution.evidence.map(({ speaks, words: sentence }, index) => (
-          <Finding key={index} tone={tones[speaks]} word={words[speaks]}>
-            {sentence}
+        {grouped(solution.evidence).map(({ speaks, kind, sentences }) => (
+          <Finding key={`${speaks} ${kind}`} tone={tones[speaks]} word={words[speaks]}>
+            {sentences.map((sentence) => (
+              <p key={sentence}>{sentence}</p>
+            ))}
           </Finding>
         ))}
-        <KeyValues items={coverage(solved)} />
+        {solved.length > 2 ? null : <KeyValues items={coverage(solved)} />}
       </div>
+      {solved.length > 2 ? <CoverageTables solved={solved} /> : null}
       {solved.length === 0 ? null : (
         <FoldOut label="Cross-checks: lines of single stars, pairs of stars">
           {solved.map((one) => (
@@ -41,9 +44,22 @@ export function EvidencePanel({ solution }: { readonly solution: Solution }) {
   );
 }
 
-interface Solved {
-  readonly band: Band;
-  readonly found: SolutionBand;
+interface Group {
+  readonly speaks: Speaks;
+  readonly kind: string;
+  readonly sentences: readonly string[];
+}
+
+/** What is alike in several bands stands together, and what speaks against the night before what speaks for it. */
+function grouped(evidence: Solution['evidence']): readonly Group[] {
+  const groups = new Map<string, Group>();
+  for (const { speaks, kind, words: sentence } of evidence) {
+    const key = `${speaks} ${kind}`;
+    const sentences = [...(groups.get(key)?.sentences ?? []), sentence];
+    groups.set(key, { speaks, kind, sentences });
+  }
+  const order = ['against', 'care', 'for'] as const;
+  return [...groups.values()].sort((one, other) => order.indexOf(one.speaks) - order.indexOf(other.speaks));
 }
 
 /** The same in all bands stands once, else band by band. */
@@ -63,16 +79,12 @@ function rowsOf(
 }
 
 function coverage(solved: readonly Solved[]): readonly KeyValue[] {
-  const range = (of: { readonly min: number; readonly max: number } | null): string | null =>
-    of === null ? null : `${formatFixed(of.min, 2)} to ${formatFixed(of.max, 2)}`;
   return [
-    ...rowsOf('Airmass covered', solved, ({ airmass }) => range(airmass)),
+    ...rowsOf('Airmass covered', solved, ({ airmass }) => rangeWords(airmass)),
     ...rowsOf('Colour covered', solved, ({ colour, colour_index }) =>
-      colour === null ? null : `${indexWords(colour_index)} ${range(colour) ?? noValue}`,
+      colour === null ? null : `${indexWords(colour_index)} ${rangeWords(colour) ?? noValue}`,
     ),
-    ...rowsOf('Time covered, UTC', solved, ({ utc }) =>
-      utc === null ? null : `${formatMinutes(utc.first)} to ${formatMinutes(utc.last)}`,
-    ),
+    ...rowsOf('Time covered, UTC', solved, ({ utc }) => utcWords(utc)),
     ...rowsOf('Drift, mag per hour', solved, ({ drift }) =>
       drift === null ? null : formatWithError(drift.value, drift.error, 4),
     ),

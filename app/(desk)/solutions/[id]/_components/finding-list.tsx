@@ -1,38 +1,39 @@
 import { Finding } from '@/app/_components/ui/finding';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import type { SolutionFinding } from '@/lib/contracts/api/solution';
-import { coefficientWords } from '@/lib/contracts/coefficients';
 
 const order = ['stop', 'caution', 'note'] as const;
 
+interface FindingListProps {
+  readonly findings: readonly SolutionFinding[];
+  /** Several nights were solved together: each finding says which is its own. */
+  readonly isJoint?: boolean;
+}
+
 /** What the solve found worth saying, the gravest first: why, and what helps. */
-export function FindingList({ findings }: { readonly findings: readonly SolutionFinding[] }) {
+export function FindingList({ findings, isJoint = false }: FindingListProps) {
   const listed = findings.toSorted((one, other) => order.indexOf(one.weight) - order.indexOf(other.weight));
   return (
     <ul className="grid gap-2.5" aria-label="Findings">
       {listed.map((finding, index) => (
         <li key={index}>
-          <OneFinding finding={finding} />
+          <OneFinding finding={finding} night={isJoint ? finding.night_date : null} />
         </li>
       ))}
     </ul>
   );
 }
 
-/** What a finding is about: `Extinction in B`; empty for the whole night. */
-function subjectWords({ coefficient, band, night_date }: SolutionFinding): string {
-  const what = coefficient === null ? '' : coefficientWords[coefficient].title;
-  const where = band === null ? '' : what === '' ? `Band ${band}` : ` in ${band}`;
-  const when = night_date === null ? '' : ` on ${formatDateInWords(night_date)}`;
-  const words = `${what}${where}${when}`.trim();
-  return words.charAt(0).toUpperCase() + words.slice(1);
+interface OneFindingProps {
+  readonly finding: SolutionFinding;
+  readonly night: string | null;
 }
 
-function OneFinding({ finding }: { readonly finding: SolutionFinding }) {
-  const subject = subjectWords(finding);
+/** Reasons are whole sentences and name band and coefficient themselves. */
+function OneFinding({ finding, night }: OneFindingProps) {
   const text = (
     <>
-      {subject === '' ? null : <b className="font-medium">{subject}: </b>}
+      {night === null ? null : <b className="font-medium">{formatDateInWords(night)}: </b>}
       {finding.reason}
       {finding.remedy === '' ? null : <span className="mt-0.5 block text-ink-2">{finding.remedy}</span>}
     </>

@@ -148,10 +148,10 @@ function Pages({ page, last, nRows, onPage }: PagesProps) {
         First
       </Button>
       <Button disabled={page === 0} onClick={() => onPage(page - 1)}>
-        Before
+        Previous
       </Button>
       <Button disabled={page === last} onClick={() => onPage(page + 1)}>
-        Further
+        Next
       </Button>
       <span className="text-small text-ink-2">
         {formatCount(page * perPage + 1)} to {formatCount(Math.min(nRows, (page + 1) * perPage))} of{' '}

@@ -1,7 +1,7 @@
 'use client';
 
 import dynamic from 'next/dynamic';
-import { useMemo, useState } from 'react';
+import { useMemo, useState, type ReactNode } from 'react';
 import { indexWords } from '@/app/_components/solutions/solution-words';
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Button } from '@/app/_components/ui/button';
@@ -24,8 +24,14 @@ const ResidualCharts = dynamic(() => import('./residual-charts').then((part) => 
 
 const none: Selection = new Set();
 
+interface SolutionDeskProps {
+  readonly solution: Solution;
+  /** Stands between plots and table. */
+  readonly children: ReactNode;
+}
+
 /** Plots and table of the same observations: what is selected in one is selected in all. */
-export function SolutionDesk({ solution }: { readonly solution: Solution }) {
+export function SolutionDesk({ solution, children }: SolutionDeskProps) {
   const observations = useObservations(solution.id);
   const { items } = observations;
   const [band, setBand] = useState<Band | null>(null);
@@ -83,6 +89,7 @@ export function SolutionDesk({ solution }: { readonly solution: Solution }) {
           />
         )}
       </Panel>
+      {children}
       <ObservationPanel
         solution={solution.id}
         mayExclude={solution.may.exclude}

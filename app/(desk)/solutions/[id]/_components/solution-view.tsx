@@ -2,6 +2,7 @@ import { standingOf } from '@/app/_components/solutions/solution-words';
 import { Finding } from '@/app/_components/ui/finding';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { Panel } from '@/app/_components/ui/panel';
+import type { Solution } from '@/lib/contracts/api/solution';
 import type { SolutionPage } from '@/lib/contracts/solution-page';
 import { ApprovalPanel } from './approval-panel';
 import { solutionBefore } from '@/app/_components/solutions/coefficient-change';
@@ -31,7 +32,8 @@ export function SolutionView({ page }: { readonly page: SolutionPage }) {
   );
 }
 
-function Main({ page: { solution } }: { readonly page: SolutionPage }) {
+function Main({ page }: { readonly page: SolutionPage }) {
+  const { solution } = page;
   switch (standingOf(solution)) {
     case 'running':
       return <Solving solution={solution} />;
@@ -45,17 +47,30 @@ function Main({ page: { solution } }: { readonly page: SolutionPage }) {
             in the way, and what would help, is said below.
           </Finding>
           <Panel title="Findings">
-            <FindingList findings={solution.findings} />
+            <FindingList findings={solution.findings} isJoint={solution.joint_nights.length > 0} />
           </Panel>
-          {solution.n_observations === 0 ? null : <SolutionDesk key={solution.id} solution={solution} />}
+          {solution.n_observations === 0 ? null : <Desk page={page} />}
         </>
       );
     case 'solved':
-      return <SolutionDesk key={solution.id} solution={solution} />;
+      return <Desk page={page} />;
   }
 }
 
-function Found({ page: { solution, solutions } }: { readonly page: SolutionPage }) {
+/** More bands than the narrow column has room for go into the wide one. */
+const mostNarrow = 2;
+const isWide = ({ bands }: Solution): boolean => Object.keys(bands).length > mostNarrow;
+
+function Desk({ page }: { readonly page: SolutionPage }) {
+  const { solution } = page;
+  return (
+    <SolutionDesk key={solution.id} solution={solution}>
+      {isWide(solution) ? <Coefficients page={page} /> : null}
+    </SolutionDesk>
+  );
+}
+
+function Coefficients({ page: { solution, solutions } }: { readonly page: SolutionPage }) {
   const former = solutionBefore(solution, solutions);
   return (
     <>
@@ -72,10 +87,19 @@ function Found({ page: { solution, solutions } }: { readonly page: SolutionPage 
           before={null}
         />
       ))}
+    </>
+  );
+}
+
+function Found({ page }: { readonly page: SolutionPage }) {
+  const { solution } = page;
+  return (
+    <>
+      {isWide(solution) ? null : <Coefficients page={page} />}
       <EvidencePanel solution={solution} />
       {solution.findings.length === 0 || solution.outcome === 'undetermined' ? null : (
         <Panel title="Findings">
-          <FindingList findings={solution.findings} />
+          <FindingList findings={solution.findings} isJoint={solution.joint_nights.length > 0} />
         </Panel>
       )}
     </>

@@ -7,7 +7,12 @@ import { formatInstant } from '@/app/_components/ui/format-time';
 import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';
 import { StateTag } from '@/app/_components/ui/state-tag';
-import type { CalibratedOrigin, CalibratedPage, CalibratedResult } from '@/lib/contracts/calibrated-page';
+import {
+  cautionOfNight,
+  type CalibratedOrigin,
+  type CalibratedPage,
+  type CalibratedResult,
+} from '@/lib/contracts/calibrated-page';
 import { calibratedFlags } from '@/lib/photometry/calibrated-flags';
 import { downloadAddress } from './results-address';
 
@@ -48,7 +53,8 @@ function originFacts(origin: CalibratedOrigin): readonly KeyValue[] {
       key: 'Solution',
       value: (
         <>
-          {origin.number} <StateTag state={origin.state} />
+          {origin.number}&ensp;
+          <StateTag state={origin.state} />
         </>
       ),
     },
@@ -70,8 +76,12 @@ function originFacts(origin: CalibratedOrigin): readonly KeyValue[] {
 
 /** A calibrated magnitude is only as good as its solution: what speaks for care is said before the figures are used. */
 function Cautions({ result: { origin, cautions, nStars, nClean } }: { readonly result: CalibratedResult }) {
+  const ofStars = cautions.filter(({ flag }) => flag !== cautionOfNight);
   return (
-    <Panel title="Cautions" note={`${formatCount(nClean)} of ${formatCount(nStars)} stars have none`}>
+    <Panel
+      title="Cautions"
+      note={`${formatCount(nClean)} of ${formatCount(nStars)} stars have none of their own`}
+    >
       <div className="grid gap-2">
         {origin.state === 'superseded' ? (
           <Finding tone="warn">
@@ -84,13 +94,18 @@ function Cautions({ result: { origin, cautions, nStars, nClean } }: { readonly r
             The night was judged not photometric: its magnitudes can be wrong by more than their errors say.
           </Finding>
         ) : null}
-        {cautions.length === 0 ? (
+        {origin.verdict === 'usable with care' ? (
+          <Finding tone="warn">
+            The night was judged usable with care: see what its solution says before you trust the errors.
+          </Finding>
+        ) : null}
+        {ofStars.length === 0 ? (
           <Finding tone="good" word="No star is flagged">
             Colours, airmasses and times lie within what the standards covered.
           </Finding>
         ) : (
           <ul className="grid gap-1 text-table">
-            {cautions.map(({ flag, nStars: n }) => (
+            {ofStars.map(({ flag, nStars: n }) => (
               <li key={flag} className="flex justify-between gap-3">
                 <span>{calibratedFlags[flag].words}</span>
                 <span className="font-mono whitespace-nowrap">{formatCount(n)}</span>

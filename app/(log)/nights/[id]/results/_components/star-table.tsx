@@ -5,7 +5,12 @@ import { Figure } from '@/app/_components/ui/figure';
 import { decimalsSupported, formatFixed, noValue } from '@/app/_components/ui/format-figure';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { calibratedFlags, type CalibratedFlag } from '@/lib/photometry/calibrated-flags';
-import type { CalibratedPageQuery, CalibratedSort, NumberedStar } from '@/lib/contracts/calibrated-page';
+import {
+  cautionOfNight,
+  type CalibratedPageQuery,
+  type CalibratedSort,
+  type NumberedStar,
+} from '@/lib/contracts/calibrated-page';
 import { resultsAddress } from './results-address';
 import { budgetOf, countWords, meanings, type ErrorBudget, type QuantityColumn } from './star-columns';
 
@@ -53,7 +58,10 @@ export function StarTable({ stars, quantities, selected, onSelect, showsParts, .
             <Cell numeric>{countWords(star)}</Cell>
             <Cell numeric>{formatFixed(star.airmass, 3)}</Cell>
             <Cell wrap className="min-w-56">
-              {star.flags.map(flagWords).join('; ')}
+              {star.flags
+                .filter((name) => name !== cautionOfNight)
+                .map(flagWords)
+                .join('; ')}
             </Cell>
             <Cell numeric>{star.ra === null ? noValue : formatRightAscension(star.ra)}</Cell>
             <Cell numeric>{star.dec === null ? noValue : formatDeclination(star.dec)}</Cell>

@@ -1,3 +1,4 @@
+import { mean, std } from 'mathjs';
 import type { CampaignResult } from './campaign';
 
 /** What the pulls of one quantity may be. */
@@ -19,11 +20,9 @@ export interface PullRow {
 /** Mean and standard deviation of each quantity's pulls, held against the limits; coefficients first, by name. */
 export function pullRows({ pulls }: CampaignResult, limits: PullLimits): readonly PullRow[] {
   return [...pulls].map(([name, list]) => {
-    const n = list.length;
-    const mean = list.reduce((sum, pull) => sum + pull, 0) / n;
-    const sd = Math.sqrt(list.reduce((sum, pull) => sum + (pull - mean) ** 2, 0) / (n - 1));
-    const isMet = Math.abs(mean) <= limits.mean && sd >= limits.smallestSd && sd <= limits.largestSd;
-    return { name, n, mean, sd, isMet };
+    const [middle, sd] = [Number(mean([...list])), Number(std([...list]))];
+    const isMet = Math.abs(middle) <= limits.mean && sd >= limits.smallestSd && sd <= limits.largestSd;
+    return { name, n: list.length, mean: middle, sd, isMet };
   });
 }
 

@@ -49,6 +49,35 @@ export const pictures: readonly Picture[] = [
     },
   },
   {
+    name: 'solution',
+    account: 'photometrist2',
+    light: 'day',
+    open: async (page) => {
+      await openNight(page, '2026-11-03');
+      await page.goto(`${new URL(page.url()).pathname}/solutions`);
+      await page
+        .getByRole('main')
+        .getByRole('link', { name: /^(Solution )?1$/ })
+        .first()
+        .click();
+      await page.getByRole('heading', { level: 1, name: /^Solution 1/ }).waitFor();
+      await page.locator('main svg circle').first().waitFor();
+    },
+  },
+  {
+    name: 'results',
+    account: 'pi',
+    light: 'day',
+    open: async (page) => {
+      await openNight(page, '2026-10-17');
+      await page.goto(`${new URL(page.url()).pathname}/results`);
+      await page.getByRole('img', { name: /^Colour–magnitude diagram/ }).waitFor();
+      await page.getByRole('heading', { name: 'Calibrated magnitudes' }).evaluate((heading) => {
+        heading.closest('section')?.scrollIntoView();
+      });
+    },
+  },
+  {
     name: 'standards',
     account: 'photometrist',
     light: 'day',

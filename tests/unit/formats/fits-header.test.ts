@@ -1,3 +1,4 @@
+import fitsjs from 'fitsjs';
 import { describe, expect, it } from 'vitest';
 import { fitsBlock, hasEmptyData, readFitsHeader, type FitsHeader } from '@/lib/formats/fits-header';
 
@@ -70,5 +71,22 @@ describe('the header of a FITS file', () => {
   it('tells an empty first part from one with an image', () => {
     expect(hasEmptyData(headerOf(['NAXIS   =                    0']))).toBe(true);
     expect(hasEmptyData(headerOf(['NAXIS   =                    2']))).toBe(false);
+  });
+});
+
+/** An independent reading: fitsjs 0.6.6, for the plain cards that it reads right. */
+describe('the header beside a general-purpose library', () => {
+  it.each([
+    ['an integer', 'NAXIS   =                    2 / axes', 'NAXIS'],
+    ['a number with a fraction', 'EXPTIME =                 40.5 / seconds', 'EXPTIME'],
+    ['a number with an exponent', 'SCALE   =              1.5E-03', 'SCALE'],
+    ['a string', "OBJECT  = 'SA 95   '           / field", 'OBJECT'],
+    ['a time', "DATE-OBS= '2026-11-03T23:41:05.000'", 'DATE-OBS'],
+  ])('reads %s alike', (_what, card, keyword) => {
+    const text = [simple, 'BITPIX  =                   16', card, 'END']
+      .map((one) => one.padEnd(80))
+      .join('');
+    const theirs = new fitsjs.astro.FITS.Header(text.padEnd(fitsBlock)).get(keyword);
+    expect(headerOf([card]).values.get(keyword)).toBe(theirs);
   });
 });

@@ -6,18 +6,15 @@
  * | r | residuals | response − design × coefficients, rows divided by their errors |
  * | s | scale | median |r| / 0.6744897501960817, taken about zero, or held |
  * | z | | r / s |
- * | w | weights | Huber: 1 for |z| ≤ k, else k / |z|. Tukey: (1 − (z/c)²)² for |z| ≤ c, else 0 |
+ * | w | weights | Tukey's bisquare: (1 − (z/c)²)² for |z| ≤ c, else 0 |
  *
- * Huber's estimate has one solution; Tukey's depends on where it starts, so that it wants a start that outliers have not
- * moved (`least-trimmed-squares`).
+ * There may be several solutions, and which is found depends on the start: it wants one that outliers have not moved
+ * (`least-trimmed-squares`).
  */
 import { applyQTransposed, factorQr, inseparableColumns, solveR } from './householder-qr';
 
 /** Median absolute deviation of a normal distribution, in standard deviations. [1] */
 const madPerSigma = 0.6744897501960817;
-
-export type RobustLoss =
-  { readonly kind: 'huber'; readonly k: number } | { readonly kind: 'tukey'; readonly c: number };
 
 /** From the residuals at each step, or believed as given (1 where the errors are believed). */
 export type RobustScale = { readonly kind: 'mad' } | { readonly kind: 'held'; readonly value: number };
@@ -29,7 +26,8 @@ export interface RobustInput {
   readonly columns: number;
   /** Divided by the errors, shape (n). */
   readonly response: Float64Array;
-  readonly loss: RobustLoss;
+  /** c [scale]. */
+  readonly bisquare: number;
   readonly scale: RobustScale;
   /** Coefficients to start from, shape (p); null for those of least squares. */
   readonly start: Float64Array | null;
@@ -90,11 +88,7 @@ export function scaleByMad(values: ArrayLike<number>, centre: number): number {
   return median(Float64Array.from(values, (value) => Math.abs(value - centre))) / madPerSigma;
 }
 
-function weightOf(loss: RobustLoss, z: number): number {
-  const size = Math.abs(z);
-  if (loss.kind === 'huber') return size <= loss.k ? 1 : loss.k / size;
-  return size <= loss.c ? (1 - (z / loss.c) ** 2) ** 2 : 0;
-}
+const weightOf = (c: number, z: number): number => (Math.abs(z) <= c ? (1 - (z / c) ** 2) ** 2 : 0);
 
 function residualsOf({ design, columns, response }: RobustInput, coefficients: Float64Array): Float64Array {
   const rest = Float64Array.from(response);
@@ -125,15 +119,15 @@ function solveWeighted(
 }
 
 /** M-estimate of linear regression.
- * @param input - rows divided by their errors, loss, scale and start
+ * @param input - rows divided by their errors, tuning constant, scale and start
  * @returns coefficients, scale and weights, or the columns that the rows with weight cannot tell apart
  * @throws {RangeError} when shapes do not agree or a number is not finite
- * @accuracy 1e-8 relative against the solution of the estimating equations; of several for Tukey's loss, the one that
- * the start leads to
+ * @accuracy 1e-8 relative against the solution of the estimating equations; of several, the one that the start
+ * leads to
  * @source Huber 1981, Robust Statistics, chapter 7; Beaton and Tukey 1974, Technometrics 16, 147 (bisquare); Holland and
  * Welsch 1977, Communications in Statistics A 6, 813 (reweighting) */
 export function fitRobust(input: RobustInput): RobustFit | UndeterminedRobust {
-  const { response, design, columns, loss, scale: rule, anchored } = input;
+  const { response, design, columns, bisquare, scale: rule, anchored } = input;
   const rows = response.length;
   if (design.length !== rows * columns)
     throw new RangeError(`The design does not have ${rows} × ${columns} numbers.`);
@@ -161,7 +155,7 @@ export function fitRobust(input: RobustInput): RobustFit | UndeterminedRobust {
         termination: { reason: 'exact-fit', iterations },
       };
     }
-    weights = residuals.map((r, i) => (anchored?.[i] === 1 ? 1 : weightOf(loss, r / s)));
+    weights = residuals.map((r, i) => (anchored?.[i] === 1 ? 1 : weightOf(bisquare, r / s)));
     const next = solveWeighted(input, weights);
     if ('kind' in next) return next;
     const after = residualsOf(input, next);

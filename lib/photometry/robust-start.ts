@@ -66,7 +66,7 @@ export function startRobustly(input: StartInput): RobustStart | null {
   const trimmed = fitTrimmed({ ...rows, subsets: samplesFor(columns), random: createRandom(seed) });
   const robust = fitRobust({
     ...rows,
-    loss: { kind: 'tukey', c: bisquare },
+    bisquare,
     // Held: found anew in each step it would grow with a bank of cloud until the cloud lay within it.
     scale: trimmed.kind === 'determined' ? { kind: 'held', value: trimmed.scale } : { kind: 'mad' },
     start: trimmed.kind === 'determined' ? trimmed.coefficients : null,

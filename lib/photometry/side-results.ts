@@ -92,9 +92,6 @@ function runsInTime({ problem, rows, residuals }: NightView): number | null {
   }
   const means = [...frames.values()].sort((a, b) => a.hours - b.hours).map(({ sum, n }) => sum / n);
   const middle = median(means);
-  const { positive, negative, runs, expected } = runsTest(means.map((value) => value - middle));
-  if (positive < fewestOfSign || negative < fewestOfSign) return null;
-  const n = positive + negative;
-  const product = 2 * positive * negative;
-  return (runs - expected) / Math.sqrt((product * (product - n)) / (n * n * (n - 1)));
+  const { positive, negative, deviate } = runsTest(means.map((value) => value - middle));
+  return positive < fewestOfSign || negative < fewestOfSign ? null : deviate;
 }

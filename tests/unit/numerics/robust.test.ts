@@ -24,10 +24,6 @@ function dataOf(one: Case): { X: readonly (readonly number[])[]; y: readonly num
 function inputOf(one: Case): RobustInput {
   const { X, y } = dataOf(one);
   const columns = X[0]?.length ?? 0;
-  const loss =
-    one.kind === 'huber'
-      ? ({ kind: 'huber', k: one.tuning_constant } as const)
-      : ({ kind: 'tukey', c: one.tuning_constant } as const);
   return {
     design: Float64Array.from(
       { length: columns * X.length },
@@ -35,7 +31,7 @@ function inputOf(one: Case): RobustInput {
     ),
     columns,
     response: Float64Array.from(y),
-    loss,
+    bisquare: one.tuning_constant,
     scale: one.same_data_as === undefined ? { kind: 'mad' } : { kind: 'held', value: one.scale },
     start: null,
     anchored: null,
@@ -43,21 +39,24 @@ function inputOf(one: Case): RobustInput {
 }
 
 describe('M-estimates against a general statistics library', () => {
-  it.each(cases)('$name, $kind: coefficients, scale and weights agree', (one) => {
-    const input = inputOf(one);
-    // The held Tukey case was started from Huber's solution, the others from least squares.
-    const before = cases.find(({ name, kind }) => name === one.name && kind === 'huber');
-    const start =
-      input.scale.kind === 'held' && one.kind === 'tukey' ? Float64Array.from(before?.params ?? []) : null;
-    const found = fit({ ...input, start });
-    expect(found.termination.reason).toBe('converged');
-    for (const [j, value] of one.params.entries()) {
-      const size = Math.max(1, Math.abs(value));
-      expectWithin((found.coefficients[j] ?? NaN) / size, value / size, tolerance);
-    }
-    expectWithin(found.scale, one.scale, tolerance);
-    for (const [i, weight] of one.weights.entries()) expectWithin(found.weights[i] ?? NaN, weight, tolerance);
-  });
+  it.each(cases.filter(({ kind }) => kind !== 'huber'))(
+    '$name: coefficients, scale and weights agree',
+    (one) => {
+      const input = inputOf(one);
+      // The case with a held scale was started from Huber's solution, the others from least squares.
+      const before = cases.find(({ name, kind }) => name === one.name && kind === 'huber');
+      const start = input.scale.kind === 'held' ? Float64Array.from(before?.params ?? []) : null;
+      const found = fit({ ...input, start });
+      expect(found.termination.reason).toBe('converged');
+      for (const [j, value] of one.params.entries()) {
+        const size = Math.max(1, Math.abs(value));
+        expectWithin((found.coefficients[j] ?? NaN) / size, value / size, tolerance);
+      }
+      expectWithin(found.scale, one.scale, tolerance);
+      for (const [i, weight] of one.weights.entries())
+        expectWithin(found.weights[i] ?? NaN, weight, tolerance);
+    },
+  );
 });
 
 describe('median and median absolute deviation', () => {
@@ -83,7 +82,7 @@ describe('rows that are priors, rows without scatter, rows that say too little',
     design: Float64Array.from([...x.map(() => 1), ...x]),
     columns: 2,
     response: Float64Array.from(x, (value, i) => 2 + 3 * value + (i < outliers ? 50 : 0)),
-    loss: { kind: 'tukey', c: 4.685 },
+    bisquare: 4.685,
     scale: { kind: 'mad' },
     start: null,
     anchored: null,

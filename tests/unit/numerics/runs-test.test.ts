@@ -30,8 +30,6 @@ describe('the runs test', () => {
       expectWithin(found.probabilityOfFewer, fewer, { absolute: 1e-12, unit: '' });
       expectWithin(found.probabilityOfMore, more, { absolute: 1e-12, unit: '' });
     }
-    const mean = counts.reduce((sum, count) => sum + count, 0) / all.length;
-    expectWithin(runsTest(all[0] ?? []).expected, mean, { absolute: 1e-12, unit: '' });
   });
 
   it('finds a slow drift and does not find what chance alone makes', () => {
@@ -42,6 +40,15 @@ describe('the runs test', () => {
     expect(runsTest(noise.map((value, i) => Math.abs(value) * (-1) ** i)).probabilityOfMore).toBeLessThan(
       1e-6,
     );
+  });
+
+  it('has the normal deviate of its probability, on the side where the runs lie', () => {
+    const alike = [1, 1, 1, 1, -1, -1, -1, -1];
+    // 2 of the 70 orders have two runs, and as many have eight: 0.02857 is exceeded at 1.9022 standard deviations.
+    expectWithin(runsTest(alike).deviate, -1.9022, { absolute: 1e-4, unit: '' });
+    expectWithin(runsTest([1, -1, 1, -1, 1, -1, 1, -1]).deviate, 1.9022, { absolute: 1e-4, unit: '' });
+    const halves = Array.from({ length: 4000 }, (_, i) => (i < 2000 ? 1 : -1));
+    expect(runsTest(halves).deviate).toBeLessThan(-30);
   });
 
   it('stays within 0 … 1 for ten thousand values', () => {
@@ -55,7 +62,7 @@ describe('the runs test', () => {
   });
 
   it('says nothing of values of one sign, of zeros, or of no values', () => {
-    expect(runsTest([])).toMatchObject({ runs: 0, probabilityOfFewer: 1, probabilityOfMore: 1 });
+    expect(runsTest([])).toMatchObject({ runs: 0, probabilityOfFewer: 1, probabilityOfMore: 1, deviate: 0 });
     expect(runsTest([0, 0])).toMatchObject({ positive: 0, negative: 0, runs: 0 });
     expect(runsTest([1, 0, 2])).toMatchObject({ positive: 2, runs: 1, probabilityOfFewer: 1 });
   });

@@ -15,6 +15,7 @@
  * Sources: Hardie 1962, in Astronomical Techniques, chapter 8; choice of pairs and limits: our own rules.
  */
 import { SimpleLinearRegression } from 'ml-regression';
+import { fitLeastSquares } from '@/lib/numerics/least-squares';
 import { type BandProblem } from './band-problem';
 import { type NightFit } from './fit-band';
 import { type CoefficientName } from './fit-model';
@@ -99,10 +100,15 @@ function slopeOf(
 ): { readonly slope: number; readonly error: number; readonly n: number } | null {
   const n = pairs.length;
   if (n < 2) return null;
-  const xx = pairs.reduce((sum, { dx }) => sum + dx * dx, 0);
-  const slope = pairs.reduce((sum, { dx, dy }) => sum + dx * dy, 0) / xx;
-  const left = pairs.reduce((sum, { dx, dy }) => sum + (dy - slope * dx) ** 2, 0);
-  return { slope, error: Math.sqrt(left / (n - 1) / xx), n };
+  const line = fitLeastSquares({
+    design: Float64Array.from(pairs, ({ dx }) => dx),
+    columns: 1,
+    response: Float64Array.from(pairs, ({ dy }) => dy),
+    sigma: new Float64Array(n).fill(1),
+  });
+  if (line.kind === 'undetermined') return null;
+  const error = Math.sqrt((line.covariance[0]! * line.chi2) / line.degreesOfFreedom);
+  return { slope: line.coefficients[0]!, error, n };
 }
 
 function highLowPairs(

@@ -36,7 +36,17 @@ export interface NightCalibrated {
 }
 
 const figure = (n: number): string => n.toLocaleString('en-GB');
-const signed = (value: number): string => `${value < 0 ? '\u2212' : '+'}${Math.abs(value).toFixed(4)}`;
+const withMinus = (text: string): string => text.replace('-', '\u2212');
+
+/** `0.1384 ± 0.0033`: both to the two digits that the error has. */
+function coefficientAsText({ value, error, status }: CalibratedBand['coefficients'][number]): string {
+  if (value === null) return 'not determined';
+  if (status === 'fixed') return `${withMinus(String(value))}, held fixed`;
+  if (error === null || error <= 0) return withMinus(value.toFixed(4));
+  const decimals = Math.max(0, 1 - Math.floor(Math.log10(Number(error.toPrecision(2)))));
+  return `${withMinus(value.toFixed(decimals))} ± ${error.toFixed(decimals)}`;
+}
+
 const mag = (value: number | null): string => (value === null ? '' : `${value.toFixed(4)} mag`);
 
 /** To PI and co-investigators, when the magnitudes of their programme's targets are there. */
@@ -70,14 +80,13 @@ export function nightCalibratedMail(
       {
         kind: 'table',
         caption: 'Coefficients with their standard errors',
-        head: ['Band', 'Coefficient', 'Value', 'Error', 'Unit'],
+        head: ['Band', 'Coefficient', 'Value', 'Unit'],
         rows: bands.flatMap(({ band, coefficients }) =>
-          coefficients.map(({ name, value, error, status }) => [
+          coefficients.map((coefficient) => [
             band,
-            coefficientWords[name].title,
-            value === null ? 'not determined' : signed(value),
-            status === 'fixed' ? 'held fixed' : error === null ? '' : error.toFixed(4),
-            coefficientWords[name].unit,
+            coefficientWords[coefficient.name].title,
+            coefficientAsText(coefficient),
+            coefficientWords[coefficient.name].unit,
           ]),
         ),
       },

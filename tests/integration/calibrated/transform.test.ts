@@ -112,7 +112,7 @@ it('one mail goes to each investigator of a programme, and to nobody else', asyn
   const mail = await selectOne<{ text: string; html: string }>(
     `SELECT text, html FROM mails m JOIN people p ON p.id = m.person_id WHERE p.name = 'Piet Sandoval'`,
   );
-  for (const part of ['photometric', '400', '3,200', '+0.1400', '0.0010', 'number 1', '0.0100 mag'])
+  for (const part of ['photometric', '400', '3,200', '0.1400 ± 0.0010', 'number 1', '0.0100 mag'])
     expect(mail?.text, part).toContain(part);
   expect(mail?.text).toContain(`http://evenfall.example/nights/${night.id}/results?programme=MH26B-04`);
   expect(mail?.text).toContain('is flagged');

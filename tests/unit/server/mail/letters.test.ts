@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { invitationMail } from '@/lib/server/mail/invitation';
 import { renderLetter } from '@/lib/server/mail/letter';
 import { measurementsWaitingMail } from '@/lib/server/mail/measurements-waiting';
+import { nightCalibratedMail } from '@/lib/server/mail/night-calibrated';
 import { oneLine } from '@/lib/server/mail/one-line';
 import { senderDomain } from '@/lib/server/mail/post-mail';
 import { uploadRefusedMail } from '@/lib/server/mail/upload-refused';
@@ -137,6 +138,40 @@ describe('any letter', () => {
     const text = 'word '.repeat(60).trim();
     const letter = renderLetter({ subject: 's', name: 'n', parts: [{ kind: 'text', text }] });
     expect(Math.max(...letter.text.split('\n').map((line) => line.length))).toBeLessThanOrEqual(76);
+  });
+});
+
+describe('the letter about a calibrated night', () => {
+  it('gives coefficients to the digits that their errors support, and says which were held', () => {
+    const term = { error: 0.00995, status: 'free' as const };
+    const { text } = nightCalibratedMail({
+      name: 'Tomas Verrall',
+      night: '17 October 2026, Larkspur 0.8 m',
+      programme: 'MH26B-04',
+      verdict: 'photometric',
+      solution: 1,
+      bands: [
+        {
+          band: 'V',
+          coefficients: [
+            { ...term, name: 'zero_point', value: 2.45928, error: 0.00515 },
+            { ...term, name: 'colour_term', value: -0.06127 },
+            { name: 'second_order_extinction', value: 0, error: 0, status: 'fixed' },
+          ],
+          scatterObservation: 0.0062,
+          scatterFrame: 0.0045,
+          nUsed: 409,
+        },
+      ],
+      nStars: 728,
+      nMeasurements: 6164,
+      nLeftOut: 0,
+      isAgain: false,
+      href: 'http://127.0.0.1:3000/nights/3kq8v7m2t0xc/results',
+    });
+    expect(text).toContain('Coefficient Zero point; Value 2.4593 ± 0.0052; Unit');
+    expect(text).toContain('Coefficient Colour term; Value −0.061 ± 0.010; Unit');
+    expect(text).toContain('Coefficient Second-order extinction; Value 0, held fixed; Unit');
   });
 });
 

@@ -62,6 +62,8 @@ interface MatrixProps {
 function Matrix({ caption, titles, rows, digits }: MatrixProps) {
   const written = (value: number | null): string => {
     if (value === null) return noValue;
+    // A coefficient that is held has no covariance at all.
+    if (value === 0) return '0';
     return digits === 'fixed' ? formatFixed(value, 2) : value.toExponential(1).replaceAll('-', '−');
   };
   return (

@@ -7,7 +7,7 @@ import type { Tone } from '@/app/_components/ui/tone-mark';
 import type { Solution, SolutionBand } from '@/lib/contracts/api/solution';
 import { bands } from '@/lib/contracts/bands';
 import { CrossChecks } from './cross-checks';
-import { CoverageTables, rangeWords, utcWords, type Solved } from './coverage-tables';
+import { CheckTable, utcWords, type Solved } from './check-table';
 import { FoldOut } from './fold-out';
 
 type Speaks = Solution['evidence'][number]['speaks'];
@@ -32,7 +32,7 @@ export function EvidencePanel({ solution }: { readonly solution: Solution }) {
         ))}
         {solved.length > 2 ? null : <KeyValues items={coverage(solved)} />}
       </div>
-      {solved.length > 2 ? <CoverageTables solved={solved} /> : null}
+      {solved.length > 2 ? <CheckTable solved={solved} /> : null}
       {solved.length === 0 ? null : (
         <FoldOut label="Cross-checks: lines of single stars, pairs of stars">
           {solved.map((one) => (
@@ -77,6 +77,10 @@ function rowsOf(
   if (values.every(({ value }) => value === first.value)) return [{ key, value: first.value, figure: true }];
   return values.map(({ band, value }) => ({ key: `${key}, ${band}`, value, figure: true }));
 }
+
+/** `1.04 to 2.11` */
+const rangeWords = (range: SolutionBand['airmass']): string | null =>
+  range === null ? null : `${formatFixed(range.min, 2)} to ${formatFixed(range.max, 2)}`;
 
 function coverage(solved: readonly Solved[]): readonly KeyValue[] {
   return [

@@ -80,7 +80,7 @@ function ValueCell({ coefficient }: { readonly coefficient: SolutionCoefficient 
   if (value === null) return <Cell className="text-right text-bad">not determined</Cell>;
   return (
     <Cell numeric>
-      <Figure value={value} error={error} decimals={4} />
+      <Figure value={value} error={error} decimals={value === 0 ? 0 : 4} />
       {status === 'free' ? null : <span className="text-ink-2"> {status}</span>}
     </Cell>
   );

@@ -30,7 +30,11 @@ export function ObservationsCompared({ one, other }: ObservationsComparedProps) 
   return (
     <Panel
       title="Observations that differ"
-      note={isWhole ? `${formatCount(rows.length)} are used by one only` : undefined}
+      note={
+        isWhole
+          ? `${formatCount(rows.length)} ${rows.length === 1 ? 'is' : 'are'} used by one only`
+          : undefined
+      }
       flush
     >
       {broken === undefined ? null : (

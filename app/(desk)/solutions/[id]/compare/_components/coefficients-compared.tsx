@@ -45,9 +45,9 @@ export function CoefficientsCompared({ one, other }: Pair) {
             .map(({ name, first, second }) => (
               <Row key={`${band} ${name}`}>
                 <Cell>{band}</Cell>
-                <Cell heading>
+                <Cell heading className="whitespace-normal!">
                   {coefficientWords[name].title}
-                  <span className="text-ink-2"> {coefficientWords[name].unit}</span>
+                  <span className="block text-small text-ink-2">{coefficientWords[name].unit}</span>
                 </Cell>
                 <ValueCell coefficient={first} />
                 <ValueCell coefficient={second} />

@@ -153,7 +153,9 @@ function overruledFindings(
   if (out.length > 0) {
     const n = out.filter((row) => !against(row)).length;
     found.push(
-      finding(`A person keeps ${counted(out.length, 'observation')} out in ${where}; ${would(n, 'use')}.`),
+      finding(
+        `In ${where} a person keeps ${counted(out.length, 'observation')} out of the fit; ${would(n, 'use')}.`,
+      ),
     );
   }
   if (kept.length > 0) {
@@ -165,7 +167,7 @@ function overruledFindings(
     const spelt = shifts.length > 0 && shifts.length < 4 ? ` (${listed(shifts)} than predicted)` : '';
     found.push(
       finding(
-        `A person keeps ${counted(kept.length, 'observation')} in in ${where}; ${would(outliers.length, 'reject')}${spelt}.`,
+        `In ${where} a person keeps ${counted(kept.length, 'observation')} in the fit; ${would(outliers.length, 'reject')}${spelt}.`,
       ),
     );
   }

@@ -136,7 +136,7 @@ function rejected(bands: readonly BandSolution[]): EvidenceItem[] {
     const words =
       nRejected === 0
         ? `all ${counted(n, 'observation')} in ${band} are used.`
-        : `${nRejected} of ${counted(n, 'observation')} in ${band} ${nRejected === 1 ? 'is' : 'are'} not used (${(100 * share).toFixed(0)} %).`;
+        : `${nRejected} of ${counted(n, 'observation')} in ${band} ${nRejected === 1 ? 'is' : 'are'} not used (${(100 * share).toFixed(share < 0.01 ? 1 : 0)} %).`;
     return [item(speaks, 'rejected', band, words)];
   });
 }

@@ -83,6 +83,8 @@ describe('a night from its first frame to the magnitudes that its investigator d
     await page.getByRole('button', { name: 'Close night' }).click();
     await page.getByRole('dialog').getByRole('button', { name: 'Close the night' }).click();
     await page.getByRole('dialog').waitFor({ state: 'detached', ...patience });
+    await page.getByText('closed', { exact: true }).first().waitFor(patience);
+    expect(await page.getByRole('button', { name: 'Close night' }).count()).toBe(0);
     await page.context().close();
   });
 
@@ -118,6 +120,7 @@ describe('a night from its first frame to the magnitudes that its investigator d
     await dialog.getByRole('button', { name: 'Approve', exact: true }).click();
     await dialog.waitFor({ state: 'detached', ...patience });
     await page.getByText('approved', { exact: true }).first().waitFor(patience);
+    expect(await page.getByRole('button', { name: 'Approve', exact: true }).count()).toBe(0);
     await page.context().close();
   });
 

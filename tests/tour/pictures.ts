@@ -57,10 +57,10 @@ export const pictures: readonly Picture[] = [
       await page.goto(`${new URL(page.url()).pathname}/solutions`);
       await page
         .getByRole('main')
-        .getByRole('link', { name: /^(Solution )?1$/ })
+        .getByRole('link', { name: /^(Solution )?2$/ })
         .first()
         .click();
-      await page.getByRole('heading', { level: 1, name: /^Solution 1/ }).waitFor();
+      await page.getByRole('heading', { level: 1, name: /^Solution 2/ }).waitFor();
       await page.locator('main svg circle').first().waitFor();
     },
   },

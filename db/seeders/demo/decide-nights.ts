@@ -1,4 +1,5 @@
 import type { Sequelize } from 'sequelize';
+import type { z } from 'zod';
 import { SolveOptions } from '@/lib/contracts/solve-options';
 import { isFault } from '@/lib/faults/fault';
 import { approveSolution } from '@/lib/server/acts/approve-solution';
@@ -19,9 +20,13 @@ const decisions = [
     propose: 'Residuals without structure; extinction as usual for October.',
     approve: 'Agreed. The two nights of Thistle 3 can be joined now.',
   },
-  { night: '2026-11-03', propose: 'Clear all night and it shows. SA 101 near the Moon fits as well.' },
+  {
+    night: '2026-11-03',
+    first: { bands: ['B', 'V'] },
+    propose: 'Clear all night and it shows. SA 101 near the Moon fits as well.',
+  },
   { night: '2026-11-08' },
-] as const;
+] as const satisfies readonly (Omit<Decision, 'night'> & { readonly night: string })[];
 
 export interface DecideOptions {
   /** E-mail of who solves and proposes, and of who approves. */
@@ -61,6 +66,8 @@ export async function decideNights(sequelize: Sequelize, options: DecideOptions)
 
 interface Decision {
   readonly night: Night;
+  /** Options of a solve before the one that counts: there is something to compare with then. */
+  readonly first?: z.input<typeof SolveOptions>;
   readonly propose?: string;
   readonly approve?: string;
 }
@@ -76,10 +83,14 @@ interface Deciding {
 
 /** Takes one night as far as its decision says; false when the application did not do a job in time. */
 async function decide(
-  { night, propose, approve }: Decision,
+  { night, first, propose, approve }: Decision,
   { photometrist, approver, wait, done }: Deciding,
 ): Promise<boolean> {
   const late = `${night.date} left waiting: the application did not do its jobs in time`;
+  if (first !== undefined) {
+    const earlier = await queueSolve(photometrist, night.publicId, SolveOptions.parse(first));
+    if (!(await wait(earlier.job))) return (done.push(late), false);
+  }
   const { solution, job } = await queueSolve(photometrist, night.publicId, SolveOptions.parse({}));
   if (!(await wait(job))) return (done.push(late), false);
   done.push(`${night.date} solved`);

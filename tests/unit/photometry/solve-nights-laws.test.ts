@@ -93,8 +93,12 @@ describe('a solution', () => {
     expect([overruled.observations.used[rejected], overruled.observations.used[used]]).toEqual([1, 0]);
     expect(overruled.observations.reasonWords[used]).toBe('A person keeps it out; the fit would use it.');
     const reasons = overruled.findings.filter(({ kind }) => kind === 'overruled').map(({ reason }) => reason);
-    expect(reasons[0]).toContain('In V a person keeps 1 observation out of the fit; the fit would use 1 of them');
-    expect(reasons[1]).toContain('In V a person keeps 1 observation in the fit; the fit would reject 1 of them');
+    expect(reasons[0]).toContain(
+      'In V a person keeps 1 observation out of the fit; the fit would use 1 of them',
+    );
+    expect(reasons[1]).toContain(
+      'In V a person keeps 1 observation in the fit; the fit would reject 1 of them',
+    );
   });
 });
 

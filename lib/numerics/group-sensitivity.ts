@@ -5,7 +5,7 @@
  * | symbol | name | shape | meaning |
  * |---|---|---|---|
  * | t | left | (seen)(n) | what β_k leaves of u's columns: P_k S T½ |
- * | M⁻¹t | solved | (seen)(n) | change of u with each response |
+ * | W | seenInverse | (seen, seen) | M⁻¹ at the subjects that the group saw |
  * | ∂γ | sharedGradient | (q)(n) | change of γ with each response |
  * | z | sharedLeft | (q)(n) | what β_k and u leave of γ's columns, in units in which γ is uncorrelated |
  * | U | inverse | (p, p) | root of what the covariance of β_k would be without the border |
@@ -79,7 +79,7 @@ export function senseGroup(elimination: Elimination, k: number): GroupSensitivit
   const inverse = inverseR(qr);
   const alone = projectNoise(group.noise, group.own.design, inverse, p);
   const left = seen.map((s) => applyProjection(alone, borderColumn(group, s, input.borderTau[s]!)));
-  const solved = seen.map((s) => combine(left, (t) => borderInverse[s * size + seen[t]!]!, rows));
+  const seenInverse = Float64Array.from(seen.flatMap((s) => seen.map((t) => borderInverse[s * size + t]!)));
   const remaining = Array.from({ length: q }, (_, j) =>
     groupWithoutBorder(group, input.borderTau, {
       v: group.shared.subarray(j * rows, (j + 1) * rows),
@@ -98,7 +98,9 @@ export function senseGroup(elimination: Elimination, k: number): GroupSensitivit
     const column = gradient.subarray(j * rows, (j + 1) * rows);
     for (let c = 0; c < p; c += 1)
       addTimes(column, inverse[c * p + j]!, alone.explained.subarray(c * rows, (c + 1) * rows));
-    for (const [s, direction] of byBorder.entries()) addTimes(column, -direction[j]!, solved[s]!);
+    const pull = Float64Array.from(byBorder, (direction) => -direction[j]!);
+    const weights = timesSymmetric(seenInverse, pull);
+    for (const [s, factor] of weights.entries()) addTimes(column, factor, left[s]!);
     for (const [m, direction] of byShared.entries()) addTimes(column, -direction[j]!, sharedGradient[m]!);
   }
   for (let m = 0; m < q; m += 1) gradient.set(sharedGradient[m]!, (p + m) * rows);
@@ -107,18 +109,15 @@ export function senseGroup(elimination: Elimination, k: number): GroupSensitivit
   const covariance = new Float64Array((p + q) ** 2);
   addOuter(covariance, rootColumns(inverse, p, p + q));
   addOuter(covariance, sharedPieces(sharedRoot, byShared, p));
-  addBorderCovariance(covariance, { byBorder, seen, borderInverse, size, width: p + q });
+  addBorderCovariance(covariance, { byBorder, seenInverse, width: p + q });
 
   const diagonal = alone.diagonal.slice();
   const blockSums = alone.blockSums.slice();
-  const take = (one: Float64Array, other: Float64Array): void => {
-    for (let i = 0; i < rows; i += 1) diagonal[i]! -= one[i]! * other[i]!;
-    const sums = sumOverBlocks(group.noise, one);
-    const others = one === other ? sums : sumOverBlocks(group.noise, other);
-    for (let b = 0; b < blockSums.length; b += 1) blockSums[b]! -= sums[b]! * others[b]!;
-  };
-  for (const [s, column] of left.entries()) take(column, solved[s]!);
-  for (const column of sharedLeft) take(column, column);
+  const sumsOf = (columns: readonly Float64Array[]) => columns.map((v) => sumOverBlocks(group.noise, v));
+  subtractQuadratic(diagonal, left, seenInverse);
+  subtractQuadratic(blockSums, sumsOf(left), seenInverse);
+  subtractSquares(diagonal, sharedLeft);
+  subtractSquares(blockSums, sumsOf(sharedLeft));
   return { alone, covariance, gradient, diagonal, blockSums };
 }
 
@@ -156,21 +155,55 @@ function addOuter(covariance: Float64Array, pieces: readonly Float64Array[]): vo
 
 interface BorderCovariance {
   readonly byBorder: readonly Float64Array[];
-  readonly seen: readonly number[];
-  readonly borderInverse: Float64Array;
-  readonly size: number;
+  readonly seenInverse: Float64Array;
   readonly width: number;
 }
 
 /** What the uncertainty of u adds to β_k. */
 function addBorderCovariance(covariance: Float64Array, border: BorderCovariance): void {
-  const { byBorder, seen, borderInverse, size, width } = border;
+  const { byBorder, seenInverse, width } = border;
+  const seen = byBorder.length;
   for (const [a, one] of byBorder.entries()) {
     for (const [b, other] of byBorder.entries()) {
-      const weight = borderInverse[seen[a]! * size + seen[b]!]!;
+      const weight = seenInverse[a * seen + b]!;
       for (let i = 0; i < one.length; i += 1) {
         for (let j = 0; j < one.length; j += 1) covariance[i * width + j]! += weight * one[i]! * other[j]!;
       }
     }
   }
+}
+
+/** W v for a symmetric W, row-major, shape (m, m). */
+function timesSymmetric(matrix: Float64Array, v: Float64Array): Float64Array {
+  const m = v.length;
+  return v.map((_, a) => {
+    let sum = 0;
+    for (let b = 0; b < m; b += 1) sum += matrix[a * m + b]! * v[b]!;
+    return sum;
+  });
+}
+
+/** Takes x′W x off each number of target, x being its place in all columns; W symmetric, row-major, shape (m, m). */
+function subtractQuadratic(
+  target: Float64Array,
+  columns: readonly Float64Array[],
+  matrix: Float64Array,
+): void {
+  const m = columns.length;
+  const x = new Float64Array(m);
+  for (let i = 0; i < target.length; i += 1) {
+    for (let a = 0; a < m; a += 1) x[a] = columns[a]![i]!;
+    let sum = 0;
+    for (let a = 0; a < m; a += 1) {
+      let below = 0;
+      for (let b = 0; b < a; b += 1) below += matrix[a * m + b]! * x[b]!;
+      sum += x[a]! * (2 * below + matrix[a * m + a]! * x[a]!);
+    }
+    target[i]! -= sum;
+  }
+}
+
+/** Takes the square of each column's number off the target's. */
+function subtractSquares(target: Float64Array, columns: readonly Float64Array[]): void {
+  for (const column of columns) for (let i = 0; i < target.length; i += 1) target[i]! -= column[i]! ** 2;
 }

@@ -135,10 +135,7 @@ export function viewNight(
  * @source Cook and Weisberg 1982, Residuals and Influence in Regression, section 2.2, for correlated errors */
 export function deletionOf(view: NightView, i: number): Shift {
   const { projection, v } = view;
-  const own = projection.diagonal[i]!;
-  // A row that alone determines a coefficient leaves rounding here.
-  if (!(own > 1e-10 * projection.inverseDiagonal[i]!)) return { shift: 0, error: Infinity };
-  return { shift: v[i]! / own, error: 1 / Math.sqrt(own) };
+  return meanShift(v[i]!, projection.diagonal[i]!, projection.inverseDiagonal[i]!);
 }
 
 /** Shift of a group of rows that are all in the fit.
@@ -158,6 +155,35 @@ export function shiftWithin(view: NightView, places: readonly number[]): Shift {
     own += projected[i]!;
     bare += projection.inverseDiagonal[i]!;
   }
+  return meanShift(pull, own, bare);
+}
+
+/** Shifts of all frames that have rows in the fit, each by the sums over its rows that the view holds already.
+ * @param view - of the night
+ * @returns for the place of each frame its shift and standard error, as `shiftWithin` gives for all its rows [mag]
+ * @accuracy rounding
+ * @source mean-shift model: Cook and Weisberg 1982, Residuals and Influence in Regression, section 2.2 */
+export function frameShifts(view: NightView): ReadonlyMap<number, Shift> {
+  const { problem, rows, projection, v } = view;
+  const blocks = blocksOf(problem, rows);
+  const sums = new Map<number, { block: number; pull: number; bare: number }>();
+  for (const [i, row] of rows.entries()) {
+    const known = sums.get(problem.frame[row]!) ?? { block: blocks[i]!, pull: 0, bare: 0 };
+    known.pull += v[i]!;
+    known.bare += projection.inverseDiagonal[i]!;
+    sums.set(problem.frame[row]!, known);
+  }
+  return new Map(
+    [...sums].map(([frame, { block, pull, bare }]) => [
+      frame,
+      meanShift(pull, projection.blockSums[block]!, bare),
+    ]),
+  );
+}
+
+/** The shift of rows over which P y sums to `pull`, P to `own` and the diagonal of V⁻¹ to `bare`. */
+function meanShift(pull: number, own: number, bare: number): Shift {
+  // Rows that alone determine a coefficient leave rounding here.
   if (!(own > 1e-10 * bare)) return { shift: 0, error: Infinity };
   return { shift: pull / own, error: 1 / Math.sqrt(own) };
 }

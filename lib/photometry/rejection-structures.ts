@@ -22,7 +22,7 @@
  */
 import { studentTLimit, studentTTail } from '@/lib/numerics/student-t';
 import { columnValue } from './band-problem';
-import { shiftOfGroup, shiftWithin, type NightView, type Shift } from './night-view';
+import { frameShifts, shiftOfGroup, shiftWithin, type NightView, type Shift } from './night-view';
 
 export interface Structure extends Shift {
   readonly kind: 'star' | 'frame' | 'run';
@@ -155,12 +155,16 @@ function groupsOf(view: NightView, usable: Int32Array, limits: StructureLimits):
     }
     return [...groups].filter(([, rows]) => rows.length > 1);
   };
-  const suspicious = ([, rows]: [number, number[]]): boolean => {
-    const places = rows.flatMap((row) => placeInView.get(row) ?? []);
-    if (places.length < rows.length / 2) return true;
-    const { shift, error } = shiftWithin(view, places);
-    return Math.abs(shift) > closerLook * error;
-  };
+  const inView = (rows: readonly number[]): number[] => rows.flatMap((row) => placeInView.get(row) ?? []);
+  const shiftOfFrame = frameShifts(view);
+  const suspicious =
+    (shiftOf: (place: number, places: readonly number[]) => Shift) =>
+    ([place, rows]: [number, number[]]): boolean => {
+      const places = inView(rows);
+      if (places.length < rows.length / 2) return true;
+      const { shift, error } = shiftOf(place, places);
+      return Math.abs(shift) > closerLook * error;
+    };
   const limit = (count: number, dof: number): number =>
     studentTLimit(Math.min(normalTail(limits.rejectSigmas), falseAlarms / Math.max(1, count)), dof);
   const stars = collect(star);
@@ -168,14 +172,14 @@ function groupsOf(view: NightView, usable: Int32Array, limits: StructureLimits):
   const starLimit = limit(stars.length, limits.dofObservation);
   const frameLimit = limit(frames.length, limits.dofFrame);
   return [
-    ...stars.filter(suspicious).map(([place, rows]): Group => ({
+    ...stars.filter(suspicious((_, places) => shiftWithin(view, places))).map(([place, rows]): Group => ({
       kind: 'star',
       star: place,
       frames: [],
       rows: Int32Array.from(rows),
       limit: starLimit,
     })),
-    ...frames.filter(suspicious).map(([place, rows]): Group => ({
+    ...frames.filter(suspicious((place) => shiftOfFrame.get(place)!)).map(([place, rows]): Group => ({
       kind: 'frame',
       star: -1,
       frames: [place],

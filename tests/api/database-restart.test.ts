@@ -27,7 +27,8 @@ const call = (what: string, more: RequestInit = {}): Promise<Response> =>
     headers: { authorization: `Bearer ${token}`, 'content-type': 'application/json', ...more.headers },
   });
 /** What anybody is told, such as a monitor. */
-const health = async (): Promise<unknown> => (await fetch(`${application.baseUrl}/api/v1/health`)).json();
+const health = async (headers: Record<string, string> = {}): Promise<unknown> =>
+  (await fetch(`${application.baseUrl}/api/v1/health`, { headers })).json();
 const read = async <T>(what: string): Promise<T> => {
   const answer = await call(what);
   expect(answer.status, what).toBe(200);
@@ -81,7 +82,11 @@ describe('an application whose database goes away and comes back', () => {
         body: 'frame,star,inst_mag,inst_err\n1,A,-7,0.01\n',
       }),
     );
-    expect(await health()).toMatchObject({ status: 'degraded', database: 'unreachable' });
+    const degraded = { status: 'degraded', database: 'unreachable' };
+    expect(await health()).toMatchObject(degraded);
+    // A monitor that is signed in, by token or by cookie, is told the same: who it is cannot be looked up now.
+    expect(await read('/health')).toMatchObject(degraded);
+    expect(await health({ cookie: `${sessionCookieName}=of-nobody` })).toMatchObject(degraded);
     for (const page of ['/sign-in', '/nights']) {
       const answer = await fetch(application.baseUrl + page, {
         headers: { cookie: `${sessionCookieName}=of-nobody` },

@@ -17,4 +17,6 @@ export const getHealth = operation({
   summary: 'Whether the service can answer',
   answer: Health,
   open: true,
+  // Whether the database is there must be told to those, too, whose credentials it holds.
+  anonymous: true,
 });

@@ -28,6 +28,8 @@ export interface Operation<
   readonly stream?: readonly string[];
   readonly status?: 200 | 201 | 202 | 204;
   readonly open?: boolean;
+  /** Of an open call: it never asks who calls, so it answers where that cannot be found out either. */
+  readonly anonymous?: boolean;
   /** Refusals beyond those that follow from the rest: bad input, no sign-in, no right, nothing there. */
   readonly faults?: readonly FaultCode[];
   /** The answer holds a secret: it is never kept for a repeated Idempotency-Key. */

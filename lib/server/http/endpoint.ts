@@ -11,7 +11,7 @@ import { problemResponse, toFault } from './problem';
 import { parseJson, readText } from './read-json';
 
 export interface Call<O extends Operation> {
-  /** Null only for an open operation that was called without sign-in. */
+  /** Null only for an open operation that was called without sign-in, or that does not ask. */
   readonly caller: O['open'] extends true ? PersonCaller | null : PersonCaller;
   readonly params: ParamsOf<O>;
   readonly query: QueryOf<O>;
@@ -59,7 +59,7 @@ async function answer<O extends Operation>(
   incoming: Incoming,
 ): Promise<Response> {
   const { request, requestId } = incoming;
-  const caller = await callerFromRequest(request);
+  const caller = operation.anonymous ? null : await callerFromRequest(request);
   if (operation.method !== 'get') demandSameOrigin(request.headers, caller?.via ?? 'nobody');
   if (!caller && !operation.open) {
     throw new Fault('not-signed-in', 'Sign in, or send an API token as “Authorization: Bearer …”.');

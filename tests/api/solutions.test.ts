@@ -3,7 +3,7 @@ import type { Response } from 'supertest';
 import { beforeAll, describe, expect, inject, it } from 'vitest';
 import request from 'supertest';
 import { logFrames, listFrames, type Frame } from '@/lib/contracts/api/frame';
-import { getJob, type Job } from '@/lib/contracts/api/job';
+import { getJob, listJobs, type Job } from '@/lib/contracts/api/job';
 import type { Queued } from '@/lib/contracts/api/measurement-set';
 import { openNight, patchNight, type Night } from '@/lib/contracts/api/night';
 import {
@@ -16,14 +16,17 @@ import {
   listSolutions,
   proposeSolution,
   solveNight,
+  transformAgain,
   withdrawSolution,
   type QueuedSolution,
+  type QueuedTransformation,
   type Solution,
   type SolutionComment,
   type SolutionObservation,
 } from '@/lib/contracts/api/solution';
 import { listStandards, type Standard } from '@/lib/contracts/api/standard';
 import type { List } from '@/lib/contracts/common';
+import { execute } from '@/lib/server/data/database';
 import { callApi, demoToken } from '@/tests/support/api';
 
 let observer: string;
@@ -35,7 +38,7 @@ let night: Night;
 const date = '2031-11-03';
 const bodyOf = <T>(answer: Response): T => answer.body as T;
 
-/** A closed night with a field of standards at five hours, in V. */
+/** A closed night with a field of standards at five hours and one target, in V. */
 beforeAll(async () => {
   observer = await demoToken('observer');
   photometrist = await demoToken('photometrist');
@@ -51,26 +54,42 @@ beforeAll(async () => {
     utc_start: `2031-11-04T${time}:00Z`,
     exposure: 30,
   }));
-  await callApi(logFrames, { token: observer, params, body: frames });
+  const target = {
+    type: 'target',
+    object: 'A field of nobody',
+    ra: 83.5,
+    dec: 22.1,
+    band: 'V',
+    exposure: 60,
+  };
+  const body = [...frames, { ...target, utc_start: '2031-11-04T02:00:00Z' }];
+  await callApi(logFrames, { token: observer, params, body });
   const logged = bodyOf<List<Frame>>(await callApi(listFrames, { token: observer, params })).items;
   const stars = bodyOf<List<Standard>>(
     await callApi(listStandards, { token: observer, query: { field: 'SA 98' } }),
   ).items.slice(0, 20);
-  const rows = logged.flatMap(({ number, airmass }) =>
+  const standards = logged.filter(({ type }) => type === 'standard');
+  const rows = standards.flatMap(({ number, airmass }) =>
     stars.map(({ name, V, BV }, place) => {
       const measured = V - 20 + 0.15 * (airmass ?? 1) - 0.04 * BV + 0.003 * Math.sin(number * 31 + place * 7);
       return `${number},${name},${measured.toFixed(4)},0.004`;
     }),
   );
-  const answer = await request(inject('baseUrl'))
-    .post(`/api/v1/nights/${night.id}/measurements`)
-    .query({ kind: 'standard' })
-    .set('authorization', `Bearer ${observer}`)
-    .set('content-type', 'text/csv')
-    .send(`frame,star,inst_mag,inst_err\n${rows.join('\n')}\n`);
-  await untilDone(bodyOf<Queued>(answer).job, observer);
+  await upload('standard', `frame,star,inst_mag,inst_err\n${rows.join('\n')}\n`);
+  const number = logged.find(({ type }) => type === 'target')?.number ?? 0;
+  await upload('target', `frame,star,ra,dec,inst_mag,inst_err\n${number},T 1,83.5,22.1,-7.3,0.01\n`);
   await callApi(patchNight, { token: observer, params, body: { state: 'closed' } });
 }, 60_000);
+
+async function upload(kind: string, table: string): Promise<void> {
+  const answer = await request(inject('baseUrl'))
+    .post(`/api/v1/nights/${night.id}/measurements`)
+    .query({ kind })
+    .set('authorization', `Bearer ${observer}`)
+    .set('content-type', 'text/csv')
+    .send(table);
+  await untilDone(bodyOf<Queued>(answer).job, observer);
+}
 
 async function untilDone(id: string, token: string): Promise<Job> {
   const end = Date.now() + 60_000;
@@ -89,6 +108,38 @@ async function solved(token: string, options: object = {}): Promise<Solution> {
   const { solution, job } = bodyOf<QueuedSolution>(answer);
   expect(await untilDone(job, token)).toMatchObject({ kind: 'solve-night', result: { solution } });
   return bodyOf<Solution>(await callApi(getSolution, { token, params: { id: solution } }));
+}
+
+/** The approval has its targets transformed; when that has not come to its end, it can be asked for again. */
+async function transformAnew(solution: string): Promise<void> {
+  const query = { kind: 'transform-targets' };
+  const jobs = bodyOf<List<Job>>(await callApi(listJobs, { token: second, query })).items;
+  await untilDone(jobs.find((job) => job.solution === solution)?.id ?? '', second);
+  const params = { id: solution };
+  const made = await callApi(transformAgain, { token: photometrist, params });
+  expect(made.status, made.text).toBe(409);
+  // As a job leaves it that was cancelled before its end.
+  await execute(
+    `UPDATE transformations SET state = 'queued', finished_at = NULL
+      WHERE solution_id = (SELECT id FROM solutions WHERE public_id = :solution)`,
+    { solution },
+    null,
+  );
+  await execute(
+    `DELETE FROM calibrated_magnitudes WHERE transformation_id IN
+       (SELECT t.id FROM transformations t JOIN solutions s ON s.id = t.solution_id WHERE s.public_id = :solution)`,
+    { solution },
+    null,
+  );
+  expect((await callApi(transformAgain, { token: observer, params })).status).toBe(403);
+  expect((await callApi(transformAgain, { token: pi, params })).status).toBe(404);
+  const again = await callApi(transformAgain, { token: photometrist, params });
+  expect(again.status, again.text).toBe(202);
+  expect(await untilDone(bodyOf<QueuedTransformation>(again).job, photometrist)).toMatchObject({
+    kind: 'transform-targets',
+    solution,
+    result: { outcome: 'stored', stars: 1 },
+  });
 }
 
 describe('a night over HTTP', { timeout: 120_000 }, () => {
@@ -143,6 +194,7 @@ describe('a night over HTTP', { timeout: 120_000 }, () => {
     expect(own.status).toBe(403);
     const approved = await callApi(approveSolution, { token: second, params, body: { comment: 'Agreed.' } });
     expect(bodyOf<Solution>(approved), approved.text).toMatchObject({ state: 'approved' });
+    await transformAnew(id);
     const comments = await callApi(listSolutionComments, { token: observer, params });
     expect(bodyOf<List<SolutionComment>>(comments).items.map(({ act }) => act)).toEqual([
       'comment',

@@ -154,6 +154,7 @@ export const routeRights: readonly RouteRights[] = [
   row(solutions.addSolutionComment, '+++0--00', ofSolution({ body: { text: mark } })),
   row(solutions.proposeSolution, '-+-0--00', ofSolution({ body: {} })),
   row(solutions.approveSolution, '-+-0--00', ofSolution({ body: {} })),
+  row(solutions.transformAgain, '++-0--00', ofSolution()),
   row(solutions.withdrawSolution, '-+-0--00', ofSolution({ body: { comment: mark } })),
 
   row(downloadCalibrated, '+++0++00', ({ night, calibrated }) => ({

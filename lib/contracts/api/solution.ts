@@ -217,6 +217,8 @@ export type ChangeExclusions = z.output<typeof ChangeExclusions>;
 
 export const QueuedSolution = z.object({ solution: PublicId, job: PublicId });
 export type QueuedSolution = z.infer<typeof QueuedSolution>;
+export const QueuedTransformation = z.object({ job: PublicId });
+export type QueuedTransformation = z.infer<typeof QueuedTransformation>;
 
 const SolutionParams = z.object({ id: PathId.meta({ description: 'Id of the solution' }) });
 const tag = 'solutions';
@@ -329,4 +331,17 @@ export const withdrawSolution = operation({
   body: WithdrawSolution,
   answer: Solution,
   faults: ['conflict', 'stale'],
+});
+export const transformAgain = operation({
+  id: 'transformAgain',
+  method: 'post',
+  path: '/solutions/{id}/transform',
+  tag,
+  summary: 'Bring the night’s targets to the standard system after all',
+  description:
+    'An approval queues this by itself; here it is queued anew after its job was cancelled or has failed for good. Refused while nothing waits, while a job is at work on it, and unless the solution is approved.',
+  params: SolutionParams,
+  answer: QueuedTransformation,
+  status: 202,
+  faults: ['conflict'],
 });

@@ -162,9 +162,9 @@ export const routeRights: readonly RouteRights[] = [
     query: { solution: calibrated, format: 'csv' },
   })),
 
-  // Jobs: whose it is, and the manager.
-  row(getJob, '+0+00000', ofJob),
-  row(getJobEvents, '+0+00000', ofJob),
-  row(cancelJob, '+0+00000', ofJob),
-  row(retryJob, '+0-00000', ofJob),
+  // The observer's job that works on the draft: whoever may see a solution may follow what is done to it, no more.
+  row(getJob, '+++0++00', ofJob),
+  row(getJobEvents, '+++0++00', ofJob),
+  row(cancelJob, '+-+0--00', ofJob),
+  row(retryJob, '+--0--00', ofJob),
 ];

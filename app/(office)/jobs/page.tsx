@@ -39,7 +39,7 @@ export default async function JobsPage({ searchParams }: PageProps<'/jobs'>) {
         <span className="text-ink-2">
           {caller.roles.has('manager')
             ? 'What the service does in its own time'
-            : 'What the service does for you and your programmes in its own time'}
+            : 'What the service does in its own time: for you, for your programmes, and for solutions that you may see'}
         </span>
       </PageHead>
       <Tabs

@@ -28,7 +28,10 @@ export const Job = z
     state: JobState,
     progress: z.number().min(0).max(1),
     message: z.string().meta({ description: 'What is being done' }),
-    result: z.unknown().optional().meta({ description: 'Once it is done; its form depends on the kind' }),
+    result: z
+      .unknown()
+      .optional()
+      .meta({ description: 'Once it is done, where you may know all of it; its form depends on the kind' }),
     error: JobError.optional().meta({ description: 'Of the last try that failed' }),
     tries: z.number().int().meta({ description: 'Tries begun so far' }),
     max_tries: z.number().int(),
@@ -62,7 +65,8 @@ export const listJobs = operation({
   path: '/jobs',
   tag,
   summary: 'Jobs that you may see, the newest first',
-  description: 'Managers see all; others their own, and those of their programmes.',
+  description:
+    'Managers see all; others their own, those of their programmes, and those that work on the solutions of nights whose solutions they may see.',
   query: JobQuery,
   answer: listOf(Job),
 });

@@ -1,5 +1,4 @@
 import 'server-only';
-import type { JobState } from '@/lib/contracts/api/job';
 import type { Solution } from '@/lib/contracts/api/solution';
 import type { Scope } from '@/lib/server/policy/scope';
 import { select, selectOne } from './database';
@@ -55,18 +54,12 @@ export async function hasApprovedSolution(nightId: number): Promise<boolean> {
   return row !== null;
 }
 
-export interface TransformJobRow {
-  readonly id: string;
-  readonly state: JobState;
-  readonly progress: number;
-  readonly message: string;
-}
-
-/** The newest job that transforms the night's targets. */
-export function transformJob(nightId: number): Promise<TransformJobRow | null> {
-  return selectOne<TransformJobRow>(
-    `SELECT public_id AS id, state, progress, message FROM jobs
+/** Public id of the newest job that transforms the night's targets. */
+export async function latestTransformJob(nightId: number): Promise<string | null> {
+  const row = await selectOne<{ id: string }>(
+    `SELECT public_id AS id FROM jobs
       WHERE night_id = :nightId AND kind = 'transform-targets' ORDER BY jobs.id DESC LIMIT 1`,
     { nightId },
   );
+  return row?.id ?? null;
 }

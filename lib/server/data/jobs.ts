@@ -1,6 +1,7 @@
 import 'server-only';
-import type { OwnScope } from '@/lib/server/policy/scope';
-import { execute, select, selectOne, type Tx } from './database';
+import type { JobScope } from '@/lib/server/policy/scope';
+import { execute, select, selectOne, type SqlValues, type Tx } from './database';
+import { visibleNights } from './visible';
 
 export interface NewJobRow {
   readonly publicId: string;
@@ -61,6 +62,11 @@ export interface JobRow {
   readonly createdById: number | null;
   readonly createdBy: string | null;
   readonly programmeId: number | null;
+  /** It works on a solution of its night. */
+  readonly isOfSolution: 0 | 1;
+  /** Internal ids with commas between: who observed that night, and the programmes with frames in it. */
+  readonly nightObservers: string | null;
+  readonly nightProgrammes: string | null;
   readonly nightPublicId: string | null;
   readonly nightDate: string | null;
   readonly telescope: string | null;
@@ -75,10 +81,17 @@ export interface JobRow {
   readonly finishedAt: Date | null;
 }
 
+const ofSolution = `j.kind IN ('solve-night', 'transform-targets')`;
+
 const jobRows = `SELECT j.id, j.public_id AS publicId, j.kind, j.payload, j.state, j.run_after AS runAfter, j.tries,
        j.max_tries AS maxTries, j.progress, j.message, j.result, j.error,
        j.cancel_requested_at IS NOT NULL AS isCancelRequested, j.created_by_id AS createdById, p.name AS createdBy,
-       j.programme_id AS programmeId, n.public_id AS nightPublicId, n.date AS nightDate, t.code AS telescope,
+       j.programme_id AS programmeId, ${ofSolution} AS isOfSolution,
+       (SELECT GROUP_CONCAT(o.person_id) FROM night_observers o
+         WHERE o.night_id = j.night_id AND ${ofSolution}) AS nightObservers,
+       (SELECT GROUP_CONCAT(DISTINCT f.programme_id) FROM frames f
+         WHERE f.night_id = j.night_id AND ${ofSolution}) AS nightProgrammes,
+       n.public_id AS nightPublicId, n.date AS nightDate, t.code AS telescope,
        m.subject AS mailSubject, m.recipient AS mailRecipient, s.name AS setName, s.public_id AS setPublicId,
        q.number AS solutionNumber, q.public_id AS solutionPublicId,
        j.created_at AS createdAt, j.started_at AS startedAt, j.finished_at AS finishedAt
@@ -90,7 +103,7 @@ const jobRows = `SELECT j.id, j.public_id AS publicId, j.kind, j.payload, j.stat
     AND m.public_id = CONVERT(JSON_VALUE(j.payload, '$.mail') USING ascii) COLLATE ascii_bin
   LEFT JOIN measurement_sets s ON j.kind = 'check-measurements'
     AND s.public_id = CONVERT(JSON_VALUE(j.payload, '$.set') USING ascii) COLLATE ascii_bin
-  LEFT JOIN solutions q ON j.kind IN ('solve-night', 'transform-targets')
+  LEFT JOIN solutions q ON ${ofSolution}
     AND q.public_id = CONVERT(JSON_VALUE(j.payload, '$.solution') USING ascii) COLLATE ascii_bin`;
 
 /** One job; asks for no scope, because whoever calls asks policy with what it finds. */
@@ -122,17 +135,30 @@ export interface JobFilter {
   readonly limit: number;
 }
 
+/** Jobs in the scope. The alias of the job is `j`, of its night `n`. */
+function visibleJobs(scope: JobScope): { readonly sql: string; readonly values: SqlValues } {
+  const nights = visibleNights(scope.solutionsOf);
+  return {
+    sql: `(:all OR j.created_by_id = :owner OR j.programme_id IN (:programmes) OR (${ofSolution} AND ${nights.sql}))`,
+    values: {
+      all: scope.all,
+      owner: scope.ownerId,
+      // An empty list is no SQL; no programme has the id 0.
+      programmes: scope.programmeIds.length > 0 ? scope.programmeIds : [0],
+      ...nights.values,
+    },
+  };
+}
+
 /** Jobs within the scope, the newest first. */
-export function listJobs(scope: OwnScope, filter: JobFilter): Promise<readonly JobRow[]> {
-  const where = ['(:all OR j.created_by_id = :owner OR j.programme_id IN (:programmes))'];
+export function listJobs(scope: JobScope, filter: JobFilter): Promise<readonly JobRow[]> {
+  const jobs = visibleJobs(scope);
+  const where = [jobs.sql];
   if (filter.state !== undefined) where.push('j.state = :state');
   if (filter.kind !== undefined) where.push('j.kind = :kind');
   if (filter.before !== null) where.push('j.id < :before');
   return select<JobRow>(`${jobRows} WHERE ${where.join(' AND ')} ORDER BY j.id DESC LIMIT :limit`, {
-    all: scope.all,
-    owner: scope.ownerId,
-    // An empty list is no SQL; no programme has the id 0.
-    programmes: scope.programmeIds.length > 0 ? scope.programmeIds : [0],
+    ...jobs.values,
     state: filter.state ?? null,
     kind: filter.kind ?? null,
     before: filter.before,
@@ -141,15 +167,12 @@ export function listJobs(scope: OwnScope, filter: JobFilter): Promise<readonly J
 }
 
 /** How many jobs within the scope are in each state. */
-export function countJobs(scope: OwnScope): Promise<readonly { state: JobState; n: number }[]> {
+export function countJobs(scope: JobScope): Promise<readonly { state: JobState; n: number }[]> {
+  const jobs = visibleJobs(scope);
   return select(
-    `SELECT state, COUNT(*) AS n FROM jobs
-      WHERE :all OR created_by_id = :owner OR programme_id IN (:programmes) GROUP BY state`,
-    {
-      all: scope.all,
-      owner: scope.ownerId,
-      programmes: scope.programmeIds.length > 0 ? scope.programmeIds : [0],
-    },
+    `SELECT j.state, COUNT(*) AS n FROM jobs j LEFT JOIN nights n ON n.id = j.night_id
+      WHERE ${jobs.sql} GROUP BY j.state`,
+    jobs.values,
   );
 }
 

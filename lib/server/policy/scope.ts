@@ -33,7 +33,7 @@ export function nightScope(caller: Caller): Scope {
   return dataScope(caller);
 }
 
-/** Which jobs and audit rows a caller may see: the matrix's `job.see` and `audit.see`, as a value for lists. */
+/** Which jobs and audit rows are a caller's own: the matrix's `job.see` and `audit.see`, as a value for lists. */
 export interface OwnScope {
   readonly all: boolean;
   readonly ownerId: number;
@@ -49,6 +49,19 @@ export function ownScope(caller: Caller): OwnScope {
     programmeIds: [...caller.programmes.keys()],
   };
 }
+
+/**
+ * Which jobs a caller may see: those of `ownScope`, and those that work on the solutions of a night whose solutions they
+ * may see.
+ */
+export interface JobScope extends OwnScope {
+  readonly solutionsOf: Scope;
+}
+
+export const jobScope = (caller: Caller): JobScope => ({
+  ...ownScope(caller),
+  solutionsOf: dataScope(caller),
+});
 
 /** Scope for programmes themselves: the observatory's staff see all, investigators their own. */
 export function programmeScope(caller: Caller): Scope {

@@ -14,7 +14,7 @@ import { calibratedFlags, namesOfFlags, type CalibratedFlag } from '@/lib/photom
 import {
   hasApprovedSolution,
   listResultRows,
-  transformJob,
+  latestTransformJob,
   type ResultRow,
 } from '@/lib/server/data/calibrated-results';
 import {
@@ -31,6 +31,7 @@ import { solutionSubject } from '@/lib/server/data/solutions';
 import type { Caller } from '@/lib/server/policy/caller';
 import { may } from '@/lib/server/policy/matrix';
 import { dataScope, nightScope } from '@/lib/server/policy/scope';
+import { readJob } from './job';
 
 /** What a night's page of results shows: stars of one programme by one solution, or why there are none. */
 export async function calibratedPage(
@@ -76,7 +77,8 @@ const codeOf = (row: ResultRow | undefined): string | null => (row ? (row.progra
 async function whyNothing(caller: Caller, nightId: number, own: readonly ResultRow[]): Promise<NoResult> {
   const row = own.find(({ solutionState, state }) => solutionState === 'approved' && state === 'queued');
   if (row) {
-    const [job, subject] = await Promise.all([transformJob(nightId), solutionSubject(nightId)]);
+    const [id, subject] = await Promise.all([latestTransformJob(nightId), solutionSubject(nightId)]);
+    const job = id === null ? null : await readJob(caller, id);
     const mayStart = may(caller, 'solution.transform', subject);
     return { why: 'running', job, solution: row.solution, mayStart };
   }

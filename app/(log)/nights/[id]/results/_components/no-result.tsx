@@ -94,7 +94,7 @@ function Running({ reason }: { readonly reason: Extract<Reason, { why: 'running'
     if (isOver) router.refresh();
   }, [isOver, router]);
   useEffect(() => {
-    // Whoever may not follow the job looks from time to time.
+    // Where the job cannot be followed, the page looks from time to time.
     if (job !== null) return;
     const timer = setInterval(() => router.refresh(), look_ms);
     return () => clearInterval(timer);

@@ -154,6 +154,7 @@ export interface CalibratedResult {
  */
 export type NoResult =
   | { readonly why: 'hidden' | 'no-solution' | 'no-targets' }
+  | { readonly why: 'not-photometric'; readonly solution: string }
   | {
       readonly why: 'running';
       readonly job: Pick<Job, 'id' | 'state' | 'progress' | 'message'> | null;

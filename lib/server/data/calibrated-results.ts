@@ -43,15 +43,14 @@ export async function listResultRows(scope: Scope, nightId: number): Promise<rea
   );
 }
 
-/** Whether a solution that is approved now covers the night, its own or joined. */
-export async function hasApprovedSolution(nightId: number): Promise<boolean> {
-  const row = await selectOne(
-    `SELECT s.id FROM solutions s
-      WHERE s.state = 'approved' AND (s.night_id = :nightId
-         OR EXISTS (SELECT 1 FROM solution_nights j WHERE j.solution_id = s.id AND j.night_id = :nightId)) LIMIT 1`,
+/** The night's approved solution, of which there is one at most. One that was only joined with it calibrates another night. */
+export function approvedSolution(
+  nightId: number,
+): Promise<{ readonly id: string; readonly verdict: Solution['verdict'] } | null> {
+  return selectOne(
+    `SELECT public_id AS id, verdict FROM solutions WHERE state = 'approved' AND night_id = :nightId`,
     { nightId },
   );
-  return row !== null;
 }
 
 /** Public id of the newest job that transforms the night's targets. */

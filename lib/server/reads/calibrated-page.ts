@@ -12,7 +12,7 @@ import {
 import { Fault } from '@/lib/faults/fault';
 import { calibratedFlags, namesOfFlags, type CalibratedFlag } from '@/lib/photometry/calibrated-flags';
 import {
-  hasApprovedSolution,
+  approvedSolution,
   listResultRows,
   latestTransformJob,
   type ResultRow,
@@ -82,7 +82,9 @@ async function whyNothing(caller: Caller, nightId: number, own: readonly ResultR
     const mayStart = may(caller, 'solution.transform', subject);
     return { why: 'running', job, solution: row.solution, mayStart };
   }
-  return { why: (await hasApprovedSolution(nightId)) ? 'no-targets' : 'no-solution' };
+  const approved = await approvedSolution(nightId);
+  if (approved?.verdict === 'not photometric') return { why: 'not-photometric', solution: approved.id };
+  return { why: approved ? 'no-targets' : 'no-solution' };
 }
 
 const flags = Object.keys(calibratedFlags) as readonly CalibratedFlag[];

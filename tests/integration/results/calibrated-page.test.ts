@@ -24,6 +24,8 @@ let bare: string;
 let waiting: string;
 let earlier: MadeSolution;
 let approved: MadeSolution;
+/** Of the night that waits. */
+let queued: MadeSolution;
 let marrowId: number;
 
 async function nightWithTargets(date: string): Promise<string> {
@@ -84,7 +86,7 @@ beforeAll(async () => {
   await addStars(await newResult({ solution: approved, night, programme: null }), [
     { no: 1, star: 'unclaimed', v: 16 },
   ]);
-  const queued = await newSolution({ night: waiting, number: 1, state: 'approved', ...signed });
+  queued = await newSolution({ night: waiting, number: 1, state: 'approved', ...signed });
   await newResult({ solution: queued, night: waiting, programme: thistle, state: 'queued' });
   const nightId = await nightIdOf(waiting);
   await inTransaction((tx) =>
@@ -285,6 +287,15 @@ describe('where there is nothing to show', () => {
 
   it('says that there was no target of theirs', async () => {
     expect((await page('marrowCo', {}, waiting)).result).toEqual({ why: 'no-targets' });
+  });
+
+  it('says that the night was judged not photometric, and by which solution', async () => {
+    const setVerdict = (verdict: string) =>
+      execute('UPDATE solutions SET verdict = :verdict WHERE id = :id', { verdict, id: queued.id }, null);
+    await setVerdict('not photometric');
+    const shown = await page('marrowCo', {}, waiting);
+    await setVerdict('photometric');
+    expect(shown.result).toEqual({ why: 'not-photometric', solution: queued.publicId });
   });
 
   it('does not put superseded magnitudes in the place of withdrawn ones, but leads to them', async () => {

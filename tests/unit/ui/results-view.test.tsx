@@ -224,6 +224,14 @@ describe('a night without results', () => {
     expect(screen.getByText(title)).toBeTruthy();
   });
 
+  it('says that the night was judged not photometric, and leads to who judged', () => {
+    show(<NoResult page={page} reason={{ why: 'not-photometric', solution: 'abcdefghjkmn' }} />);
+    expect(screen.getByText('Not photometric')).toBeTruthy();
+    const link = screen.getByRole('link', { name: 'The solution' });
+    expect(link.getAttribute('href')).toBe('/solutions/abcdefghjkmn');
+    expect(screen.getByRole('link', { name: 'solution 1, superseded' })).toBeTruthy();
+  });
+
   it('shows how far the transformation is', () => {
     show(<NoResult page={page} reason={{ ...running, job: null }} />);
     expect(screen.getByRole('progressbar').getAttribute('aria-valuetext')).toBe('under way');

@@ -24,7 +24,7 @@ interface NoResultProps {
 export function NoResult({ page, reason }: NoResultProps) {
   return (
     <Panel title="Calibrated magnitudes">
-      {reason.why === 'running' ? <Running reason={reason} /> : <Why night={page.night} why={reason.why} />}
+      {reason.why === 'running' ? <Running reason={reason} /> : <Why night={page.night} reason={reason} />}
       <Earlier page={page} />
     </Panel>
   );
@@ -50,12 +50,12 @@ function Earlier({ page: { night, programme, solutions } }: { readonly page: Cal
 
 function Why({
   night,
-  why,
+  reason,
 }: {
   readonly night: string;
-  readonly why: 'hidden' | 'no-solution' | 'no-targets';
+  readonly reason: Exclude<Reason, { why: 'running' }>;
 }) {
-  switch (why) {
+  switch (reason.why) {
     case 'hidden':
       return (
         <EmptyState title="Not yours to see">
@@ -68,6 +68,16 @@ function Why({
         <EmptyState title="No approved solution yet">
           The night’s targets are transformed to standard magnitudes as soon as a photometrist has proposed a
           solution and another one has approved it.
+        </EmptyState>
+      );
+    case 'not-photometric':
+      return (
+        <EmptyState
+          title="Not photometric"
+          action={<LinkButton href={`/solutions/${reason.solution}` as Route}>The solution</LinkButton>}
+        >
+          The night was judged not photometric, so no magnitudes on the standard system were derived. Its
+          instrumental measurements stay available; whoever doubts the judgement asks a photometrist.
         </EmptyState>
       );
     case 'no-targets':

@@ -4,7 +4,9 @@ import type { Band } from './bands';
 
 /** What an approval would set off, counted as things stand now. */
 export interface ApprovalEffect {
-  /** Measurements of targets that are transformed. */
+  /** False: the verdict says that it is not, so nothing is transformed. */
+  readonly isPhotometric: boolean;
+  /** Measurements of targets. */
   readonly nMagnitudes: number;
   readonly nProgrammes: number;
   /** People who get a mail. */

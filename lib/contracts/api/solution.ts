@@ -315,7 +315,7 @@ export const approveSolution = operation({
   tag,
   summary: 'Approve a proposed solution',
   description:
-    'The approved solution before it is superseded, the night becomes calibrated, the night’s targets are transformed, and the investigators get a mail.',
+    'The approved solution before it is superseded, the night becomes calibrated, the night’s targets are transformed, and the investigators get a mail. Of a night that is not photometric nothing is transformed; the mail says so.',
   params: SolutionParams,
   body: ApproveSolution,
   answer: Solution,

@@ -8,14 +8,22 @@ import { lockNight, moveNight } from '@/lib/server/data/night-state';
 import { observatory } from '@/lib/server/data/observatory';
 import { addTargetSets, lockSetsOf, takeIntoUse } from '@/lib/server/data/solution-sets';
 import { approvedBeside, moveSolution } from '@/lib/server/data/solution-state';
-import { insertComment } from '@/lib/server/data/solution-writes';
+import { commentsOf, insertComment } from '@/lib/server/data/solution-writes';
 import { nightOf, requireSolution, solutionSubject, type SolutionRow } from '@/lib/server/data/solutions';
-import { dropQueuedTransformations, queueTransformations } from '@/lib/server/data/transformations';
+import {
+  dropQueuedTransformations,
+  queueTransformations,
+  targetInvestigators,
+} from '@/lib/server/data/transformations';
 import { enqueue } from '@/lib/server/jobs/enqueue';
 import { transformJob } from '@/lib/server/jobs/transform-job';
+import { nightWords, solutionLink } from '@/lib/server/mail/measurement-words';
+import { nightNotPhotometricMail } from '@/lib/server/mail/night-not-photometric';
+import { postMail } from '@/lib/server/mail/post-mail';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { dataScope } from '@/lib/server/policy/scope';
+import { environment } from '@/lib/server/settings/environment';
 
 /**
  * Approves a proposed solution: the one before it is superseded, the night is calibrated, and its targets are to be
@@ -27,10 +35,12 @@ export async function approveSolution(
   id: string,
   input: ApproveSolution,
 ): Promise<void> {
-  const solution = await requireSolution(dataScope(caller), id);
-  demand(caller, 'solution.approve', await solutionSubject(solution.nightId));
+  const seen = await requireSolution(dataScope(caller), id);
+  demand(caller, 'solution.approve', await solutionSubject(seen.nightId));
   await inTransaction(async (tx) => {
-    await lockNight(tx, nightOf(solution));
+    await lockNight(tx, nightOf(seen));
+    // Read again under the lock: the verdict may have been given a moment ago, and what is made follows from it.
+    const solution = await requireSolution(dataScope(caller), id, tx);
     const before = await moveSolution(tx, solution, {
       from: ['proposed'],
       to: 'approved',
@@ -46,6 +56,7 @@ export async function approveSolution(
       const comment = { solutionId: solution.id, personId: caller.personId, text: input.comment };
       await insertComment(tx, { ...comment, act: 'approve' });
     }
+    if (solution.verdict === 'not photometric') await tellInvestigators(tx, caller, solution);
     await recordAudit(tx, caller, {
       act: 'solution.approve',
       subjectKind: 'solution',
@@ -121,4 +132,40 @@ async function queueTargets(tx: Tx, caller: PersonCaller, solution: SolutionRow)
   if (programmes === 0) return 0;
   await enqueue(tx, caller, transformJob(solution));
   return programmes;
+}
+
+/** Nothing else would tell the investigators that no magnitudes are to come. Each gets one mail, for all programmes. */
+async function tellInvestigators(tx: Tx, caller: PersonCaller, solution: SolutionRow): Promise<void> {
+  const comments = await commentsOf(solution.id, tx);
+  const saidAt = (act: 'propose' | 'approve'): string =>
+    comments.findLast((comment) => comment.act === act)?.text ?? '';
+  for (const person of await targetInvestigators(tx, solution.nightId)) {
+    const mail = nightNotPhotometricMail({
+      name: person.name,
+      night: nightWords(solution),
+      programmes: person.programmes.split(','),
+      solution: solution.number,
+      proposedBy: solution.proposedBy ?? '',
+      proposal: saidAt('propose'),
+      approvedBy: caller.name,
+      comment: saidAt('approve'),
+      evidence: speakingAgainst(solution),
+      hasEarlier: Number(person.hasMagnitudes) === 1,
+      href: solutionLink(solution),
+      measurements: `${environment().baseUrl}/nights/${solution.nightPublicId}/measurements`,
+    });
+    await postMail(tx, {
+      ...mail,
+      dedupeKey: `night-not-photometric:${solution.publicId}:${person.personId}`,
+      to: person,
+    });
+  }
+}
+
+/** The words of the evidence against the night; where people judged it more severely, those that ask for care. */
+function speakingAgainst({ evidence }: SolutionRow): readonly string[] {
+  const wordsThat = (speaks: 'against' | 'care'): readonly string[] =>
+    (evidence ?? []).filter((item) => item.speaks === speaks).map(({ words }) => words);
+  const against = wordsThat('against');
+  return against.length > 0 ? against : wordsThat('care');
 }

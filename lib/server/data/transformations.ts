@@ -53,6 +53,32 @@ export async function withdrawTransformations(tx: Tx, solutionId: number): Promi
   );
 }
 
+export interface TargetInvestigator {
+  readonly personId: number;
+  readonly email: string;
+  readonly name: string;
+  /** Codes of the person's programmes with targets in the night, with commas between. */
+  readonly programmes: string;
+  /** Whether any of them has magnitudes of the night. */
+  readonly hasMagnitudes: 0 | 1;
+}
+
+/** PI and co-investigators of the programmes whose targets were measured in a night, who can still sign in. */
+export function targetInvestigators(tx: Tx, nightId: number): Promise<readonly TargetInvestigator[]> {
+  return select<TargetInvestigator>(
+    `SELECT p.id AS personId, p.email, p.name, GROUP_CONCAT(g.code ORDER BY g.code) AS programmes,
+            EXISTS (SELECT 1 FROM transformations t JOIN programme_members o ON o.programme_id = t.programme_id
+                     WHERE t.night_id = :nightId AND t.state = 'done' AND o.person_id = p.id) AS hasMagnitudes
+       FROM programme_members b
+       JOIN people p ON p.id = b.person_id AND p.disabled_at IS NULL
+       JOIN programmes g ON g.id = b.programme_id
+      WHERE b.programme_id IN (SELECT f.programme_id FROM ${targetRows})
+      GROUP BY p.id, p.email, p.name ORDER BY p.id`,
+    { nightId },
+    tx,
+  );
+}
+
 interface TargetSpan {
   readonly airmassMin: number;
   readonly airmassMax: number;
@@ -72,12 +98,13 @@ export async function targetSpan(nightId: number): Promise<TargetSpan | null> {
 }
 
 export interface ApprovalCounts {
+  /** Measurements of targets. */
   readonly nMagnitudes: number;
   readonly nProgrammes: number;
   readonly nInvestigators: number;
 }
 
-/** What an approval would transform, and whom it would concern, as things stand now. */
+/** What there is to transform in a night, and whom it concerns, as things stand now. */
 export async function approvalCounts(nightId: number): Promise<ApprovalCounts> {
   const counted = await selectOne<{ nMagnitudes: number; nProgrammes: number }>(
     `SELECT CAST(COALESCE(SUM(q.n_rows), 0) AS INT) AS nMagnitudes, COUNT(DISTINCT f.programme_id) AS nProgrammes

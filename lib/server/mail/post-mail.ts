@@ -9,7 +9,12 @@ import { environment } from '@/lib/server/settings/environment';
 import { oneLine } from './one-line';
 
 export type MailKind =
-  'upload-refused' | 'measurements-waiting' | 'solution-proposed' | 'night-calibrated' | 'invitation';
+  | 'upload-refused'
+  | 'measurements-waiting'
+  | 'solution-proposed'
+  | 'night-calibrated'
+  | 'night-not-photometric'
+  | 'invitation';
 
 export interface NewMail {
   readonly kind: MailKind;

@@ -37,7 +37,7 @@ async function approvalEffect(
 ): Promise<ApprovalEffect | null> {
   if (outcome !== 'determined' || (state !== 'draft' && state !== 'proposed')) return null;
   const supersedes = solutions.find((each) => each.state === 'approved')?.number ?? null;
-  // Nothing is made of a night that is not photometric.
-  if (verdict === 'not photometric') return { nMagnitudes: 0, nProgrammes: 0, nInvestigators: 0, supersedes };
-  return { ...(await approvalCounts(nightId)), supersedes };
+  // Nothing is made of a night that is not photometric; the investigators are told.
+  const isPhotometric = verdict !== 'not photometric';
+  return { ...(await approvalCounts(nightId)), isPhotometric, supersedes };
 }

@@ -120,7 +120,13 @@ describe('approving', { timeout: 180_000 }, () => {
   it('calibrates the night and queues its targets, by programme, in one job', async () => {
     const { id, night } = await proposed({ targets: ['Thistle 3', 'Thistle 3', 'LV Marrow'] });
     const { effect } = await solutionPage(edda, id);
-    expect(effect).toEqual({ nMagnitudes: 3, nProgrammes: 2, nInvestigators: 1, supersedes: null });
+    expect(effect).toEqual({
+      isPhotometric: true,
+      nMagnitudes: 3,
+      nProgrammes: 2,
+      nInvestigators: 1,
+      supersedes: null,
+    });
     await approveSolution(edda, id, { comment: 'agreed' });
     expect(await readSolution(pi, id)).toMatchObject({
       state: 'approved',
@@ -208,7 +214,7 @@ describe('approving', { timeout: 180_000 }, () => {
   it('of a night that is not photometric transforms nothing', async () => {
     const { id } = await draft({ targets: ['Thistle 3'] });
     await proposeSolution(bram, id, { comment: '', verdict: 'not photometric' });
-    expect((await solutionPage(edda, id)).effect).toMatchObject({ nMagnitudes: 0, nInvestigators: 0 });
+    expect((await solutionPage(edda, id)).effect).toMatchObject({ isPhotometric: false, nInvestigators: 1 });
     await approveSolution(edda, id, nothing);
     expect(await transformations(id)).toEqual([]);
     expect(await transformJobs(id)).toEqual([]);

@@ -1,7 +1,7 @@
 /** What a fit says of every observation that it was given. */
 import { colourForBand, magnitudeInBand } from './bands';
 import { designOf, rowsOfNight, type BandProblem, type MissingRow } from './band-problem';
-import { fainterOrBrighter, listed } from './finding-words';
+import { fainterOrBrighter } from './finding-words';
 import { type NightFit } from './fit-band';
 import { observationReasons, type BandSolution, type ObservationResults } from './night-solution';
 import { viewNight, type NightView } from './night-view';
@@ -167,8 +167,12 @@ const reasonOf = (verdict: RowVerdict): 'outlier' | 'star' | 'frame' | 'run' =>
 export function verdictWords(verdict: RowVerdict, observations: StandardObservations): string {
   if (verdict.kind === 'believed') return '';
   if (verdict.kind === 'structure') return `${structureWords(verdict.structure, observations)}.`;
-  const sigmas = Math.abs(verdict.shift / verdict.error);
-  return `It is ${fainterOrBrighter(verdict.shift)} than the other observations predict: ${sigmas.toFixed(1)} standard errors, where ${verdict.limit.toFixed(1)} are allowed.`;
+  return `It is ${fainterOrBrighter(verdict.shift)} than the other observations predict, ${distanceWords(verdict)}.`;
+}
+
+/** How far off something lies, and how far it might. */
+function distanceWords({ shift, error, limit }: Pick<Structure, 'shift' | 'error' | 'limit'>): string {
+  return `${Math.abs(shift / error).toFixed(1)} standard errors from the fit; the limit is ${limit.toFixed(1)}`;
 }
 
 /** What a structure is, without its end.
@@ -178,14 +182,14 @@ export function verdictWords(verdict: RowVerdict, observations: StandardObservat
  * @source definition */
 export function structureWords(structure: Structure, observations: StandardObservations): string {
   const { starNames, frameNumbers } = observations;
-  const { kind, shift, error, limit, rows } = structure;
+  const { kind, shift, rows } = structure;
   const numbers = structure.frames.map((frame) => frameNumbers[frame]!);
   const what =
     kind === 'star'
       ? `Star ${starNames[structure.star]!}`
       : kind === 'frame'
         ? `Frame ${numbers[0]!}`
-        : `Frames ${listed([String(numbers[0]!), String(numbers.at(-1)!)]).replace(' and ', ' to ')}, one after the other,`;
+        : `Frames ${numbers[0]!} to ${numbers.at(-1)!}, one after the other,`;
   const verb = kind === 'run' ? 'are' : 'is';
-  return `${what} ${verb} as a whole ${fainterOrBrighter(shift)} than all others predict, in ${rows.length} observations that agree with each other: ${Math.abs(shift / error).toFixed(1)} standard errors, where ${limit.toFixed(1)} are allowed`;
+  return `${what} ${verb} as a whole ${fainterOrBrighter(shift)} than all others predict, in ${rows.length} observations that agree with each other, ${distanceWords(structure)}`;
 }

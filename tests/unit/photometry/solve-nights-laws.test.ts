@@ -83,6 +83,12 @@ describe('a solution', () => {
     );
   });
 
+  it('says how far from the fit a rejected observation lies, and how far it might', () => {
+    expect(solution.observations.reasonWords[solution.observations.used.indexOf(0)]).toMatch(
+      /^It is \d\.\d{3} mag (fainter|brighter) than the other observations predict, \d+\.\d standard errors from the fit; the limit is \d\.\d\.$/,
+    );
+  });
+
   it('uses what a person keeps in and leaves out what a person keeps out, and says both', () => {
     const rejected = solution.observations.used.indexOf(0);
     const used = solution.observations.used.indexOf(1);

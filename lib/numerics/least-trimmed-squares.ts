@@ -10,6 +10,7 @@
  */
 import { applyQTransposed, factorQr, inseparableColumns, solveR } from './householder-qr';
 import { type Random } from './random';
+import { madPerSigma, median } from './robust';
 
 export interface TrimmedInput {
   /** Column-major, rows divided by their errors, shape (n, p). */
@@ -30,8 +31,6 @@ export interface TrimmedFit {
   readonly coefficients: Float64Array;
   /** 1.4826 (1 + 5 / (n − p)) √median r², n without priors, in units of the rows' errors [1]. */
   readonly scale: number;
-  /** 1 for the rows that the last step kept, priors among them: shape (n). */
-  readonly kept: Uint8Array;
 }
 
 export interface UndeterminedTrimmed {
@@ -49,7 +48,6 @@ const maxSteps = 100;
 interface Candidate {
   readonly coefficients: Float64Array;
   readonly objective: number;
-  readonly rows: Int32Array;
 }
 
 /** The rows that may be trimmed, and those that may not. */
@@ -106,7 +104,7 @@ function concentrate(input: TrimmedInput, pool: Pool, coefficients: Float64Array
   if (fit.qr.rank < input.columns) return null;
   let objective = 0;
   for (const i of rows) objective += squaredResidual(input, fit.coefficients, i);
-  return { coefficients: fit.coefficients, objective, rows };
+  return { coefficients: fit.coefficients, objective };
 }
 
 /** Brings `count` random rows to the front. */
@@ -165,7 +163,7 @@ function follow(input: TrimmedInput, pool: Pool, from: Float64Array, steps: numb
  * @param input - rows divided by their errors, number of subsets and the generator they are drawn from
  * @returns coefficients that outliers in up to nearly half of the rows do not move far, or the columns that cannot be
  * told apart
- * @throws {RangeError} when shapes do not agree or a number is not finite
+ * @throws {RangeError} when shapes do not agree, a number is not finite or every row is a prior
  * @accuracy the least sum found, not proven least; the same for the same generator. Efficiency is low: it is a start
  * @source Rousseeuw and Van Driessen 2006, Data Mining and Knowledge Discovery 12, 29; scale: Rousseeuw and Leroy 1987,
  * Robust Regression and Outlier Detection, section 5.1 */
@@ -201,11 +199,7 @@ export function fitTrimmed(input: TrimmedInput): TrimmedFit | UndeterminedTrimme
     return { kind: 'undetermined', dependent: [Array.from({ length: columns }, (_, j) => j)] };
   }
   const { coefficients } = best;
-  const squares = Float64Array.from(free, (i) => squaredResidual(input, coefficients, i)).sort();
-  const middle = squares.length >> 1;
-  const square = squares.length % 2 === 1 ? squares[middle]! : (squares[middle - 1]! + squares[middle]!) / 2;
-  const kept = new Uint8Array(n);
-  for (const i of best.rows) kept[i] = 1;
+  const square = median(Float64Array.from(free, (i) => squaredResidual(input, coefficients, i)));
   const small = 1 + 5 / Math.max(1, free.length - columns);
-  return { kind: 'determined', coefficients, scale: small * (Math.sqrt(square) / 0.6744897501960817), kept };
+  return { kind: 'determined', coefficients, scale: small * (Math.sqrt(square) / madPerSigma) };
 }

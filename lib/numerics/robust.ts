@@ -14,7 +14,7 @@
 import { applyQTransposed, factorQr, inseparableColumns, solveR } from './householder-qr';
 
 /** Median absolute deviation of a normal distribution, in standard deviations. [1] */
-const madPerSigma = 0.6744897501960817;
+export const madPerSigma = 0.6744897501960817;
 
 /** From the residuals at each step, or believed as given (1 where the errors are believed). */
 export type RobustScale = { readonly kind: 'mad' } | { readonly kind: 'held'; readonly value: number };

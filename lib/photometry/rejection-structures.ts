@@ -20,6 +20,7 @@
  * Sources: Cook and Weisberg 1982, Residuals and Influence in Regression, section 2.2 (mean-shift model and Bonferroni's
  * limit); search over windows: common practice, no source.
  */
+import { median } from '@/lib/numerics/robust';
 import { studentTLimit, studentTTail } from '@/lib/numerics/student-t';
 import { columnValue } from './band-problem';
 import { frameShifts, shiftOfGroup, shiftWithin, type NightView, type Shift } from './night-view';
@@ -213,15 +214,13 @@ function frameStates({ problem, components, coefficients }: NightView, usable: I
     return rest;
   };
   const states = [...byFrame].map(([frame, rows]): FrameState => {
-    const rests = rows.map(residualOf).sort((a, b) => a - b);
     const precision = rows.reduce(
       (sum, row) =>
         sum +
         1 / (problem.sigma[row]! ** 2 + components.observation + problem.starSigma[problem.star[row]!]! ** 2),
       0,
     );
-    const middle = (rests[(rests.length - 1) >> 1]! + rests[rests.length >> 1]!) / 2;
-    return { frame, rows, shift: middle, variance: 1 / precision + components.block };
+    return { frame, rows, shift: median(rows.map(residualOf)), variance: 1 / precision + components.block };
   });
   return states.sort((a, b) => problem.hours[a.rows[0]!]! - problem.hours[b.rows[0]!]!);
 }

@@ -15,6 +15,7 @@
  * Frames must be few enough for a matrix of them; stars may be many.
  */
 import { factorCholesky, invertCholesky } from '@/lib/numerics/cholesky';
+import { median, scaleByMad } from '@/lib/numerics/robust';
 
 export interface Ensemble {
   readonly nFrames: number;
@@ -48,8 +49,6 @@ export interface EnsembleSolution {
 /** A change of offsets below which the iteration ends [mag], and the steps after which it is given up. Our own rule. */
 const tolerance = 1e-7;
 const maxSteps = 100;
-/** Median absolute deviation to standard deviation of a normal distribution, 1 / 0.6745 [1] */
-const sigmaPerMad = 1.482602218505602;
 
 interface State {
   readonly offset: Float64Array;
@@ -107,20 +106,12 @@ function startingState({ nFrames, nStars, frame, star, y }: Ensemble): State {
 function mediansBy(group: Int32Array, nGroups: number, values: Float64Array): Float64Array {
   const lists = Array.from({ length: nGroups }, (): number[] => []);
   for (let o = 0; o < values.length; o += 1) lists[group[o]!]!.push(values[o]!);
-  return Float64Array.from(lists, median);
-}
-
-/** NaN of no values. */
-function median(values: readonly number[]): number {
-  if (values.length === 0) return Number.NaN;
-  const sorted = Float64Array.from(values).sort();
-  const middle = sorted.length >> 1;
-  return sorted.length % 2 === 1 ? sorted[middle]! : (sorted[middle - 1]! + sorted[middle]!) / 2;
+  return Float64Array.from(lists, (list) => (list.length === 0 ? Number.NaN : median(list)));
 }
 
 /** Robust standard deviation about zero, not below 1: errors as stated are believed unless residuals are wider. */
-const robustScale = (standardised: readonly number[]): number =>
-  Math.max(1, sigmaPerMad * (standardised.length === 0 ? 0 : median(standardised.map(Math.abs))));
+const robustScale = (standardised: Float64Array): number =>
+  standardised.length === 0 ? 1 : Math.max(1, scaleByMad(standardised, 0));
 
 const bisquareWeight = (u: number): number => (Math.abs(u) < 1 ? (1 - u * u) ** 2 : 0);
 
@@ -131,13 +122,13 @@ function reweigh(ensemble: Ensemble, { bisquare }: EnsembleOptions, state: State
   const standardised = y.map(
     (value, o) => (value - offset[frame[o]!]! - shift[star[o]!]!) / Math.sqrt(variance[o]!),
   );
-  state.scale = robustScale(Array.from(standardised).filter(Number.isFinite));
+  state.scale = robustScale(standardised.filter(Number.isFinite));
   for (let o = 0; o < y.length; o += 1) {
     const u = standardised[o]! / (bisquare * state.scale);
     weight[o] = Number.isFinite(u) ? bisquareWeight(u) : 0;
   }
   const shifts = shift.map((d, s) => d / tau[s]!);
-  const starScale = robustScale(Array.from(shifts).filter(Number.isFinite));
+  const starScale = robustScale(shifts.filter(Number.isFinite));
   for (let s = 0; s < shift.length; s += 1) {
     const u = shifts[s]! / (bisquare * starScale);
     starWeight[s] = Number.isFinite(u) ? bisquareWeight(u) : 0;

@@ -11,6 +11,8 @@ export function TextArea({ mono = false, className, rows = 4, ...rest }: TextAre
     <textarea
       {...rest}
       rows={rows}
+      // Where the field grows with its content, its rows are not looked at.
+      style={{ minHeight: `calc(${rows} * 1lh + 0.75rem)` }}
       className={classNames(controlClass, 'field-sizing-content resize-none', mono && 'font-mono', className)}
     />
   );

@@ -48,6 +48,15 @@ describe('the plot of residuals', () => {
     expect(plot.nBeyond).toBe(1);
   });
 
+  it('is set by most of the residuals, not by one faint star that is used', () => {
+    const rows = Array.from({ length: 99 }, (_, i) => observation({ residual: ((i % 11) - 5) / 500 }));
+    const faint = observation({ residual: -0.39 });
+    const plot = residualPlot([...rows, faint], 'airmass', residualAxis([...rows, faint]));
+    expect(plot.y.max).toBeLessThanOrEqual(0.03);
+    expect(plot.points.at(-1)).toMatchObject({ y: plot.y.min, isBeyond: true, isUsed: true });
+    expect(plot.nBeyond).toBe(1);
+  });
+
   it('leaves out what has no residual or no colour', () => {
     const rows = [observation({ residual: null }), observation({ colour: null }), observation()];
     expect(residualPlot(rows, 'colour', residualAxis(rows)).points).toHaveLength(1);

@@ -61,8 +61,8 @@ export function ResidualCharts({ observations, colourIndex, selection, onSelect 
       </div>
       {nBeyond === 0 ? null : (
         <p className="mt-1 text-small text-ink-2">
-          {formatCount(nBeyond)} of the rejected {nBeyond === 1 ? 'lies' : 'lie'} beyond the scale and{' '}
-          {nBeyond === 1 ? 'stands' : 'stand'} at its end.
+          {formatCount(nBeyond)} {nBeyond === 1 ? 'residual lies' : 'residuals lie'} beyond the scale and{' '}
+          {nBeyond === 1 ? 'is' : 'are'} drawn at its end, with an arrow.
         </p>
       )}
       {shown.length === observations.length ? null : (

@@ -11,7 +11,7 @@ import {
   type ScatterShapeProps,
 } from 'recharts';
 import { bandColour } from '@/app/_components/ui/band-mark';
-import { bandShape, crossShape } from '@/app/_components/ui/band-shape';
+import { bandShape, crossShape, type Spot } from '@/app/_components/ui/band-shape';
 import { classNames } from '@/app/_components/ui/class-names';
 import { formatSigned } from '@/app/_components/ui/format-figure';
 import { chart } from './chart-geometry';
@@ -22,12 +22,13 @@ const tick = { fill: 'var(--ink-2)', fontSize: 11 };
 
 /** One observation: its band's shape, hollow and crossed where it is not used. */
 function mark({ cx, cy, payload }: ScatterShapeProps) {
-  const { band, isUsed } = payload as ResidualPoint;
+  const { band, isUsed, isBeyond, y } = payload as ResidualPoint;
   const spot = { x: cx ?? 0, y: cy ?? 0, r: size };
+  const arrow = isBeyond ? arrowShape(spot, y > 0 ? -1 : 1) : '';
   if (isUsed) {
     return (
       <path
-        d={bandShape(band, spot)}
+        d={`${bandShape(band, spot)}${arrow}`}
         fillOpacity="0.55"
         className={classNames(bandColour[band], 'dark-site:fill-transparent')}
       />
@@ -35,13 +36,17 @@ function mark({ cx, cy, payload }: ScatterShapeProps) {
   }
   return (
     <path
-      d={`${bandShape(band, spot)}${crossShape({ ...spot, r: size + 1.6 })}`}
+      d={`${bandShape(band, spot)}${crossShape({ ...spot, r: size + 1.6 })}${arrow}`}
       strokeWidth="1.2"
       data-rejected
       className={classNames(bandColour[band], 'fill-transparent')}
     />
   );
 }
+
+/** The way on to where the residual lies. */
+const arrowShape = ({ x, y, r }: Spot, way: 1 | -1): string =>
+  `M${x - r} ${y + way * (r + 1)}l${r} ${way * 3.5}l${r} ${-way * 3.5}`;
 
 interface ResidualMarksProps {
   readonly plot: ResidualPlot;

@@ -54,14 +54,16 @@ export function thinned(
   return observations.filter((one) => kept.has(one));
 }
 
-/** Half the height of the axis holds all that was used; what was rejected may lie beyond. [mag] */
+/** Share of the residuals of what was used that set the scale, and how far beyond them it goes: to 4 σ of normal ones. */
+const [setScale, room] = [0.95, 2];
+
+/** An axis on which most residuals can be told apart: single faint stars, and what was rejected, may lie beyond. [mag] */
 export function residualAxis(observations: readonly SolutionObservation[]): Axis {
-  const sizes = observations.flatMap(({ residual, used }) =>
-    residual === null ? [] : [{ size: Math.abs(residual), used }],
-  );
-  const ofUsed = Math.max(0.01, ...sizes.filter(({ used }) => used).map(({ size }) => size));
-  const ofAll = Math.max(ofUsed, ...sizes.map(({ size }) => size));
-  const half = Math.min(ofAll, ofUsed * 2) * 1.05;
+  const sizesOf = (some: readonly SolutionObservation[]): number[] =>
+    some.flatMap(({ residual }) => (residual === null ? [] : [Math.abs(residual)])).sort((a, b) => a - b);
+  const ofUsed = sizesOf(observations.filter(({ used }) => used));
+  const most = ofUsed[Math.ceil(setScale * ofUsed.length) - 1] ?? 0;
+  const half = 1.05 * Math.max(0.01, Math.min(sizesOf(observations).at(-1) ?? 0, room * most));
   return axisAbout(-half, half, 7);
 }
 

@@ -129,16 +129,20 @@ function scatter(bands: readonly BandSolution[], limits: VerdictLimits): Evidenc
 }
 
 function rejected(bands: readonly BandSolution[]): EvidenceItem[] {
-  return bands.flatMap(({ band, nRejected, nUsed }) => {
-    const share = nRejected / Math.max(1, nRejected + nUsed);
-    const speaks = share > mostRejected ? 'against' : share > someRejected ? 'care' : 'for';
+  const whole = bands.filter(({ nRejected }) => nRejected === 0);
+  const parts = whole.map(
+    ({ band, nUsed }, k) => `${k === 0 ? counted(nUsed, 'observation') : nUsed} in ${band}`,
+  );
+  const all = whole.length === 0 ? [] : [item('for', 'rejected', null, `all ${listed(parts)} are used.`)];
+  const some = bands.flatMap(({ band, nRejected, nUsed }) => {
+    if (nRejected === 0) return [];
     const n = nRejected + nUsed;
-    const words =
-      nRejected === 0
-        ? `all ${counted(n, 'observation')} in ${band} are used.`
-        : `${nRejected} of ${counted(n, 'observation')} in ${band} ${nRejected === 1 ? 'is' : 'are'} not used (${(100 * share).toFixed(share < 0.01 ? 1 : 0)} %).`;
+    const share = nRejected / n;
+    const speaks = share > mostRejected ? 'against' : share > someRejected ? 'care' : 'for';
+    const words = `${nRejected} of ${counted(n, 'observation')} in ${band} ${nRejected === 1 ? 'is' : 'are'} not used (${(100 * share).toFixed(share < 0.01 ? 1 : 0)} %).`;
     return [item(speaks, 'rejected', band, words)];
   });
+  return [...all, ...some];
 }
 
 function structures({ findings }: NightSolution, night: number): EvidenceItem[] {
@@ -149,19 +153,25 @@ function structures({ findings }: NightSolution, night: number): EvidenceItem[] 
   );
 }
 
-function drift(bands: readonly BandSolution[], limits: VerdictLimits): EvidenceItem[] {
-  return bands.flatMap(({ band, driftTest, hours }) => {
-    if (driftTest === null || driftTest.error === 0) return [];
-    const { value, error } = driftTest;
-    const sigmas = Math.abs(value) / error;
-    const figures = `${figure(value, 4)} ± ${figure(error, 4)} mag per hour`;
+function drift(bands: readonly BandSolution[], { driftSigma }: VerdictLimits): EvidenceItem[] {
+  const tested = bands.flatMap(({ band, driftTest, hours }) =>
+    driftTest === null || driftTest.error === 0
+      ? []
+      : [{ band, ...driftTest, hours, sigmas: Math.abs(driftTest.value) / driftTest.error }],
+  );
+  const figures = ({ value, error }: { readonly value: number; readonly error: number }): string =>
+    `${figure(value, 4)} ± ${figure(error, 4)}`;
+  const quiet = tested.filter(({ sigmas }) => sigmas < driftSigma);
+  const parts = quiet.map((one, k) => `${figures(one)}${k === 0 ? ' mag per hour' : ''} in ${one.band}`);
+  const none =
+    quiet.length === 0 ? [] : [item('for', 'drift', null, `no significant drift: ${listed(parts)}.`)];
+  const some = tested.flatMap(({ band, hours, sigmas, ...one }) => {
+    if (sigmas < driftSigma) return [];
     const length = hours === null ? 0 : hours.max - hours.min;
-    if (sigmas < limits.driftSigma) {
-      return [item('for', 'drift', band, `no significant drift in ${band}: ${figures}.`)];
-    }
-    const words = `the zero point in ${band} drifts by ${figures}, ${figure(sigmas, 1)} standard errors: ${Math.abs(value * length).toFixed(3)} mag over the ${figure(length, 1)} hours of the standards.`;
+    const words = `the zero point in ${band} drifts by ${figures(one)} mag per hour, ${figure(sigmas, 1)} standard errors: ${Math.abs(one.value * length).toFixed(3)} mag over the ${figure(length, 1)} hours of the standards.`;
     return [item('care', 'drift', band, words)];
   });
+  return [...none, ...some];
 }
 
 function runs(bands: readonly BandSolution[]): EvidenceItem[] {

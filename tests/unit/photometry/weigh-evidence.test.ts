@@ -35,6 +35,18 @@ describe('weighEvidence', () => {
     for (const { words } of items) expect(words).toMatch(/^[A-Z].*\.$/u);
   });
 
+  it('says of all quiet bands in one sentence that they do not drift and that nothing is left out', () => {
+    const { items } = weighed({});
+    const said = (kind: string): readonly string[] =>
+      items.filter((one) => one.kind === kind).map(({ words }) => words);
+    expect(said('drift')).toEqual([
+      expect.stringMatching(
+        /^No significant drift: −?0\.\d{4} ± 0\.\d{4} mag per hour in B and −?0\.\d{4} ± 0\.\d{4} in V\.$/u,
+      ),
+    ]);
+    expect(said('rejected')).toEqual(['All 192 observations in B and 192 in V are used.']);
+  });
+
   it.each([
     ['usable with care', 'scatter', 0.035],
     ['not photometric', 'scatter', 0.08],

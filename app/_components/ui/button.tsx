@@ -3,10 +3,11 @@ import { classNames } from './class-names';
 
 export type ButtonLook = 'plain' | 'primary' | 'bad' | 'quiet';
 
+/** What cannot be pressed has no fill, a hairline where the others have an outline, and words in the second ink. */
 const looks: Readonly<Record<ButtonLook, string>> = {
-  plain: 'border-edge bg-sheet text-ink hover:bg-sunk',
-  primary: 'border-accent bg-accent text-accent-ink hover:underline',
-  bad: 'border-bad bg-sheet text-bad hover:bg-bad-wash',
+  plain: 'border-edge bg-sheet text-ink hover:bg-sunk disabled:border-rule',
+  primary: 'border-accent bg-accent text-accent-ink hover:underline disabled:border-rule',
+  bad: 'border-bad bg-sheet text-bad hover:bg-bad-wash disabled:border-rule',
   quiet: 'border-transparent bg-transparent text-ink underline hover:bg-sunk',
 };
 
@@ -14,7 +15,7 @@ const looks: Readonly<Record<ButtonLook, string>> = {
 export function buttonClass(look: ButtonLook = 'plain', extra?: string): string {
   return classNames(
     'inline-flex min-h-8 items-center justify-center gap-1.5 rounded-control border px-3 py-1 text-body font-medium',
-    'no-underline underline-offset-2 select-none disabled:border-dashed disabled:border-edge disabled:bg-transparent disabled:text-ink-2 disabled:no-underline',
+    'no-underline underline-offset-2 select-none disabled:bg-transparent disabled:text-ink-2 disabled:no-underline',
     looks[look],
     extra,
   );

@@ -11,7 +11,9 @@ interface CheckboxProps extends Omit<ComponentProps<'input'>, 'type'> {
 /** A tick box, or a radio button, drawn by us: the native ones light all channels. */
 export function Checkbox({ label, hint, radio = false, className, ...rest }: CheckboxProps) {
   return (
-    <label className={classNames('flex min-h-6 items-start gap-2 text-body', className)}>
+    <label
+      className={classNames('flex min-h-6 items-start gap-2 text-body has-disabled:text-ink-2', className)}
+    >
       <span className="relative block size-6 shrink-0">
         <input
           {...rest}
@@ -24,7 +26,7 @@ export function Checkbox({ label, hint, radio = false, className, ...rest }: Che
         <svg
           viewBox="0 0 24 24"
           aria-hidden="true"
-          className="pointer-events-none absolute inset-0 size-6 fill-sheet stroke-edge peer-checked:fill-accent peer-checked:stroke-accent peer-disabled:[stroke-dasharray:2] [&>:last-child]:hidden peer-checked:[&>:last-child]:inline"
+          className="pointer-events-none absolute inset-0 size-6 fill-sheet stroke-edge peer-checked:fill-accent peer-checked:stroke-accent peer-disabled:stroke-rule [&>:last-child]:hidden peer-checked:[&>:last-child]:inline"
         >
           {radio ? (
             <circle cx="12" cy="12" r="8.5" />

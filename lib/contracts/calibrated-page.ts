@@ -82,6 +82,12 @@ export interface CalibratedPageQuery {
   readonly at?: number;
 }
 
+/** What a list is sorted by, and which way: by V, the brightest first, unless its address says otherwise. */
+export const calibratedOrder = ({
+  sort = 'V',
+  descending = false,
+}: CalibratedPageQuery): Required<Pick<CalibratedPageQuery, 'sort' | 'descending'>> => ({ sort, descending });
+
 /** Reads the address of the page; what cannot be read is left out. */
 export function calibratedPageQuery(
   values: Readonly<Record<string, string | readonly string[] | undefined>>,

@@ -1,6 +1,7 @@
 import 'server-only';
 import {
   bitOfNight,
+  calibratedOrder,
   type CalibratedPageQuery,
   type CalibratedSort,
   type DiagramStar,
@@ -68,10 +69,16 @@ const sortKeys: Readonly<Record<CalibratedSort, string>> = {
 };
 
 /** What has no value stands last, whichever way the list runs; equals keep the order of the table. */
-function orderOf({ sort, descending }: CalibratedPageQuery): string {
-  const direction = descending === true ? 'DESC' : 'ASC';
-  if (sort === undefined) return `c.star_no ${direction}`;
-  return `${sortKeys[sort]} IS NULL, ${sortKeys[sort]} ${direction}, c.star_no`;
+function orderOf(query: CalibratedPageQuery): string {
+  const { sort, descending } = calibratedOrder(query);
+  const key = sortKeys[sort];
+  return `${noValueOf(sort, query)}, ${key} ${descending ? 'DESC' : 'ASC'}, c.star_no`;
+}
+
+/** By V there is an index, except where it would lead row by row through a whole result to the few that are sought. */
+function noValueOf(sort: CalibratedSort, { star, bv_from, bv_to }: CalibratedPageQuery): string {
+  const isSearch = star !== undefined || bv_from !== undefined || bv_to !== undefined;
+  return sort === 'V' && !isSearch ? 'c.no_v' : `${sortKeys[sort]} IS NULL`;
 }
 
 const isClean = `(c.flags | ${bitOfNight}) = ${bitOfNight}`;
@@ -154,15 +161,22 @@ interface Part {
   readonly limit: number;
 }
 
-/** Part of the list of a result's stars. */
+/**
+ * Part of the list of a result's stars. Numbers alone are sorted, and whole rows read of the part only: in that order,
+ * whatever the optimiser thinks of it.
+ */
 export function listStars(
   transformation: number,
   query: CalibratedPageQuery,
   part: Part,
 ): Promise<readonly StarRow[]> {
   const { where, values } = narrowed(transformation, query);
+  const order = orderOf(query);
   return select<StarRow>(
-    `SELECT ${columns} FROM ${table} WHERE ${where} ORDER BY ${orderOf(query)} LIMIT :limit OFFSET :offset`,
+    `SELECT STRAIGHT_JOIN ${columns}
+       FROM (SELECT c.star_no FROM ${table} WHERE ${where} ORDER BY ${order} LIMIT :limit OFFSET :offset) q
+       JOIN ${table} ON c.transformation_id = :transformation AND c.star_no = q.star_no
+      ORDER BY ${order}`,
     { ...values, ...part },
   );
 }
@@ -189,7 +203,7 @@ interface Thinning {
   readonly at: number | undefined;
 }
 
-/** Stars of the list that have V and B−V, evenly thinned. */
+/** Stars of the list that have V and B−V, evenly thinned; as in `listStars`, numbers come first. */
 export async function diagramStars(
   transformation: number,
   query: CalibratedPageQuery,
@@ -197,10 +211,11 @@ export async function diagramStars(
 ): Promise<readonly DiagramStar[]> {
   const { where, values } = narrowed(transformation, query);
   const rows = await select<Omit<DiagramStar, 'hasCautions'> & { flags: number }>(
-    `SELECT q.star_no AS no, q.star, q.v AS V, q.bv AS BV, q.flags
-       FROM (SELECT c.star_no, c.star, c.v, c.bv, c.flags, ROW_NUMBER() OVER (ORDER BY c.star_no) AS place
+    `SELECT STRAIGHT_JOIN c.star_no AS no, c.star, c.v AS V, c.bv AS BV, c.flags
+       FROM (SELECT c.star_no, ROW_NUMBER() OVER (ORDER BY c.star_no) AS place
                FROM ${table} WHERE ${where} AND c.v IS NOT NULL AND c.bv IS NOT NULL) q
-      WHERE q.place MOD :step = 0 OR q.star_no = :at ORDER BY q.star_no`,
+       JOIN ${table} ON c.transformation_id = :transformation AND c.star_no = q.star_no
+      WHERE q.place MOD :step = 0 OR q.star_no = :at ORDER BY c.star_no`,
     { ...values, step, at: at ?? null },
   );
   return rows.map(({ flags, ...star }) => ({ ...star, hasCautions: (flags & ~bitOfNight) !== 0 }));

@@ -156,8 +156,15 @@ describe('who sees which calibrated magnitudes', () => {
 });
 
 describe('the list of stars', () => {
-  it('stands in the order of the table, unless it is sorted', async () => {
-    expect(await names({})).toEqual(['T 10', 'T 2', 'T 1', 'T 30%']);
+  it('opens by V, the brightest first and what has no V last, unless it is sorted', async () => {
+    expect(await names({})).toEqual(['T 2', 'T 1', 'T 10', 'T 30%']);
+    expect(await names({ descending: true })).toEqual(['T 10', 'T 1', 'T 2', 'T 30%']);
+    expect(await names({ sort: 'star' })).not.toEqual(await names({}));
+  });
+
+  it('stands in the same order when stars are sought by name or colour', async () => {
+    expect(await names({ star: 'T' })).toEqual(await names({}));
+    expect(await names({ bv_from: 0.1 })).toEqual(['T 2', 'T 10']);
   });
 
   it('sorts names as people count, and what has no value last either way', async () => {
@@ -168,7 +175,7 @@ describe('the list of stars', () => {
   });
 
   it('is narrowed by ranges with their ends, by name and by cautions', async () => {
-    expect(await names({ v_from: 13, v_to: 14 })).toEqual(['T 10', 'T 1']);
+    expect(await names({ v_from: 13, v_to: 14 })).toEqual(['T 1', 'T 10']);
     expect(await names({ bv_from: 0.5 })).toEqual(['T 10']);
     expect(await names({ bv_to: 0.4 })).toEqual(['T 2']);
     expect(await names({ clean: true })).toEqual(['T 2']);
@@ -195,7 +202,8 @@ describe('the list of stars', () => {
   });
 
   it('has the total error of each magnitude beside its parts, and its cautions by name', async () => {
-    const [first, , third] = (await result('thistlePi')).stars;
+    const { stars } = await result('thistlePi');
+    const [first, third] = [1, 3].map((no) => stars.find((star) => star.no === no));
     expectWithin(first?.V_total ?? NaN, Math.hypot(0.02, 0.004), { absolute: 1e-12, unit: 'mag' });
     expect(first).toMatchObject({ V_random: 0.02, V_systematic: 0.004, flags: ['colour_range'], n_V: 3 });
     expect(third).toMatchObject({ BV: null, flags: ['single_band', 'assumed_colour'] });
@@ -249,9 +257,11 @@ describe('pages and diagram', () => {
   });
 
   it('opens at the page on which a star stands', async () => {
-    const shown = await result('marrowCo', { at: 320, sort: 'V' });
-    expect(shown.page).toBe(3);
-    expect(shown.stars.some(({ no }) => no === 320)).toBe(true);
+    for (const order of [{}, { sort: 'V' }] as const) {
+      const shown = await result('marrowCo', { at: 320, ...order });
+      expect(shown.page).toBe(3);
+      expect(shown.stars.some(({ no }) => no === 320)).toBe(true);
+    }
   });
 
   it('draws the stars of the list that have both V and B−V', async () => {

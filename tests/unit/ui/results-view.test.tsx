@@ -169,6 +169,21 @@ describe('the results of a night', () => {
     expect(screen.getByText(/An even choice of 3 of 9,000 stars/)).toBeTruthy();
   });
 
+  it('say that they open by V, and turn the order round at the first press on it', () => {
+    show(<ResultsView page={page} result={result} query={{}} />);
+    const head = screen.getByRole('columnheader', { name: /^V/ });
+    expect(head.getAttribute('aria-sort')).toBe('ascending');
+    expect(head.textContent).toContain('▲');
+    expect(screen.getByText('250 of 1,184 stars, by V')).toBeTruthy();
+    expect(within(head).getByRole('link').getAttribute('href')).toContain('sort=V&descending=1');
+  });
+
+  it('have their cautions beside the magnitudes, before what one looks up', () => {
+    show(<ResultsView page={page} result={result} query={{}} />);
+    const heads = screen.getAllByRole('columnheader').map(({ textContent }) => textContent);
+    expect(heads.slice(2, 5)).toEqual(['B−Vmag', 'Cautions', 'Measurementsused']);
+  });
+
   it('sort by a press on a head, and the other way round by the next', () => {
     show(<ResultsView page={page} result={result} query={{ sort: 'V', v_to: 15, page: 2 }} />);
     const head = screen.getByRole('columnheader', { name: /^V mag|^V ▲|^V/ });

@@ -7,7 +7,12 @@ import { EmptyState } from '@/app/_components/ui/empty-state';
 import { formatCount } from '@/app/_components/ui/format-figure';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { Panel } from '@/app/_components/ui/panel';
-import type { CalibratedPage, CalibratedPageQuery, CalibratedResult } from '@/lib/contracts/calibrated-page';
+import {
+  calibratedOrder,
+  type CalibratedPage,
+  type CalibratedPageQuery,
+  type CalibratedResult,
+} from '@/lib/contracts/calibrated-page';
 import { ColourMagnitude } from './colour-magnitude';
 import { ResultOrigin } from './result-origin';
 import { resultsAddress } from './results-address';
@@ -40,10 +45,8 @@ export function ResultsView({ page, result, query }: ResultsViewProps) {
   useEffect(() => {
     if (query.at !== undefined) showRow(query.at);
   }, [query.at]);
-  const order =
-    query.sort === undefined
-      ? 'in the order of the table'
-      : `by ${sortWords[query.sort]}${query.descending === true ? ', descending' : ''}`;
+  const { sort, descending } = calibratedOrder(query);
+  const order = `by ${sortWords[sort]}${descending ? ', descending' : ''}`;
   return (
     <div className="grid grid-cols-1 items-start gap-5 xl:grid-cols-[minmax(0,1fr)_minmax(380px,30%)]">
       <Panel

@@ -50,20 +50,20 @@ export const meanings = (
   quantities: readonly QuantityColumn[],
 ): readonly { readonly term: string; readonly meaning: string }[] => [
   { term: 'Star', meaning: 'Its name in the uploaded table' },
-  { term: 'Right ascension, declination', meaning: 'J2000, from the uploaded table' },
   ...quantities.map(({ label, meaning }) => ({ term: `${label}, mag`, meaning: `${meaning}.` })),
   {
     term: '±',
     meaning:
       'Standard error, total: the root of the sum of squares of its random and its systematic part. The random part falls as measurements are averaged; the systematic part comes from the coefficients and is common to the night.',
   },
-  { term: 'Measurements', meaning: 'How many were used in each band' },
-  { term: 'Airmass', meaning: 'Mean of the measurements used' },
-  { term: 'BJD', meaning: 'Mean mid-exposure as barycentric Julian date, TDB, days' },
   {
     term: 'Cautions',
     meaning: 'What to think of before the figure is used; every download carries them too.',
   },
+  { term: 'Measurements', meaning: 'How many were used in each band' },
+  { term: 'Airmass', meaning: 'Mean of the measurements used' },
+  { term: 'Right ascension, declination', meaning: 'J2000, from the uploaded table' },
+  { term: 'BJD', meaning: 'Mean mid-exposure as barycentric Julian date, TDB, days' },
 ];
 
 /** What the columns are sorted by; a further press turns the order round. */

@@ -6,6 +6,7 @@ import { decimalsSupported, formatFixed, noValue } from '@/app/_components/ui/fo
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { calibratedFlags, type CalibratedFlag } from '@/lib/photometry/calibrated-flags';
 import {
+  calibratedOrder,
   cautionOfNight,
   type CalibratedPageQuery,
   type CalibratedSort,
@@ -55,14 +56,14 @@ export function StarTable({ stars, quantities, selected, onSelect, showsParts, .
                 <Budget {...budgetOf(star, name)} showsParts={showsParts} />
               </Cell>
             ))}
-            <Cell numeric>{countWords(star)}</Cell>
-            <Cell numeric>{formatFixed(star.airmass, 3)}</Cell>
             <Cell wrap className="min-w-56">
               {star.flags
                 .filter((name) => name !== cautionOfNight)
                 .map(flagWords)
                 .join('; ')}
             </Cell>
+            <Cell numeric>{countWords(star)}</Cell>
+            <Cell numeric>{formatFixed(star.airmass, 3)}</Cell>
             <Cell numeric>{star.ra === null ? noValue : formatRightAscension(star.ra)}</Cell>
             <Cell numeric>{star.dec === null ? noValue : formatDeclination(star.dec)}</Cell>
             <Cell numeric>{formatFixed(star.bjd_tdb, 5)}</Cell>
@@ -111,13 +112,13 @@ function Head({ quantities, ...rest }: HeadProps) {
           {label}
         </SortedHead>
       ))}
+      <HeadCell>Cautions</HeadCell>
       <SortedHead {...rest} by="n_V" unit="used" numeric>
         Measurements
       </SortedHead>
       <SortedHead {...rest} by="airmass" unit="mean" numeric>
         Airmass
       </SortedHead>
-      <HeadCell>Cautions</HeadCell>
       <SortedHead {...rest} by="ra" unit="J2000" numeric>
         Right ascension
       </SortedHead>
@@ -140,8 +141,9 @@ interface SortedHeadProps extends Omit<HeadProps, 'quantities'> {
 
 /** The head of a column is a link that sorts by it; pressed again, the other way round. */
 function SortedHead({ night, query, by, unit, numeric = false, children }: SortedHeadProps) {
-  const isSorted = query.sort === by;
-  const descends = isSorted && query.descending === true;
+  const { sort, descending } = calibratedOrder(query);
+  const isSorted = sort === by;
+  const descends = isSorted && descending;
   const href = resultsAddress(night, query, {
     sort: by,
     descending: isSorted && !descends,

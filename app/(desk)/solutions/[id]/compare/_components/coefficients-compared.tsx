@@ -1,7 +1,6 @@
 import { changeInErrors } from '@/app/_components/solutions/coefficient-change';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { Figure } from '@/app/_components/ui/figure';
-import { formatFixed, formatSigned, noValue } from '@/app/_components/ui/format-figure';
+import { figureParts, formatFixed, formatSigned, noValue } from '@/app/_components/ui/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Solution, SolutionCoefficient } from '@/lib/contracts/api/solution';
 import { bands, type Band } from '@/lib/contracts/bands';
@@ -59,9 +58,9 @@ export function CoefficientsCompared({ one, other }: Pair) {
           ...(['observation', 'frame'] as const).map((part) => (
             <Row key={`${band} ${part}`}>
               <Cell>{band}</Cell>
-              <Cell heading>
+              <Cell heading className="whitespace-normal!">
                 Scatter, {part}
-                <span className="text-ink-2"> mag</span>
+                <span className="block text-small text-ink-2">mag</span>
               </Cell>
               <Cell numeric>{formatFixed(one.bands[band]?.scatter[part], 4)}</Cell>
               <Cell numeric>{formatFixed(other.bands[band]?.scatter[part], 4)}</Cell>
@@ -78,10 +77,14 @@ function ValueCell({ coefficient }: { readonly coefficient: SolutionCoefficient 
   if (coefficient === undefined) return <Cell numeric>{noValue}</Cell>;
   const { value, error, status } = coefficient;
   if (value === null) return <Cell className="text-right text-bad">not determined</Cell>;
+  const parts = figureParts(value, error, value === 0 ? 0 : 4);
   return (
     <Cell numeric>
-      <Figure value={value} error={error} decimals={value === 0 ? 0 : 4} />
-      {status === 'free' ? null : <span className="text-ink-2"> {status}</span>}
+      {parts.value}
+      <span className="block text-ink-2">
+        {parts.error === null ? null : `± ${parts.error} `}
+        {status === 'free' ? null : status}
+      </span>
     </Cell>
   );
 }

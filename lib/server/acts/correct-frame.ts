@@ -15,7 +15,7 @@ import { lockOpenNight } from '@/lib/server/data/night-state';
 import { boundsOf, requireNight, subjectOf, type NightRow } from '@/lib/server/data/nights';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
-import { nightScope } from '@/lib/server/policy/scope';
+import { dataScope, nightScope } from '@/lib/server/policy/scope';
 
 /**
  * Corrects a frame of an open night; the earlier values stay in the audit trail, the geometry is derived anew,
@@ -51,7 +51,7 @@ export async function correctFrame(
     await lockOpenNight(tx, night);
     await present(tx);
     refuse(await clashes(tx, night.id, seen.id, merged));
-    await rescaleFluxMagnitudes(tx, seen, merged.exposure);
+    await rescaleFluxMagnitudes(tx, dataScope(caller), seen, merged.exposure);
     const values = toFrameValues(merged, place, geometry, merged.number);
     // Cannot fail under the night's lock; if it does, nothing may go on.
     if (!(await updateFrame(tx, seen, values))) throw await stale(tx, seen, patch);

@@ -2,7 +2,14 @@ import 'server-only';
 import { recordAudit } from '@/lib/server/data/audit';
 import { inTransaction } from '@/lib/server/data/database';
 import { replaceFaults, unloadMeasurements } from '@/lib/server/data/measurement-loads';
-import { moveSet, observersOfNight, programmesInNight, requireSet } from '@/lib/server/data/measurement-sets';
+import {
+  lockSet,
+  moveSet,
+  observersOfNight,
+  programmesInNight,
+  requireSet,
+} from '@/lib/server/data/measurement-sets';
+import { inUseFault } from '@/lib/server/data/set-holders';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { demand } from '@/lib/server/policy/matrix';
 import { dataScope } from '@/lib/server/policy/scope';
@@ -16,6 +23,13 @@ export async function refuseMeasurements(caller: PersonCaller, id: string, reaso
     ownerId: set.uploadedById,
   });
   await inTransaction(async (tx) => {
+    if ((await lockSet(tx, set.id)) === 'in use')
+      throw await inUseFault(
+        tx,
+        dataScope(caller),
+        set,
+        'the set can be taken back; a new solution can leave single standards out instead',
+      );
     await moveSet(tx, set, { from: ['matched'], to: 'refused', set: { n_matched: 0 } });
     await unloadMeasurements(tx, set.id);
     // Not a fault of the table, but where whoever looks for its rows will look for the reason.

@@ -1,6 +1,8 @@
 import 'server-only';
 import { Fault } from '@/lib/faults/fault';
+import type { Scope } from '@/lib/server/policy/scope';
 import { execute, select, type Tx } from './database';
+import { inUseFault } from './set-holders';
 
 interface FluxSet {
   readonly id: number;
@@ -16,6 +18,7 @@ interface FluxSet {
  */
 export async function rescaleFluxMagnitudes(
   tx: Tx,
+  scope: Scope,
   frame: { readonly id: number; readonly number: number; readonly exposure: number },
   exposure: number,
 ): Promise<void> {
@@ -28,14 +31,14 @@ export async function rescaleFluxMagnitudes(
     tx,
   );
   const fixed = sets.find(({ state, hasMagnitudes }) => state === 'in use' || hasMagnitudes === 1);
+  if (fixed?.state === 'in use') {
+    const before = `the exposure time of frame ${frame.number}, with which its counts were made magnitudes, can be corrected`;
+    throw await inUseFault(tx, scope, fixed, before);
+  }
   if (fixed) {
-    const why =
-      fixed.state === 'in use'
-        ? 'and a solution stands on them'
-        : 'and it has magnitudes beside them, so it is not known which rows depend on it';
     throw new Fault(
       'conflict',
-      `Counts of the set “${fixed.name}” were made magnitudes with the exposure time of frame ${frame.number}, ${why}. The exposure cannot be corrected.`,
+      `Counts of the set “${fixed.name}” were made magnitudes with the exposure time of frame ${frame.number}, and it has magnitudes beside them, so it is not known which rows depend on it. The exposure cannot be corrected.`,
     );
   }
   const shift = 2.5 * Math.log10(exposure / frame.exposure);

@@ -195,7 +195,7 @@ describe('correcting the exposure of a frame that was measured', () => {
   });
 
   it.each([
-    ['a solution stands on magnitudes from counts', { flux: 'flux' }, 'in use', 'a solution stands on them'],
+    ['a solution stands on magnitudes from counts', { flux: 'flux' }, 'in use', 'a solution stands on it'],
     [
       'counts and magnitudes stand beside each other',
       { flux: 'flux', inst_mag: 'm' },

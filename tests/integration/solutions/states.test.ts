@@ -76,7 +76,10 @@ describe('proposing', { timeout: 180_000 }, () => {
       may: { propose: false, approve: true, withdraw: true },
     });
     expect(await setNow(set)).toMatchObject({ state: 'in use' });
-    expect((await faultOf(refuseMeasurements(noor, set, 'too late'))).code).toBe('conflict');
+    const inUse = await faultOf(refuseMeasurements(noor, set, 'too late'));
+    expect(inUse).toMatchObject({ code: 'conflict', issues: [{ path: 'solution', value: id }] });
+    expect(inUse.message).toContain('is in use: solution 1 (proposed) stands on it.');
+    expect(inUse.message).toContain('A photometrist must withdraw it before the set can be taken back');
     const mails = (await mailsOf('solution-proposed')).map(({ recipient }) => recipient);
     expect(mails.slice(before.length)).toEqual([edda.email]);
     const fault = await faultOf(proposeSolution(edda, id, nothing));
@@ -232,6 +235,21 @@ describe('approving', { timeout: 180_000 }, () => {
   });
 });
 
+it('a set that a joint solution of another night uses names it to those who may see that night only', async () => {
+  const otis = await newCaller('Otis Brandvold', { roles: ['observer'] });
+  const ofOtis = await solvableNight(otis, { date: date() });
+  const seen = date();
+  const { night } = await solvableNight(noor, { date: seen });
+  const id = await solvedDraft(bram, night.id, { nights: [ofOtis.night.id] });
+  await proposeSolution(bram, id, { comment: '', verdict: 'photometric' });
+  const named = await faultOf(refuseMeasurements(bram, ofOtis.set, 'a wrong flat'));
+  expect(named.message).toContain(`solution 1 of the night of ${seen} (proposed) stands on it`);
+  expect(named.issues.map(({ value }) => value)).toEqual([id]);
+  const hidden = await faultOf(refuseMeasurements(otis, ofOtis.set, 'a wrong flat'));
+  expect(hidden.message).toContain('a solution of another night stands on it');
+  expect(hidden.issues).toEqual([]);
+}, 180_000);
+
 describe('withdrawing', { timeout: 180_000 }, () => {
   it('an approved solution closes the night, withdraws its magnitudes and frees its sets; nothing comes back', async () => {
     const { id: first, night, set } = await proposed({ targets: ['Thistle 3'] });
@@ -244,6 +262,9 @@ describe('withdrawing', { timeout: 180_000 }, () => {
     expect(await solutionNow(first)).toMatchObject({ state: 'superseded' });
     // The superseded one still holds it: its magnitudes can be read.
     expect(await setNow(set)).toMatchObject({ state: 'in use' });
+    expect((await faultOf(refuseMeasurements(noor, set, 'too soon'))).message).toContain(
+      'solution 1 (superseded) stands on it',
+    );
     await withdrawSolution(edda, first, { comment: 'the same filter' });
     expect(await setNow(set)).toMatchObject({ state: 'matched' });
     await refuseMeasurements(noor, set, 'measured with the wrong filter');

@@ -8,6 +8,7 @@ import type {
   TransformOptions,
 } from '@/lib/photometry/target-measurements';
 import { instrumentalOffset, type BandCoefficients } from '@/lib/photometry/transformation-model';
+import reference from '@/tests/reference/transformation.json';
 
 const noCoefficients: BandCoefficients = {
   zeroPoint: 0,
@@ -42,6 +43,20 @@ export function calibration(
     ...other,
   };
 }
+
+const { z_v, k_v, c_v, z_b, k_b, c_b, k2 } = reference.coefficients;
+/** Coefficients of the closed form. */
+export const inV = { zeroPoint: z_v, extinction: k_v, colourTerm: c_v };
+export const inB = { zeroPoint: z_b, extinction: k_b, colourTerm: c_b, secondOrderExtinction: k2 };
+export const closedForm = [calibration('V', inV), calibration('B', inB)];
+export const five = [
+  ...closedForm,
+  calibration('U', { zeroPoint: 5.1, extinction: 0.46, colourTerm: -0.05, secondOrderExtinction: -0.02 }),
+  calibration('R', { zeroPoint: 2.4, extinction: 0.08, colourTerm: 0.04 }),
+  calibration('I', { zeroPoint: 3.2, extinction: 0.04, colourTerm: -0.02 }),
+];
+/** Tolerance of what rounding alone may change. */
+export const exact = { absolute: 1e-9, unit: 'mag' } as const;
 
 /** Coefficients of a calibration by name. */
 export function coefficientsOf({ names, values }: BandCalibration): BandCoefficients {

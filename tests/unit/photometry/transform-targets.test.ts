@@ -6,6 +6,11 @@ import { expectWithin } from '@/tests/support/numbers';
 import {
   calibration,
   calibratedValue,
+  closedForm,
+  exact,
+  five,
+  inB,
+  inV,
   noiselessTargets,
   targetMeasurements,
   trueInstMag,
@@ -13,17 +18,7 @@ import {
   type FrameOf,
 } from '@/tests/support/targets';
 
-const { z_v, k_v, c_v, z_b, k_b, c_b, k2 } = reference.coefficients;
-const inV = { zeroPoint: z_v, extinction: k_v, colourTerm: c_v };
-const inB = { zeroPoint: z_b, extinction: k_b, colourTerm: c_b, secondOrderExtinction: k2 };
-const closedForm = [calibration('V', inV), calibration('B', inB)];
-const five = [
-  ...closedForm,
-  calibration('U', { zeroPoint: 5.1, extinction: 0.46, colourTerm: -0.05, secondOrderExtinction: -0.02 }),
-  calibration('R', { zeroPoint: 2.4, extinction: 0.08, colourTerm: 0.04 }),
-  calibration('I', { zeroPoint: 3.2, extinction: 0.04, colourTerm: -0.02 }),
-];
-const exact = { absolute: 1e-9, unit: 'mag' } as const;
+const { c_v, c_b, k2 } = reference.coefficients;
 
 describe('transformTargets', () => {
   it.each(reference.rows)(

@@ -1,4 +1,4 @@
-import { afterEach, beforeAll, expect, it } from 'vitest';
+import { beforeAll, expect, it } from 'vitest';
 import { execute } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import {
@@ -10,15 +10,13 @@ import {
   trueStars,
   type FieldFrames,
 } from '@/tests/support/calibrated';
-import { startChild, stopChild, type Child } from '@/tests/support/child';
 import { jobNow, queueJob, untilJob } from '@/tests/support/jobs';
 import { newCaller, newLogWorld, type LogWorld } from '@/tests/support/log-world';
 import { filesIn, mailsOf, removeOriginals } from '@/tests/support/measurements';
-import { root, script } from '@/tests/support/scripts';
 import { takeTargets } from '@/tests/support/take-targets';
+import { startWorker } from '@/tests/support/worker';
 
 removeOriginals();
-const children: Child[] = [];
 const nStars = 30_000;
 const thistle: FieldFrames = { object: 'Thistle 3', ra: 83.5, dec: 22.1, first: 1, n: 4, begin_hours: 3 };
 let world: LogWorld;
@@ -30,15 +28,6 @@ beforeAll(async () => {
   bram = await newCaller('Bram Oyelaran', { roles: ['photometrist'] });
   await newCaller('Piet Sandoval', { programmes: [[world.thistle, 'pi']] });
 });
-afterEach(async () => {
-  await Promise.all(children.splice(0).map((child) => stopChild(child)));
-});
-
-function startWorker(): Child {
-  const child = startChild(process.execPath, script('workers/main.ts'), { cwd: root, env: process.env });
-  children.push(child);
-  return child;
-}
 
 it('a worker that is killed while it transforms leaves nothing of it, and the next one stores all of it once', async () => {
   const stars = trueStars(nStars, { name: 'T', ra: 83.5, dec: 22.1 });

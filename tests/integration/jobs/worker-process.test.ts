@@ -1,22 +1,12 @@
-import { afterEach, beforeEach, describe, expect, it } from 'vitest';
-import { startChild, stopChild, type Child } from '@/tests/support/child';
+import { beforeEach, describe, expect, it } from 'vitest';
+import { type Child } from '@/tests/support/child';
 import { emptyTables } from '@/tests/support/database';
 import { jobNow, queueCheck, untilJob } from '@/tests/support/jobs';
-import { root, script } from '@/tests/support/scripts';
+import { startWorker } from '@/tests/support/worker';
 
-const children: Child[] = [];
-function start(env: Readonly<Record<string, string>>): Child {
-  const child = startChild(process.execPath, script('tests/support/slow-worker.ts'), {
-    cwd: root,
-    env: { ...process.env, LOG_LEVEL: 'info', ...env },
-  });
-  children.push(child);
-  return child;
-}
+const start = (env: Readonly<Record<string, string>>): Child =>
+  startWorker('tests/support/slow-worker.ts', { LOG_LEVEL: 'info', ...env });
 beforeEach(emptyTables);
-afterEach(async () => {
-  await Promise.all(children.splice(0).map((child) => stopChild(child)));
-});
 
 describe('a worker process', () => {
   it('that is killed in mid-job loses it: the job is taken up after the lease and finished once', async () => {

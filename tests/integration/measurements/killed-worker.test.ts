@@ -1,32 +1,21 @@
-import { afterEach, beforeAll, expect, it } from 'vitest';
+import { beforeAll, expect, it } from 'vitest';
 import { FrameInput } from '@/lib/contracts/api/frame';
 import { logFrames } from '@/lib/server/acts/log-frames';
 import { openNight } from '@/lib/server/acts/open-night';
 import { execute } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
-import { startChild, stopChild, type Child } from '@/tests/support/child';
 import { jobNow, untilJob } from '@/tests/support/jobs';
 import { newCaller, newLogWorld } from '@/tests/support/log-world';
 import { filesIn, mailsOf, removeOriginals, setNow, upload } from '@/tests/support/measurements';
-import { root, script } from '@/tests/support/scripts';
+import { startWorker } from '@/tests/support/worker';
 
 removeOriginals();
-const children: Child[] = [];
 let noor: PersonCaller;
 beforeAll(async () => {
   await newLogWorld();
   noor = await newCaller('Noor Hathaway', { roles: ['observer'] });
   await newCaller('Bram Oyelaran', { roles: ['photometrist'] });
 });
-afterEach(async () => {
-  await Promise.all(children.splice(0).map((child) => stopChild(child)));
-});
-
-function startWorker(): Child {
-  const child = startChild(process.execPath, script('workers/main.ts'), { cwd: root, env: process.env });
-  children.push(child);
-  return child;
-}
 
 it('a worker that is killed while it loads a table leaves nothing of it, and the next one takes it whole', async () => {
   const night = await openNight(noor, { telescope: 'larkspur', date: '2026-05-01' });

@@ -1,32 +1,21 @@
-import { afterEach, beforeAll, expect, it } from 'vitest';
+import { beforeAll, expect, it } from 'vitest';
 import { SolveOptions } from '@/lib/contracts/solve-options';
 import { queueSolve } from '@/lib/server/acts/queue-solve';
 import { execute } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
-import { startChild, stopChild, type Child } from '@/tests/support/child';
 import { jobNow, untilJob } from '@/tests/support/jobs';
 import { newCaller, newLogWorld } from '@/tests/support/log-world';
 import { filesIn, removeOriginals } from '@/tests/support/measurements';
-import { root, script } from '@/tests/support/scripts';
 import { newField, solutionNow, solvableNight } from '@/tests/support/solutions';
+import { startWorker } from '@/tests/support/worker';
 
 removeOriginals();
-const children: Child[] = [];
 let noor: PersonCaller;
 beforeAll(async () => {
   await newLogWorld();
   await newField();
   noor = await newCaller('Noor Hathaway', { roles: ['observer'] });
 });
-afterEach(async () => {
-  await Promise.all(children.splice(0).map((child) => stopChild(child)));
-});
-
-function startWorker(): Child {
-  const child = startChild(process.execPath, script('workers/main.ts'), { cwd: root, env: process.env });
-  children.push(child);
-  return child;
-}
 
 it('a worker that is killed while it solves leaves nothing of it, and the next one solves it once', async () => {
   const { night } = await solvableNight(noor, { date: '2026-10-01' });

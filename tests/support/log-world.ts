@@ -112,6 +112,19 @@ export async function newCaller(name: string, rights: NewCaller = {}): Promise<P
   };
 }
 
+/** People by name, each made with these rights. */
+export async function newCallers(
+  people: Readonly<Record<string, NewCaller>>,
+): Promise<(name: string) => PersonCaller> {
+  const callers = new Map<string, PersonCaller>();
+  for (const [name, rights] of Object.entries(people)) callers.set(name, await newCaller(name, rights));
+  return (name) => {
+    const caller = callers.get(name);
+    if (!caller) throw new Error(`There is no ${name}.`);
+    return caller;
+  };
+}
+
 /** Three stars of a field that lies across 0 h, and one that must not be used. */
 export async function newStandards(): Promise<void> {
   const source = await insert(

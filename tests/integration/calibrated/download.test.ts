@@ -10,11 +10,11 @@ import { streamOf } from '@/lib/server/http/stream-of';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { calibratedDownload } from '@/lib/server/reads/calibrated-download';
 import { faultOf } from '@/tests/support/fault-of';
-import { newCaller, newLogWorld } from '@/tests/support/log-world';
+import { newCallers, newLogWorld } from '@/tests/support/log-world';
 import { addStars, newResult, newSolution } from '@/tests/support/results';
 
 let night: string;
-const who: Record<string, PersonCaller> = {};
+let as: (name: string) => PersonCaller;
 const solutions: Record<'earlier' | 'approved' | 'withdrawn', string> = {
   earlier: '',
   approved: '',
@@ -23,19 +23,16 @@ const solutions: Record<'earlier' | 'approved' | 'withdrawn', string> = {
 
 beforeAll(async () => {
   const world = await newLogWorld();
-  const [noor, bram] = [
-    await newCaller('Noor Hathaway', { roles: ['observer'] }),
-    await newCaller('Bram Oyelaran', { roles: ['photometrist'] }),
-  ];
-  Object.assign(who, {
-    observer: noor,
-    photometrist: bram,
-    manager: await newCaller('Ilse', { roles: ['manager'] }),
-    otherObserver: await newCaller('Ode', { roles: ['observer'] }),
-    pi: await newCaller('Piet', { programmes: [[world.thistle, 'pi']] }),
-    coinvestigator: await newCaller('Mara', { programmes: [[world.marrow, 'coinvestigator']] }),
-    outsider: await newCaller('Ossi'),
+  as = await newCallers({
+    observer: { roles: ['observer'] },
+    photometrist: { roles: ['photometrist'] },
+    manager: { roles: ['manager'] },
+    otherObserver: { roles: ['observer'] },
+    pi: { programmes: [[world.thistle, 'pi']] },
+    coinvestigator: { programmes: [[world.marrow, 'coinvestigator']] },
+    outsider: {},
   });
+  const [noor, bram] = [as('observer'), as('photometrist')];
   night = (await openNight(noor, { telescope: 'larkspur', date: '2026-11-03' })).id;
   const frame = { type: 'target', band: 'V', exposure: 60 };
   for (const [object, utc_start] of [
@@ -75,13 +72,8 @@ beforeAll(async () => {
 });
 
 async function textOf(name: string, query: Record<string, string>): Promise<string> {
-  const { text } = await calibratedDownload(caller(name), night, CalibratedQuery.parse(query));
+  const { text } = await calibratedDownload(as(name), night, CalibratedQuery.parse(query));
   return new Response(streamOf(text)).text();
-}
-function caller(name: string): PersonCaller {
-  const found = who[name];
-  if (!found) throw new Error(`There is no ${name}.`);
-  return found;
 }
 const sha256 = (text: string): string => createHash('sha256').update(text).digest('hex');
 

@@ -15,7 +15,7 @@ import {
 import { measurementSet, nightMeasurements } from '@/lib/server/reads/measurement-sets';
 import { measurementsPage } from '@/lib/server/reads/measurements-page';
 import { setPage } from '@/lib/server/reads/set-page';
-import { newCaller, newLogWorld, newStandards } from '@/tests/support/log-world';
+import { newCallers, newLogWorld, newStandards } from '@/tests/support/log-world';
 import { check, removeOriginals, upload } from '@/tests/support/measurements';
 
 removeOriginals();
@@ -25,18 +25,13 @@ let mixed: string;
 /** Rows on one programme's frame and the standard frame only. */
 let own: string;
 let refused: string;
-const callers = new Map<string, PersonCaller>();
-const as = (name: string): PersonCaller => {
-  const caller = callers.get(name);
-  if (!caller) throw new Error(`There is no ${name}.`);
-  return caller;
-};
+let as: (name: string) => PersonCaller;
 const page = { limit: 100 };
 
 beforeAll(async () => {
   const { thistle, marrow } = await newLogWorld();
   await newStandards();
-  for (const [name, rights] of Object.entries({
+  as = await newCallers({
     observer: { roles: ['observer'] },
     stranger: { roles: ['observer'] },
     photometrist: { roles: ['photometrist'] },
@@ -45,9 +40,7 @@ beforeAll(async () => {
     thistleCo: { programmes: [[thistle, 'coinvestigator']] },
     marrowCo: { programmes: [[marrow, 'coinvestigator']] },
     nobody: {},
-  } as const)) {
-    callers.set(name, await newCaller(name, rights));
-  }
+  });
   night = await openNight(as('observer'), { telescope: 'larkspur', date: '2026-06-01' });
   const frame = (object: string, type: string, hour: string): FrameInput =>
     FrameInput.parse({ type, object, band: 'V', utc_start: `2026-06-01T${hour}:00:00Z`, exposure: 60 });

@@ -8,16 +8,11 @@ import { execute, inTransaction, selectOne } from '@/lib/server/data/database';
 import { enqueue } from '@/lib/server/jobs/enqueue';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { calibratedPage } from '@/lib/server/reads/calibrated-page';
-import { newCaller, newLogWorld } from '@/tests/support/log-world';
+import { newCallers, newLogWorld } from '@/tests/support/log-world';
 import { expectWithin } from '@/tests/support/numbers';
 import { addStars, newResult, newSolution, type MadeSolution } from '@/tests/support/results';
 
-const callers = new Map<string, PersonCaller>();
-const as = (name: string): PersonCaller => {
-  const caller = callers.get(name);
-  if (!caller) throw new Error(`There is no ${name}.`);
-  return caller;
-};
+let as: (name: string) => PersonCaller;
 let night: string;
 /** A night with targets and no solution. */
 let bare: string;
@@ -52,7 +47,7 @@ async function nightWithTargets(date: string): Promise<string> {
 beforeAll(async () => {
   const { thistle, marrow } = await newLogWorld();
   marrowId = marrow;
-  for (const [name, rights] of Object.entries({
+  as = await newCallers({
     observer: { roles: ['observer'] },
     otherObserver: { roles: ['observer'] },
     photometrist: { roles: ['photometrist'] },
@@ -61,9 +56,7 @@ beforeAll(async () => {
     thistlePi: { programmes: [[thistle, 'pi']] },
     marrowCo: { programmes: [[marrow, 'coinvestigator']] },
     nobody: {},
-  } as const)) {
-    callers.set(name, await newCaller(name, rights));
-  }
+  });
   night = await nightWithTargets('2026-11-03');
   bare = await nightWithTargets('2026-11-04');
   waiting = await nightWithTargets('2026-11-05');

@@ -9,15 +9,10 @@ import { newPublicId } from '@/lib/server/data/public-id';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { programmePage } from '@/lib/server/reads/programme-page';
 import { waiting } from '@/lib/server/reads/waiting';
-import { newCaller, newLogWorld } from '@/tests/support/log-world';
+import { newCallers, newLogWorld } from '@/tests/support/log-world';
 import { newResult, newSolution } from '@/tests/support/results';
 
-const callers = new Map<string, PersonCaller>();
-const as = (name: string): PersonCaller => {
-  const caller = callers.get(name);
-  if (!caller) throw new Error(`There is no ${name}.`);
-  return caller;
-};
+let as: (name: string) => PersonCaller;
 let open: string;
 let unsolved: string;
 let solved: string;
@@ -59,7 +54,7 @@ async function newSet({ night, state, by, nFaults = 0, kind = 'standard' }: NewS
 
 beforeAll(async () => {
   const { thistle, marrow } = await newLogWorld();
-  for (const [name, rights] of Object.entries({
+  as = await newCallers({
     observer: { roles: ['observer'] },
     otherObserver: { roles: ['observer'] },
     photometrist: { roles: ['photometrist'] },
@@ -69,9 +64,7 @@ beforeAll(async () => {
     thistleCo: { programmes: [[thistle, 'coinvestigator']] },
     marrowCo: { programmes: [[marrow, 'coinvestigator']] },
     nobody: {},
-  } as const)) {
-    callers.set(name, await newCaller(name, rights));
-  }
+  });
   // Those above have no password either: they are in, but for one who is not.
   await execute("UPDATE people SET password_hash = 'x'", {}, null);
   await execute("UPDATE people SET password_hash = NULL WHERE name = 'nobody'", {}, null);

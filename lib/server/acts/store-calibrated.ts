@@ -4,15 +4,14 @@ import { Fault, isFault } from '@/lib/faults/fault';
 import { recordAudit } from '@/lib/server/data/audit';
 import { inTransaction, type Tx } from '@/lib/server/data/database';
 import { nightById, type NightName } from '@/lib/server/data/night-names';
+import { bandsOfNight, type BandRow } from '@/lib/server/data/solution-bands';
 import {
-  bandRowsOf,
   dropTransformations,
   finishTransformation,
   hasEarlierMagnitudes,
   investigatorsOf,
   loadStars,
   lockSolutionState,
-  type BandRow,
   type TransformationRow,
   type TransformedSolutionRow,
 } from '@/lib/server/data/transformation-runs';
@@ -87,7 +86,7 @@ async function finish(
   results: readonly NewCalibrated[],
 ): Promise<void> {
   const { solution, nightId, transformations, options } = night;
-  const [name, bands] = [await nightById(nightId, tx), await bandRowsOf(solution.id, nightId, tx)];
+  const [name, bands] = [await nightById(nightId, tx), await bandsOfNight(solution.id, nightId, tx)];
   for (const result of results) {
     if (!(await finishTransformation(tx, { ...result, options })))
       throw new Error(`The transformation ${result.id} was ended by somebody else.`);

@@ -135,3 +135,12 @@ export async function bandsOf(
   }
   return bands.map(({ id, ...band }) => ({ ...band, coefficients: ofBand.get(id) ?? [] }));
 }
+
+/** What a solution found for the bands of one of its nights, blue to red. */
+export async function bandsOfNight(
+  solutionId: number,
+  nightId: number,
+  tx: Tx | null = null,
+): Promise<readonly BandRow[]> {
+  return (await bandsOf([solutionId], tx)).filter((band) => band.nightId === nightId);
+}

@@ -1,7 +1,5 @@
 import 'server-only';
 import type { SolutionState } from '@/lib/contracts/api/solution';
-import type { Band } from '@/lib/contracts/bands';
-import type { ApiCoefficient } from '@/lib/contracts/coefficients';
 import type { Slice } from '@/lib/contracts/measurement-check';
 import { execute, select, selectOne, type Tx } from './database';
 import { loadRows } from './load-rows';
@@ -129,59 +127,6 @@ export async function finishTransformation(tx: Tx, end: TransformationEnd): Prom
     tx,
   );
   return rows === 1;
-}
-
-export interface BandRow {
-  readonly id: number;
-  readonly band: Band;
-  /** Square, in the order of the coefficients. */
-  readonly covariance: readonly (readonly number[])[] | readonly number[];
-  readonly scatterObservation: number | null;
-  readonly scatterFrame: number | null;
-  readonly nUsed: number;
-  readonly nRejected: number;
-  readonly airmassMin: number | null;
-  readonly airmassMax: number | null;
-  readonly colourMin: number | null;
-  readonly colourMax: number | null;
-  readonly utcFirst: Date | null;
-  readonly utcLast: Date | null;
-  readonly coefficients: readonly CoefficientRow[];
-}
-export interface CoefficientRow {
-  readonly bandId: number;
-  readonly name: ApiCoefficient;
-  readonly status: 'free' | 'fixed' | 'prior';
-  readonly value: number | null;
-  readonly error: number | null;
-}
-
-/** What a solution found for the bands of a night, blue to red. */
-export async function bandRowsOf(
-  solutionId: number,
-  nightId: number,
-  tx: Tx | null = null,
-): Promise<readonly BandRow[]> {
-  const bands = await select<Omit<BandRow, 'coefficients'>>(
-    `SELECT id, band, covariance, scatter_observation AS scatterObservation, scatter_frame AS scatterFrame,
-            n_used AS nUsed, n_rejected AS nRejected, airmass_min AS airmassMin, airmass_max AS airmassMax,
-            colour_min AS colourMin, colour_max AS colourMax, utc_first AS utcFirst, utc_last AS utcLast
-       FROM solution_bands WHERE solution_id = :solutionId AND night_id = :nightId
-      ORDER BY FIELD(band, 'U', 'B', 'V', 'R', 'I')`,
-    { solutionId, nightId },
-    tx,
-  );
-  if (bands.length === 0) return [];
-  const coefficients = await select<CoefficientRow>(
-    `SELECT solution_band_id AS bandId, name, status, value, error
-       FROM solution_coefficients WHERE solution_band_id IN (:bands) ORDER BY solution_band_id, seq`,
-    { bands: bands.map(({ id }) => id) },
-    tx,
-  );
-  return bands.map((band) => ({
-    ...band,
-    coefficients: coefficients.filter((one) => one.bandId === band.id),
-  }));
 }
 
 /** The instant from which the solution counts its hours in the night; null until it is solved. */

@@ -13,13 +13,12 @@ import type { BandCalibration, TransformOptions } from '@/lib/photometry/target-
 import { checkNight } from '@/lib/server/data/check-inputs';
 import { instrumentOf } from '@/lib/server/data/instruments';
 import { findNight } from '@/lib/server/data/nights';
+import { bandsOfNight, type BandRow } from '@/lib/server/data/solution-bands';
 import { saturationOf, targetFrames, type TargetFrameRow } from '@/lib/server/data/target-tables';
 import {
-  bandRowsOf,
   findTransformedSolution,
   zeroOfHours,
   transformationsOf,
-  type BandRow,
   type TransformationRow,
   type TransformedSolutionRow,
 } from '@/lib/server/data/transformation-runs';
@@ -75,7 +74,7 @@ export async function transformInputs(
   const { telescopeId } = await checkNight(night.id);
   const [transformations, bands, origin, frames, instrument, saturation] = await Promise.all([
     transformationsOf(solution.id, night.id),
-    bandRowsOf(solution.id, night.id),
+    bandsOfNight(solution.id, night.id),
     zeroOfHours(solution.id, night.id),
     targetFrames(night.id),
     instrumentOf({ telescopeId }),

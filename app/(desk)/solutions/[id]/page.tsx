@@ -1,7 +1,6 @@
 import type { Metadata } from 'next';
-import { notFound } from 'next/navigation';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
-import { isFault } from '@/lib/faults/fault';
+import { orNotFound } from '@/lib/server/http/or-not-found';
 import { callerOrSignIn } from '@/lib/server/identity/current-caller';
 import { solutionPage } from '@/lib/server/reads/solution-page';
 import { SolutionHead } from './_components/solution-head';
@@ -11,13 +10,7 @@ type Props = PageProps<'/solutions/[id]'>;
 
 async function pageOf({ params }: Props) {
   const [caller, { id }] = await Promise.all([callerOrSignIn(), params]);
-  try {
-    return await solutionPage(caller, id);
-  } catch (error) {
-    // Not there, or not theirs to see: an address where nothing is kept.
-    if (isFault(error, 'not-found')) notFound();
-    throw error;
-  }
+  return orNotFound(solutionPage(caller, id));
 }
 
 export async function generateMetadata(props: Props): Promise<Metadata> {

@@ -1,11 +1,10 @@
 import type { ReactNode } from 'react';
 import { nightSky } from '@/app/_components/charts/night-band/night-sky';
-import { isFault } from '@/lib/faults/fault';
+import { orNotFound } from '@/lib/server/http/or-not-found';
 import { callerOrSignIn } from '@/lib/server/identity/current-caller';
 import { nightPage } from '@/lib/server/reads/night-page';
 import { objectNames } from '@/lib/server/reads/object-names';
 import { possibleObservers } from '@/lib/server/reads/possible-observers';
-import { notFound } from 'next/navigation';
 import { fieldsTaken } from '../../_components/fields-taken';
 import { NightHead } from './_components/night-head';
 import { NightProvider } from './_components/night-provider';
@@ -21,20 +20,10 @@ async function presentTime() {
   return Date.now();
 }
 
-/** A night that is not there, or not the caller's to see, is an address where nothing is kept. */
-async function readNight(caller: Awaited<ReturnType<typeof callerOrSignIn>>, id: string) {
-  try {
-    return await nightPage(caller, id);
-  } catch (error) {
-    if (isFault(error, 'not-found')) notFound();
-    throw error;
-  }
-}
-
 /** Everything about one night stands under its head and its band. */
 export default async function NightLayout({ params, children }: NightLayoutProps) {
   const [caller, { id }, now] = await Promise.all([callerOrSignIn(), params, presentTime()]);
-  const made = await readNight(caller, id);
+  const made = await orNotFound(nightPage(caller, id));
   const [objects, observers] = await Promise.all([
     made.may.log ? objectNames(caller, { q: '', limit: 1000 }) : { items: [] },
     possibleObservers(caller),

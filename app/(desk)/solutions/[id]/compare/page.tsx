@@ -1,14 +1,13 @@
 import type { Metadata } from 'next';
 import Link from 'next/link';
 import type { Route } from 'next';
-import { notFound } from 'next/navigation';
 import { solutionBefore } from '@/app/_components/solutions/coefficient-change';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { PageHead } from '@/app/_components/ui/page-head';
 import { Panel } from '@/app/_components/ui/panel';
 import { StateTag } from '@/app/_components/ui/state-tag';
-import { isFault } from '@/lib/faults/fault';
+import { orNotFound } from '@/lib/server/http/or-not-found';
 import { callerOrSignIn } from '@/lib/server/identity/current-caller';
 import { solutionPage } from '@/lib/server/reads/solution-page';
 import { CoefficientsCompared } from './_components/coefficients-compared';
@@ -17,25 +16,16 @@ import { OtherChoice } from './_components/other-choice';
 
 export const metadata: Metadata = { title: 'Compare solutions' };
 
-type Props = PageProps<'/solutions/[id]/compare'>;
-
-async function pageOf({ params }: Props) {
-  const [caller, { id }] = await Promise.all([callerOrSignIn(), params]);
-  try {
-    return await solutionPage(caller, id);
-  } catch (error) {
-    // Not there, or not theirs to see: an address where nothing is kept.
-    if (isFault(error, 'not-found')) notFound();
-    throw error;
-  }
-}
-
 /** Two solutions of a night side by side: their coefficients, and the observations that only one of them used. */
-export default async function CompareSolutionsPage(props: Props) {
-  const [{ solution, solutions }, query] = await Promise.all([pageOf(props), props.searchParams]);
-  const others = solutions.filter(({ id, outcome }) => id !== solution.id && outcome !== null);
+export default async function CompareSolutionsPage({
+  params,
+  searchParams,
+}: PageProps<'/solutions/[id]/compare'>) {
+  const [caller, { id }, query] = await Promise.all([callerOrSignIn(), params, searchParams]);
+  const { solution, solutions } = await orNotFound(solutionPage(caller, id));
+  const others = solutions.filter((one) => one.id !== solution.id && one.outcome !== null);
   const other =
-    others.find(({ id }) => id === query['with']) ?? solutionBefore(solution, solutions) ?? others[0];
+    others.find((one) => one.id === query['with']) ?? solutionBefore(solution, solutions) ?? others[0];
   return (
     <>
       <PageHead

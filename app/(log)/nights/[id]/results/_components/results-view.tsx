@@ -2,6 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useCallback, useEffect, useState } from 'react';
+import { classNames } from '@/app/_components/ui/class-names';
 import { Checkbox } from '@/app/_components/ui/checkbox';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { formatCount } from '@/app/_components/ui/format-figure';
@@ -27,6 +28,10 @@ interface ResultsViewProps {
   readonly query: CalibratedPageQuery;
 }
 
+/** Where the diagram stands beside the table; beside one of many bands only where its cautions are still seen. */
+const beside = 'xl:grid-cols-[minmax(0,1fr)_minmax(380px,30%)]';
+const besideWide = 'min-[1600px]:grid-cols-[minmax(0,1fr)_minmax(380px,26%)]';
+
 /** Stars and diagram of one result, linked: what is chosen in one is marked in the other. */
 export function ResultsView({ page, result, query }: ResultsViewProps) {
   const router = useRouter();
@@ -47,8 +52,10 @@ export function ResultsView({ page, result, query }: ResultsViewProps) {
   }, [query.at]);
   const { sort, descending } = calibratedOrder(query);
   const order = `by ${sortWords[sort]}${descending ? ', descending' : ''}`;
+  const quantities = quantitiesOf(result.has);
+  const isWide = quantities.length > 4;
   return (
-    <div className="grid grid-cols-1 items-start gap-5 xl:grid-cols-[minmax(0,1fr)_minmax(380px,30%)]">
+    <div className={classNames('grid grid-cols-1 items-start gap-5', isWide ? besideWide : beside)}>
       <Panel
         title="Calibrated magnitudes"
         note={`${formatCount(result.nShown)} of ${formatCount(result.nStars)} stars, ${order}`}
@@ -69,7 +76,7 @@ export function ResultsView({ page, result, query }: ResultsViewProps) {
             night={page.night}
             query={query}
             stars={stars}
-            quantities={quantitiesOf(result.has)}
+            quantities={quantities}
             selected={selected}
             onSelect={setSelected}
             showsParts={showsParts}
@@ -77,7 +84,12 @@ export function ResultsView({ page, result, query }: ResultsViewProps) {
         )}
         {stars.length === 0 ? null : <ResultsPages night={page.night} query={query} result={result} />}
       </Panel>
-      <div className="grid content-start gap-5">
+      <div
+        className={classNames(
+          'grid content-start items-start gap-5',
+          isWide && 'lg:max-[1600px]:grid-cols-[minmax(0,1fr)_minmax(0,1fr)]',
+        )}
+      >
         <Panel title="Colour–magnitude diagram" note="the stars of the list that have V and B−V">
           {result.diagram.length === 0 ? (
             <p className="text-ink-2">No star of the list has both V and B−V.</p>

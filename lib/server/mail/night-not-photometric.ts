@@ -25,8 +25,7 @@ export interface NightNotPhotometric {
   readonly measurements: string;
 }
 
-const said = (label: string, text: string): readonly (readonly [string, string])[] =>
-  text === '' ? [] : [[label, text]];
+const said = (by: string, comment: string): string => (comment === '' ? by : `${by}: “${comment}”`);
 
 /** To PI and co-investigators, when a night is approved as one that gives no magnitudes. */
 export function nightNotPhotometricMail(
@@ -43,7 +42,7 @@ export function nightNotPhotometricMail(
     parts: [
       {
         kind: 'text',
-        text: `This night was judged not photometric, so no magnitudes on the standard system were derived for the targets of your programme${programmes.length === 1 ? '' : 's'}.${earlier}`,
+        text: `The night of ${night.night}, was judged not photometric, so no magnitudes on the standard system were derived for the targets of your programme${programmes.length === 1 ? '' : 's'}.${earlier}`,
       },
       {
         kind: 'facts',
@@ -51,11 +50,9 @@ export function nightNotPhotometricMail(
           ['Night', night.night],
           [programmes.length === 1 ? 'Programme' : 'Programmes', programmes.join(', ')],
           ['Solution', `number ${night.solution} of the night`],
-          ['Proposed by', proposedBy],
-          ...said('who said', night.proposal),
-          ['Approved by', approvedBy],
-          ...said('who said', night.comment),
-          ...said('Evidence', evidence.join(' ')),
+          ['Proposed by', said(proposedBy, night.proposal)],
+          ['Approved by', said(approvedBy, night.comment)],
+          ...(evidence.length === 0 ? [] : ([['Evidence', evidence.join(' ')]] as const)),
         ],
       },
       { kind: 'link', label: 'The solution: residuals and evidence', href: night.href },

@@ -3,6 +3,7 @@ import { invitationMail } from '@/lib/server/mail/invitation';
 import { renderLetter } from '@/lib/server/mail/letter';
 import { measurementsWaitingMail } from '@/lib/server/mail/measurements-waiting';
 import { nightCalibratedMail } from '@/lib/server/mail/night-calibrated';
+import { nightNotPhotometricMail } from '@/lib/server/mail/night-not-photometric';
 import { oneLine } from '@/lib/server/mail/one-line';
 import { senderDomain } from '@/lib/server/mail/post-mail';
 import { uploadRefusedMail } from '@/lib/server/mail/upload-refused';
@@ -172,6 +173,45 @@ describe('the letter about a calibrated night', () => {
     expect(text).toContain('Coefficient Zero point; Value 2.4593 ± 0.0052; Unit');
     expect(text).toContain('Coefficient Colour term; Value −0.061 ± 0.010; Unit');
     expect(text).toContain('Coefficient Second-order extinction; Value 0, held fixed; Unit');
+  });
+});
+
+describe('the letter about a night that is not photometric', () => {
+  const night = {
+    name: 'Tomas Verrall',
+    night: '17 October 2026, Larkspur 0.8 m',
+    programmes: ['MH26B-04', 'MH26B-11'],
+    solution: 2,
+    proposedBy: 'Bram Oyelaran',
+    proposal: 'Cirrus from 23 h <until dawn>.',
+    approvedBy: 'Edda Lindqvist',
+    comment: '',
+    evidence: ['Scatter 0.080 mag in B: above 0.05.', 'No band could be determined.'],
+    hasEarlier: false,
+    href: 'http://127.0.0.1:3000/solutions/3kq8v7m2t0xc',
+    measurements: 'http://127.0.0.1:3000/nights/4kq8v7m2t0xc/measurements',
+  };
+
+  it('says who judged, why, and where to look, and leaves out what nobody said', () => {
+    const { subject, text } = nightNotPhotometricMail(night);
+    expect(subject).toBe('Not photometric: 17 October 2026, Larkspur 0.8 m');
+    for (const part of [
+      'MH26B-04, MH26B-11',
+      'Bram Oyelaran',
+      'Edda Lindqvist',
+      'Scatter 0.080 mag in B: above 0.05. No band could be determined.',
+      night.href,
+      night.measurements,
+    ])
+      expect(text).toContain(part);
+    expect(text).toContain('Bram Oyelaran: “Cirrus from 23 h <until dawn>.”\n');
+    expect(text).toContain('Edda Lindqvist\n');
+    expect(nightNotPhotometricMail(night).html).toContain('23 h &lt;until dawn&gt;');
+  });
+
+  it('names one person to ask where one proposed and approved', () => {
+    const { text } = nightNotPhotometricMail({ ...night, proposedBy: night.approvedBy });
+    expect(text.replaceAll('\n', ' ')).toContain('ask Edda Lindqvist: the night can');
   });
 });
 

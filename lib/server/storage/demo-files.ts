@@ -22,7 +22,8 @@ const isMissing = (error: unknown): boolean =>
 async function firstOf<T>(name: string, open: (file: string) => Promise<T>): Promise<T | null> {
   for (const folder of folders()) {
     try {
-      return await open(path.join(folder, name));
+      // Else the build takes the whole project for files that may be opened here.
+      return await open(path.join(/* turbopackIgnore: true */ folder, name));
     } catch (error) {
       // It lies in one of the folders, or nowhere: a short night in progress has fewer samples.
       if (!isMissing(error)) throw error;

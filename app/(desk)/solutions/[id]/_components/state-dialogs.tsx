@@ -23,7 +23,8 @@ export interface StateDialogProps {
   readonly onClose: () => void;
 }
 
-interface CommentDialogProps extends StateDialogProps {
+interface CommentDialogProps {
+  readonly onClose: () => void;
   readonly title: string;
   readonly yes: string;
   readonly look: ButtonLook;
@@ -84,7 +85,6 @@ export function ProposeDialog({ solution, onClose }: StateDialogProps) {
   const [verdict, setVerdict] = useState<Verdict | null>(solution.verdict ?? solution.suggested_verdict);
   return (
     <CommentDialog
-      solution={solution}
       onClose={onClose}
       title={`Propose solution ${solution.number} for approval`}
       yes="Propose"
@@ -123,7 +123,6 @@ export function ApproveDialog({
 }: StateDialogProps & { readonly effect: ReactNode }) {
   return (
     <CommentDialog
-      solution={solution}
       onClose={onClose}
       title={`Approve solution ${solution.number}`}
       yes="Approve"
@@ -149,7 +148,6 @@ export function ApproveDialog({
 export function WithdrawDialog({ solution, onClose }: StateDialogProps) {
   return (
     <CommentDialog
-      solution={solution}
       onClose={onClose}
       title={`Withdraw solution ${solution.number}`}
       yes="Withdraw the solution"

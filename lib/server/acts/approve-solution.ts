@@ -52,10 +52,12 @@ export async function approveSolution(
     const superseded = await supersedeOthers(tx, caller, solution);
     await calibrateNight(tx, caller, solution);
     const programmes = await queueTargets(tx, caller, solution);
-    if (input.comment !== '') {
-      const comment = { solutionId: solution.id, personId: caller.personId, text: input.comment };
-      await insertComment(tx, { ...comment, act: 'approve' });
-    }
+    await insertComment(tx, {
+      solutionId: solution.id,
+      personId: caller.personId,
+      act: 'approve',
+      text: input.comment,
+    });
     if (solution.verdict === 'not photometric') await tellInvestigators(tx, caller, solution);
     await recordAudit(tx, caller, {
       act: 'solution.approve',

@@ -46,7 +46,12 @@ export async function proposeSolution(
       });
     }
     await takeSets(tx, solution);
-    await insertCommentOf(tx, caller, solution, input.comment);
+    await insertComment(tx, {
+      solutionId: solution.id,
+      personId: caller.personId,
+      act: 'propose',
+      text: input.comment,
+    });
     await recordAudit(tx, caller, {
       act: 'solution.propose',
       subjectKind: 'solution',
@@ -82,16 +87,6 @@ async function takeSets(tx: Tx, solution: SolutionRow): Promise<void> {
     );
   }
   await takeIntoUse(tx, sets);
-}
-
-async function insertCommentOf(
-  tx: Tx,
-  caller: PersonCaller,
-  solution: SolutionRow,
-  text: string,
-): Promise<void> {
-  if (text === '') return;
-  await insertComment(tx, { solutionId: solution.id, personId: caller.personId, act: 'propose', text });
 }
 
 /** The others can approve it. */

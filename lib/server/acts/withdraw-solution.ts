@@ -33,8 +33,12 @@ export async function withdrawSolution(
     });
     const transformations = await withdrawTransformations(tx, solution.id);
     await releaseSets(tx, solution.id);
-    const comment = { solutionId: solution.id, personId: caller.personId, text: input.comment };
-    await insertComment(tx, { ...comment, act: 'withdraw' });
+    await insertComment(tx, {
+      solutionId: solution.id,
+      personId: caller.personId,
+      act: 'withdraw',
+      text: input.comment,
+    });
     if (before.state === 'approved' && night.state === 'calibrated')
       await uncalibrateNight(tx, caller, solution);
     await recordAudit(tx, caller, {

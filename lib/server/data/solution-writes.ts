@@ -106,15 +106,17 @@ export async function exclusionsOf(
   return rows.map((row) => ({ ...row, isExcluded: row.isExcluded === 1 }));
 }
 
+/** Writes what a person said; an act without words leaves no comment. */
 export async function insertComment(
   tx: Tx,
   comment: {
     readonly solutionId: number;
     readonly personId: number;
-    readonly act: 'comment' | 'propose' | 'approve' | 'withdraw';
+    readonly act: CommentRow['act'];
     readonly text: string;
   },
 ): Promise<void> {
+  if (comment.text === '') return;
   await execute(
     `INSERT INTO solution_comments (solution_id, person_id, act, text)
      VALUES (:solutionId, :personId, :act, :text)`,

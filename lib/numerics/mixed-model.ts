@@ -37,10 +37,7 @@ export interface MixedModelFit extends GroupFit {
   readonly subjectEffects: Float64Array;
   /** r′V⁻¹r, priors included; its expectation is n + priors − p. */
   readonly chi2: number;
-  /** log |V| of the observations; log |X′V⁻¹X|, priors included. */
-  readonly logDetCovariance: number;
-  readonly logDetInformation: number;
-  /** The sum of the three above: what REML minimises. */
+  /** That and log |V| + log |X′V⁻¹X|, priors included: what REML minimises. */
   readonly criterion: number;
 }
 
@@ -95,8 +92,6 @@ export function fitMixedModel(input: MixedModelInput): MixedModelFit | Undetermi
     ...fit,
     subjectEffects: bySubject.map((sum, s) => input.subjectSigma[s]! ** 2 * sum),
     chi2: elimination.chi2,
-    logDetCovariance: noise.logDet,
-    logDetInformation: elimination.logDet - noise.logDet,
     criterion: elimination.logDet + elimination.chi2,
   };
 }

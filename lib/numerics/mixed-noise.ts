@@ -29,8 +29,7 @@ export interface NoiseLayout {
   readonly hasBlocks: boolean;
   /** Place of a row's subject among those eliminated here, −1 for none: shape (n). */
   readonly slot: Int32Array;
-  /** Their subjects and standard deviations, shape (slots). */
-  readonly slotSubject: Int32Array;
+  /** Their standard deviations, shape (slots). */
   readonly slotTau: Float64Array;
 }
 
@@ -110,7 +109,6 @@ export function layoutNoise(input: LayoutInput): NoiseLayout {
     slot[i] = slotOf[s]!;
   }
   const [rowsByBlock, blockStart] = sortByBlock(block, rows);
-  const slotSubject = Int32Array.from(slots);
   const slotTau = Float64Array.from(slots, (s) => subjectSigma[s]!);
   return {
     rows,
@@ -119,7 +117,6 @@ export function layoutNoise(input: LayoutInput): NoiseLayout {
     blockStart,
     hasBlocks: block !== null,
     slot,
-    slotSubject,
     slotTau,
   };
 }

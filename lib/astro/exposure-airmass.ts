@@ -1,6 +1,6 @@
 import { type AirmassFormula, airmass } from './airmass';
 import { degPerHour, degPerRad, radPerDeg } from './angles';
-import { requireDeclination, requireRange } from './require-range';
+import { requireRange } from './require-range';
 import type { Site } from './site';
 import { skyMoment } from './sky-moment';
 import { type Vector3, addScaled, directionOf } from './vector';
@@ -24,28 +24,6 @@ export interface Exposure {
   readonly utcStart: number;
   /** [s] */
   readonly exposure_s: number;
-}
-
-export interface ExposureOnSky extends Exposure {
-  readonly site: Site;
-  /** J2000 [deg] */
-  readonly ra: number;
-  /** J2000 [deg] */
-  readonly dec: number;
-}
-
-/** Airmass averaged over a long exposure.
- * @param formula - which airmass
- * @param exposure - site, J2000 place [deg], start [ms since 1970] and length [s]
- * @returns airmass [1]
- * @throws {RangeError} when the field is below the horizon at start, middle or end, or an input cannot be
- * @accuracy as meanAirmass
- * @source Simpson's rule on the formula's source */
-export function exposureAirmass(formula: AirmassFormula, exposure: ExposureOnSky): number {
-  const { site, ra, dec } = exposure;
-  if (!Number.isFinite(ra))
-    throw new RangeError(`Right ascension must be a finite number of degrees, not ${ra}.`);
-  return airmassAt(formula, exposureSky(site, exposure), directionOf(ra, requireDeclination(dec)));
 }
 
 /** Where the zenith is, and how far aberration tips a star, both on J2000 axes. */

@@ -1,5 +1,6 @@
 import { expect, it } from 'vitest';
-import { exposureAirmass } from '@/lib/astro/exposure-airmass';
+import { airmassAt, exposureSky } from '@/lib/astro/exposure-airmass';
+import { directionOf } from '@/lib/astro/vector';
 import type { PublishedStar, SolveFrame, StandardColumns } from '@/lib/server/data/solve-inputs';
 import { standardAirmasses } from '@/lib/server/reads/standard-airmasses';
 import { expectWithin } from '@/tests/support/numbers';
@@ -44,7 +45,7 @@ const rowsOf = (pairs: readonly (readonly [number, number])[]): StandardColumns 
 });
 
 const direct = (ra: number, dec: number): number =>
-  exposureAirmass('young1994', { site, ra, dec, utcStart, exposure_s });
+  airmassAt('young1994', exposureSky(site, { utcStart, exposure_s }), directionOf(ra, dec));
 
 it('each standard on a frame has the airmass of its own place', async () => {
   const stars = [star(1), star(2, { dec: place.dec + 3 })];

@@ -88,7 +88,15 @@ export function scaleByMad(values: ArrayLike<number>, centre: number): number {
   return median(Float64Array.from(values, (value) => Math.abs(value - centre))) / madPerSigma;
 }
 
-const weightOf = (c: number, z: number): number => (Math.abs(z) <= c ? (1 - (z / c) ** 2) ** 2 : 0);
+/** Tukey's bisquare.
+ * @param z - residual in units of the scale [1]
+ * @param c - tuning constant [scale]
+ * @returns weight, 0 … 1; 0 for what is not a number
+ * @accuracy rounding
+ * @source Beaton and Tukey 1974, Technometrics 16, 147 */
+export function bisquareWeight(z: number, c: number): number {
+  return Math.abs(z) <= c ? (1 - (z / c) ** 2) ** 2 : 0;
+}
 
 function residualsOf({ design, columns, response }: RobustInput, coefficients: Float64Array): Float64Array {
   const rest = Float64Array.from(response);
@@ -155,7 +163,7 @@ export function fitRobust(input: RobustInput): RobustFit | UndeterminedRobust {
         termination: { reason: 'exact-fit', iterations },
       };
     }
-    weights = residuals.map((r, i) => (anchored?.[i] === 1 ? 1 : weightOf(bisquare, r / s)));
+    weights = residuals.map((r, i) => (anchored?.[i] === 1 ? 1 : bisquareWeight(r / s, bisquare)));
     const next = solveWeighted(input, weights);
     if ('kind' in next) return next;
     const after = residualsOf(input, next);

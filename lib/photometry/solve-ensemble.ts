@@ -15,7 +15,7 @@
  * Frames must be few enough for a matrix of them; stars may be many.
  */
 import { factorCholesky, invertCholesky } from '@/lib/numerics/cholesky';
-import { median, scaleByMad } from '@/lib/numerics/robust';
+import { bisquareWeight, median, scaleByMad } from '@/lib/numerics/robust';
 
 export interface Ensemble {
   readonly nFrames: number;
@@ -113,8 +113,6 @@ function mediansBy(group: Int32Array, nGroups: number, values: Float64Array): Fl
 const robustScale = (standardised: Float64Array): number =>
   standardised.length === 0 ? 1 : Math.max(1, scaleByMad(standardised, 0));
 
-const bisquareWeight = (u: number): number => (Math.abs(u) < 1 ? (1 - u * u) ** 2 : 0);
-
 /** Weights of measurements by their residuals and of stars by their shifts. */
 function reweigh(ensemble: Ensemble, { bisquare }: EnsembleOptions, state: State): void {
   const { frame, star, y, variance, tau } = ensemble;
@@ -124,14 +122,12 @@ function reweigh(ensemble: Ensemble, { bisquare }: EnsembleOptions, state: State
   );
   state.scale = robustScale(standardised.filter(Number.isFinite));
   for (let o = 0; o < y.length; o += 1) {
-    const u = standardised[o]! / (bisquare * state.scale);
-    weight[o] = Number.isFinite(u) ? bisquareWeight(u) : 0;
+    weight[o] = bisquareWeight(standardised[o]! / state.scale, bisquare);
   }
   const shifts = shift.map((d, s) => d / tau[s]!);
   const starScale = robustScale(shifts.filter(Number.isFinite));
   for (let s = 0; s < shift.length; s += 1) {
-    const u = shifts[s]! / (bisquare * starScale);
-    starWeight[s] = Number.isFinite(u) ? bisquareWeight(u) : 0;
+    starWeight[s] = bisquareWeight(shifts[s]! / starScale, bisquare);
   }
 }
 

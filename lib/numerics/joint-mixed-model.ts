@@ -17,7 +17,7 @@
 import { eliminate, type Elimination, type EliminationGroup } from './block-elimination';
 import { type Prior } from './generalised-least-squares';
 import { senseGroup } from './group-sensitivity';
-import { conditionNumber, inverseR } from './householder-qr';
+import { inverseR } from './householder-qr';
 import { factorColumns, inseparableJointColumns, type JointColumn } from './joint-columns';
 import { addSubjectSums, degreesOfFreedom } from './mixed-diagnostics';
 import {
@@ -59,10 +59,6 @@ export interface JointMixedModelFit {
   readonly sharedCovariance: Float64Array;
   /** For the t intervals of γ, at least 1, shape (q); the components of all groups count as uncertain. */
   readonly sharedDegreesOfFreedom: Float64Array;
-  /** Share of each shared prior in its coefficient [1], in the order of the priors. */
-  readonly sharedPriorLeverage: Float64Array;
-  /** Of what is left for γ, columns of equal length. */
-  readonly sharedConditionNumber: number;
   readonly groups: readonly GroupFit[];
   /** Best linear predictions of a [unit], shape (subjects); 0 for subjects without rows. */
   readonly subjectEffects: Float64Array;
@@ -197,7 +193,7 @@ function collect(
   elimination: Elimination,
   components: readonly RemlEstimate[],
 ): JointMixedModelFit {
-  const { groups, sharedColumns: q, sharedPriors, subjectSigma } = input;
+  const { groups, sharedColumns: q, subjectSigma } = input;
   const bySubject = new Float64Array(subjectSigma.length);
   const uncertainty = new Float64Array(q);
   const fits = groups.map((group, k) => {
@@ -219,11 +215,6 @@ function collect(
     sharedDegreesOfFreedom: uncertainty.map((value, m) =>
       degreesOfFreedom(sharedCovariance[m * (q + 1)]!, value),
     ),
-    sharedPriorLeverage: Float64Array.from(
-      sharedPriors,
-      ({ column, sigma }) => sharedCovariance[column * (q + 1)]! / sigma ** 2,
-    ),
-    sharedConditionNumber: conditionNumber(elimination.qr),
     groups: fits,
     subjectEffects: bySubject.map((sum, s) => subjectSigma[s]! ** 2 * sum),
     chi2: elimination.chi2,

@@ -14,7 +14,7 @@ import {
   predictBlocks,
   varianceUncertainty,
 } from './mixed-diagnostics';
-import { type Components, type NoiseLayout, solveNoise, whiten } from './mixed-noise';
+import { type Components, type NoiseLayout, solveNoise } from './mixed-noise';
 import { type RemlEstimate, type Scatter, type ScatterRule, type Termination } from './reml';
 
 /** The observations of one group. */
@@ -44,9 +44,6 @@ export interface RowDiagnostics {
   readonly marginalResiduals: Float64Array;
   /** y − Xβ − Sa − Fb [unit]. */
   readonly conditionalResiduals: Float64Array;
-  /** H (y − Xβ), uncorrelated and of unit variance but for the coefficients fitted [1]. Rows keep their places, but each
-   * carries a little of its block's and its subject's others. */
-  readonly whitenedResiduals: Float64Array;
   /** What a row differs by from its prediction by all the other rows, its block's and subject's included, in units of
    * that difference's standard deviation [1]; 0 where the others predict nothing. */
   readonly deletionResiduals: Float64Array;
@@ -123,7 +120,6 @@ export function describeGroup(
       blockEffects: predictBlocks(noise, v),
       marginalResiduals: rest,
       conditionalResiduals: conditionalResiduals(rows.sigma, noise, v),
-      whitenedResiduals: whiten(noise, remaining),
       deletionResiduals: deletionResiduals(sense.alone.inverseDiagonal, sense.diagonal, v),
       leverage,
       priorLeverage: Float64Array.from(rows.priors, ({ column, sigma }) => varianceOf(column) / sigma ** 2),

@@ -57,6 +57,14 @@ describe('the plot of residuals', () => {
     expect(plot.nBeyond).toBe(1);
   });
 
+  it('reaches to what was rejected not far off, and to all where nothing was used', () => {
+    const used = Array.from({ length: 20 }, () => observation({ residual: 0.02 }));
+    const rejected = [0.06, 0.3].map((residual) => observation({ residual, used: false }));
+    expect(residualAxis([...used, ...rejected]).max).toBeGreaterThan(0.06);
+    expect(residualAxis([...used, ...rejected]).max).toBeLessThan(0.1);
+    expect(residualAxis(rejected).max).toBeGreaterThan(0.3);
+  });
+
   it('leaves out what has no residual or no colour', () => {
     const rows = [observation({ residual: null }), observation({ colour: null }), observation()];
     expect(residualPlot(rows, 'colour', residualAxis(rows)).points).toHaveLength(1);

@@ -54,17 +54,26 @@ export function thinned(
   return observations.filter((one) => kept.has(one));
 }
 
-/** Share of the residuals of what was used that set the scale, and how far beyond them it goes: to 4 σ of normal ones. */
-const [setScale, room] = [0.95, 2];
+/** Share of the residuals of what was used that set the scale; to how many times them it reaches for what was used, which
+ * is 4 σ of normal ones, and for what was rejected. */
+const [setScale, reachOfUsed, reachOfRejected] = [0.95, 2, 4];
 
-/** An axis on which most residuals can be told apart: single faint stars, and what was rejected, may lie beyond. [mag] */
+const sizesOf = (observations: readonly SolutionObservation[]): readonly number[] =>
+  observations
+    .flatMap(({ residual }) => (residual === null ? [] : [Math.abs(residual)]))
+    .sort((a, b) => a - b);
+
+/** An axis on which most residuals can be told apart: single faint stars, and what lies far off, may lie beyond. [mag] */
 export function residualAxis(observations: readonly SolutionObservation[]): Axis {
-  const sizesOf = (some: readonly SolutionObservation[]): number[] =>
-    some.flatMap(({ residual }) => (residual === null ? [] : [Math.abs(residual)])).sort((a, b) => a - b);
-  const ofUsed = sizesOf(observations.filter(({ used }) => used));
-  const most = ofUsed[Math.ceil(setScale * ofUsed.length) - 1] ?? 0;
-  const half = 1.05 * Math.max(0.01, Math.min(sizesOf(observations).at(-1) ?? 0, room * most));
-  return axisAbout(-half, half, 7);
+  const used = sizesOf(observations.filter((one) => one.used));
+  const rejected = sizesOf(observations.filter((one) => !one.used));
+  const most = used[Math.ceil(setScale * used.length) - 1] ?? rejected.at(-1) ?? 0;
+  const half = Math.max(
+    0.01,
+    Math.min(used.at(-1) ?? 0, reachOfUsed * most),
+    rejected.findLast((size) => size <= reachOfRejected * most) ?? 0,
+  );
+  return axisAbout(-1.05 * half, 1.05 * half, 7);
 }
 
 export interface ResidualPlot {

@@ -79,10 +79,10 @@ function ValueCell({ coefficient }: { readonly coefficient: SolutionCoefficient 
   if (value === null) return <Cell className="text-right text-bad">not determined</Cell>;
   const parts = figureParts(value, error, value === 0 ? 0 : 4);
   return (
-    <Cell numeric>
+    <Cell numeric className="whitespace-normal!">
       {parts.value}
       <span className="block text-ink-2">
-        {parts.error === null ? null : `± ${parts.error} `}
+        {parts.error === null ? null : <span className="whitespace-nowrap">± {parts.error}</span>}{' '}
         {status === 'free' ? null : status}
       </span>
     </Cell>

@@ -1,7 +1,7 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
 import { launchBrowser } from '../support/browser';
-import { litPixels } from '../support/lit-pixels';
+import { expectDark } from '../support/expect-dark';
 import type { DemoAccount } from '../support/sign-in';
 import { signedIn } from '../support/signed-in';
 
@@ -15,13 +15,6 @@ async function inDarkSite(account: DemoAccount): Promise<Page> {
   const page = await signedIn(browser, account);
   await page.context().addCookies([{ name: 'light', value: 'dark-site', url: inject('baseUrl') }]);
   return page;
-}
-
-/** Scans the page as it stands: nothing but black and red, and some red. */
-async function expectDark(page: Page, what: string): Promise<void> {
-  const { count, first, red } = litPixels(await page.screenshot({ fullPage: true }));
-  expect(count, `${what}: green or blue at ${first}`).toBe(0);
-  expect(red, `${what} shows nothing`).toBeGreaterThan(100);
 }
 
 const openNight = async (page: Page): Promise<void> => {

@@ -27,7 +27,7 @@ export interface WaitingPerson {
   readonly email: string;
 }
 
-/** How many there are, and the first few of them. */
+/** How many there are, and the first hundred of them. */
 export interface Waits<T> {
   readonly n: number;
   readonly first: readonly T[];

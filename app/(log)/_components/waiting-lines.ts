@@ -15,8 +15,8 @@ export interface WaitingLine {
   readonly title: string;
   readonly n: number;
   readonly things: readonly WaitingThing[];
-  /** Where all of them are; absent when all are named. */
-  readonly all?: Route;
+  /** Where there is a list of them, if they are not named here. */
+  readonly list?: Route;
 }
 
 const nightWords = ({ date, telescope }: WaitingNight): string => `${formatDateInWords(date)}, ${telescope}`;
@@ -26,10 +26,8 @@ function line<T>(
   { n, first }: Waits<T>,
   title: string,
   thing: (item: T) => WaitingThing,
-  all: Route,
 ): readonly WaitingLine[] {
-  if (n === 0) return [];
-  return [{ title, n, things: first.map(thing), ...(n > first.length ? { all } : {}) }];
+  return n === 0 ? [] : [{ title, n, things: first.map(thing) }];
 }
 
 const outcomeWords = ({ outcome }: WaitingSolution): string =>
@@ -45,58 +43,38 @@ export function waitingLines(waiting: Waiting): readonly WaitingLine[] {
     detail,
   });
   return [
-    ...line(
-      openNights,
-      counted(openNights.n, 'Your night is open', 'Your nights are open'),
-      (one) => ({ href: `/nights/${one.night}` as Route, words: nightWords(one) }),
-      '/nights?state=open' as Route,
+    ...line(openNights, counted(openNights.n, 'Your night is open', 'Your nights are open'), (one) => ({
+      href: `/nights/${one.night}` as Route,
+      words: nightWords(one),
+    })),
+    ...line(refusedSets, counted(refusedSets.n, 'Refused upload', 'Refused uploads'), (one) => ({
+      href: `/measurement-sets/${one.set}` as Route,
+      words: one.name,
+      detail: `${formatCount(one.nFaults)} ${counted(one.nFaults, 'fault', 'faults')}, ${nightWords(one)}`,
+    })),
+    ...line(toDecide, counted(toDecide.n, 'Proposal to decide', 'Proposals to decide'), (one) =>
+      solution(one, one.proposedBy === null ? '' : `proposed by ${one.proposedBy}`),
     ),
-    ...line(
-      refusedSets,
-      counted(refusedSets.n, 'Refused upload', 'Refused uploads'),
-      (one) => ({
-        href: `/measurement-sets/${one.set}` as Route,
-        words: one.name,
-        detail: `${formatCount(one.nFaults)} ${counted(one.nFaults, 'fault', 'faults')}, ${nightWords(one)}`,
-      }),
-      '/nights?state=closed' as Route,
-    ),
-    ...line(
-      toDecide,
-      counted(toDecide.n, 'Proposal to decide', 'Proposals to decide'),
-      (one) => solution(one, one.proposedBy === null ? '' : `proposed by ${one.proposedBy}`),
-      '/nights?state=closed' as Route,
-    ),
-    ...line(
-      newResults,
-      counted(newResults.n, 'New calibrated night', 'New calibrated nights'),
-      (one) => ({
-        href: `/nights/${one.night}/results?programme=${encodeURIComponent(one.programme)}` as Route,
-        words: `${one.programme}, ${nightWords(one)}`,
-        detail: [one.verdict, one.nStars === null ? null : `${formatCount(one.nStars)} stars`]
-          .filter((part) => part !== null)
-          .join(', '),
-      }),
-      '/programmes' as Route,
-    ),
+    ...line(newResults, counted(newResults.n, 'New calibrated night', 'New calibrated nights'), (one) => ({
+      href: `/nights/${one.night}/results?programme=${encodeURIComponent(one.programme)}` as Route,
+      words: `${one.programme}, ${nightWords(one)}`,
+      detail: [one.verdict, one.nStars === null ? null : `${formatCount(one.nStars)} stars`]
+        .filter((part) => part !== null)
+        .join(', '),
+    })),
     ...line(
       unsolvedNights,
       counted(unsolvedNights.n, 'Night to be solved', 'Nights to be solved'),
       (one) => ({ href: `/nights/${one.night}/solutions` as Route, words: nightWords(one) }),
-      '/nights?state=closed' as Route,
     ),
-    ...line(
-      ownDrafts,
-      counted(ownDrafts.n, 'Draft of yours', 'Drafts of yours'),
-      (one) => solution(one, outcomeWords(one)),
-      '/nights?state=closed' as Route,
+    ...line(ownDrafts, counted(ownDrafts.n, 'Draft of yours', 'Drafts of yours'), (one) =>
+      solution(one, outcomeWords(one)),
     ),
-    ...line(
-      invited,
-      'Invited, not here yet',
-      (one) => ({ href: '/people' as Route, words: one.name, detail: one.email }),
-      '/people' as Route,
-    ),
+    ...line(invited, 'Invited, not here yet', (one) => ({
+      href: '/people' as Route,
+      words: one.name,
+      detail: one.email,
+    })),
     ...(nFailedJobs === 0
       ? []
       : [
@@ -104,7 +82,7 @@ export function waitingLines(waiting: Waiting): readonly WaitingLine[] {
             title: counted(nFailedJobs, 'Failed job', 'Failed jobs'),
             n: nFailedJobs,
             things: [],
-            all: '/jobs?state=failed' as Route,
+            list: '/jobs?state=failed' as Route,
           },
         ]),
   ];

@@ -11,8 +11,8 @@ import type { OwnScope, Scope } from '@/lib/server/policy/scope';
 import { select, selectOne, type SqlValues } from './database';
 import { visibleNights, visibleResults } from './visible';
 
-/** So many of a kind are named; the rest are counted. */
-const named = 5;
+/** So many of a kind are named; of more there is only the number. */
+const named = 100;
 const nightColumns = `n.public_id AS night, DATE_FORMAT(n.date, '%Y-%m-%d') AS date, l.name AS telescope`;
 const nightTables = 'nights n JOIN telescopes l ON l.id = n.telescope_id';
 

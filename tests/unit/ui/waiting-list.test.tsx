@@ -30,12 +30,15 @@ describe('what waits for a person', () => {
     const link = screen.getByRole('link', { name: 'MH26B-04, 3 November 2026, Larkspur 0.8 m' });
     expect(link.getAttribute('href')).toBe('/nights/nnnnnnnnnnnn/results?programme=MH26B-04');
     expect(link.parentElement?.textContent).toContain('photometric, 1,184 stars');
-    expect(screen.queryByRole('link', { name: /^All/ })).toBeNull();
+    expect(screen.queryByText(/more$/)).toBeNull();
   });
 
-  it('leads to the whole list when more wait than are named', () => {
-    render(<WaitingList waiting={{ ...nothing, openNights: { n: 7, first: [night] }, nFailedJobs: 2 }} />);
-    expect(screen.getByRole('link', { name: 'All 7' }).getAttribute('href')).toBe('/nights?state=open');
+  it('folds what is more than a few, and says how many there are that it does not name', () => {
+    const first = Array.from({ length: 7 }, (_, k) => ({ ...night, night: `nnnnnnnnnnn${k}` }));
+    render(<WaitingList waiting={{ ...nothing, openNights: { n: 9, first }, nFailedJobs: 2 }} />);
+    const fold = screen.getByText('4 more').parentElement;
+    expect(fold?.querySelectorAll('a')).toHaveLength(2);
+    expect(fold?.textContent).toContain('and 2 that are named here when these are done');
     expect(screen.getByRole('link', { name: 'See the list' }).getAttribute('href')).toBe(
       '/jobs?state=failed',
     );

@@ -27,7 +27,7 @@ const numbers = async () => (await rows().locator('th').allTextContents()).map(N
 describe('an observer at the keyboard', () => {
   it('opens a night and finds an empty log that says what belongs there', async () => {
     expect(await page.getByRole('heading', { level: 1 }).textContent()).toBe('12 October 2026');
-    expect(await page.getByText('No frames yet').first().isVisible()).toBe(true);
+    await page.getByText('No frames yet').first().waitFor();
   });
 
   it('logs ten frames without a mouse', async () => {
@@ -139,9 +139,10 @@ describe('an observer at the keyboard', () => {
     await page.getByLabel(/Only the \d+ frames of the selected stretch/).waitFor();
     expect(page.url()).toMatch(/\?from=2026-10-12T\d\d:\d\d:00Z&to=2026-10-13T\d\d:\d\d:00Z$/);
     await page.reload();
-    expect(await page.getByLabel(/Only the \d+ frames/).isVisible()).toBe(true);
+    // The address is read once the page's script runs.
+    await page.getByLabel(/Only the \d+ frames/).waitFor();
     await page.getByRole('button', { name: 'Clear' }).click();
-    expect(page.url()).not.toContain('from=');
+    await page.waitForURL(({ search }) => !search.includes('from='));
   });
 
   it('corrects a frame in place; the earlier value stays in the audit trail', async () => {

@@ -72,8 +72,9 @@ export const pictures: readonly Picture[] = [
       await openNight(page, '2026-10-17');
       await page.goto(`${new URL(page.url()).pathname}/results`);
       await page.getByRole('img', { name: /^Colour–magnitude diagram/ }).waitFor();
-      await page.getByRole('heading', { name: 'Calibrated magnitudes' }).evaluate((heading) => {
-        heading.closest('section')?.scrollIntoView();
+      // The end of the table, the diagram, and what the magnitudes rest on.
+      await page.getByRole('heading', { name: 'Colour–magnitude diagram' }).evaluate((heading) => {
+        heading.closest('section')?.scrollIntoView({ block: 'end' });
       });
     },
   },

@@ -25,28 +25,29 @@ export default async function MailPage() {
       <Panel flush>
         {mails.length === 0 ? (
           <EmptyState title="No mail yet">
-            Mail is sent when an upload is refused, when measurements wait, and when somebody is invited.
+            Mail is sent when an upload is refused, when measurements or a proposal wait, when a night is
+            calibrated, and when somebody is invited.
           </EmptyState>
         ) : (
           <DataTable
             caption="Mail, the newest first"
             head={
               <tr>
-                <HeadCell>Received</HeadCell>
-                <HeadCell>To</HeadCell>
                 <HeadCell>Subject</HeadCell>
+                <HeadCell>To</HeadCell>
+                <HeadCell>Received</HeadCell>
               </tr>
             }
           >
             {mails.map((mail) => (
               <Row key={mail.id}>
-                <Cell mono>{formatInstant(mail.receivedAt)}</Cell>
-                <Cell>{mail.to === '' ? 'not given' : mail.to}</Cell>
-                <Cell heading wrap>
+                <Cell heading className="min-w-52 whitespace-normal!">
                   <Link href={`/mail/${mail.id}` as Route} className="underline">
                     {mail.subject === '' ? 'no subject' : mail.subject}
                   </Link>
                 </Cell>
+                <Cell>{mail.to === '' ? 'not given' : mail.to}</Cell>
+                <Cell mono>{formatInstant(mail.receivedAt)}</Cell>
               </Row>
             ))}
           </DataTable>

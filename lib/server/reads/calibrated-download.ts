@@ -80,10 +80,15 @@ async function* dataRows(
   for (const { id, programme, solution } of results) {
     const names = { programme: programme ?? '', solution, night: night.date };
     for await (const rows of calibratedChunks(id)) {
-      const cells = rows.map(([, ...row]) => exportedCells(row, names));
-      if (format === 'csv') yield cells.map(csvRow).join('');
-      else yield `${isFirst ? '' : ',\n'}${cells.map(jsonRow).join(',\n')}`;
-      isFirst = false;
+      let text = '';
+      // Row by row: what all rows of a chunk held at once would outlive the collector's first look.
+      for (const [, ...row] of rows) {
+        const cells = exportedCells(row, names);
+        if (format === 'csv') text += csvRow(cells);
+        else text += `${isFirst ? '' : ',\n'}${jsonRow(cells)}`;
+        isFirst = false;
+      }
+      yield text;
     }
   }
 }

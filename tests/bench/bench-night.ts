@@ -8,6 +8,7 @@ import { openNight } from '@/lib/server/acts/open-night';
 import { receiveMeasurements } from '@/lib/server/acts/receive-measurements';
 import { storeMeasurements } from '@/lib/server/acts/store-measurements';
 import { execute, inTransaction } from '@/lib/server/data/database';
+import { lucia, sessionCookieName } from '@/lib/server/identity/sessions';
 import type { PersonCaller } from '@/lib/server/policy/caller';
 import { newCaller, newLogWorld } from '@/tests/support/log-world';
 import type { JobRun } from '@/workers/handler';
@@ -44,6 +45,12 @@ async function makeNight(frames: number): Promise<BenchNight> {
   );
   await logFrames(caller, night.id, inputs, { origin: 'log', isList: true });
   return { caller, id: night.id };
+}
+
+/** The cookie of a session of the person, for calls of the built application. */
+export async function sessionCookie({ personId }: PersonCaller): Promise<string> {
+  const session = await inTransaction((tx) => lucia(tx).createSession(personId, { userAgent: 'bench' }));
+  return `${sessionCookieName}=${session.id}`;
 }
 
 /** Takes a table from its first byte to the matched set, as a worker's process does it; public id of the set. */

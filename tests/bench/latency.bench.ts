@@ -3,11 +3,10 @@ import { rm } from 'node:fs/promises';
 import path from 'node:path';
 import { addressFromEnvironment } from '@/db/connection';
 import type { Queued } from '@/lib/contracts/api/measurement-set';
-import { inTransaction, selectOne } from '@/lib/server/data/database';
-import { lucia, sessionCookieName } from '@/lib/server/identity/sessions';
+import { selectOne } from '@/lib/server/data/database';
 import { startApplication } from '@/tests/support/server';
 import type { Bench, Figure } from './bench';
-import { benchNight, forgetSet } from './bench-night';
+import { benchNight, forgetSet, sessionCookie } from './bench-night';
 import { million, writeTable } from './write-table';
 
 /** A reader asks for the next page so long after the one before [ms]. */
@@ -27,12 +26,9 @@ export const latency: Bench = {
     const database = addressFromEnvironment();
     const application = await startApplication({ database, dataFolder: world.folder });
     try {
-      const session = await inTransaction((tx) =>
-        lucia(tx).createSession(night.caller.personId, { userAgent: 'bench' }),
-      );
       const reader: Reader = {
         baseUrl: application.baseUrl,
-        cookie: `${sessionCookieName}=${session.id}`,
+        cookie: await sessionCookie(night.caller),
         pages: ['/nights', `/nights/${night.id}`, `/nights/${night.id}/measurements`],
       };
       await readWhile(reader, (count) => count < warmUps);

@@ -1,58 +1,108 @@
 import { writeFile } from 'node:fs/promises';
 import path from 'node:path';
+import { addressFromEnvironment } from '@/db/connection';
 import { FrameInput } from '@/lib/contracts/api/frame';
+import { QueuedSolution } from '@/lib/contracts/api/solution';
 import { SolveOptions } from '@/lib/contracts/solve-options';
 import { createRandom } from '@/lib/numerics/random';
 import { logFrames } from '@/lib/server/acts/log-frames';
 import { openNight } from '@/lib/server/acts/open-night';
 import { queueSolve } from '@/lib/server/acts/queue-solve';
-import { select, selectOne } from '@/lib/server/data/database';
+import { select } from '@/lib/server/data/database';
 import type { PersonCaller } from '@/lib/server/policy/caller';
+import { startApplication } from '@/tests/support/server';
 import { solveNight } from '@/workers/handlers/solve-night';
 import type { Bench, BenchWorld } from './bench';
-import { benchNight, runOf, takeTable } from './bench-night';
+import { benchNight, runOf, sessionCookie, takeTable } from './bench-night';
 
 const nStars = 20;
 const nVisits = 50;
 const bands = ['V', 'B'] as const;
 const nObservations = nStars * nVisits * bands.length;
 
-/** A night's standards from the queue to the stored solution, with its checks and evidence. */
+/** A night's standards from the queue to the solution's page with all residuals, and the work of it alone. */
 export const solve: Bench = {
   name: 'solve',
   run: async (world) => {
     const { caller } = await benchNight();
-    const id = await standardNight(world, caller);
+    const night = await standardNight(world, caller);
     // The first loads modules and compiles, the second is measured.
-    await solveOnce(caller, id);
-    const seconds = await solveOnce(caller, id);
-    return [
-      {
-        name: `solve of ${nObservations.toLocaleString('en-GB')} observations of standards in B and V, from the queue to the stored solution`,
-        measured: seconds,
-        baseline: null,
-        unit: 's',
-        aim: null,
-      },
-    ];
+    await solveHere(caller, night);
+    const here = await solveHere(caller, night);
+    const application = await startApplication({
+      database: addressFromEnvironment(),
+      dataFolder: world.folder,
+    });
+    try {
+      const client = { baseUrl: application.baseUrl, cookie: await sessionCookie(caller) };
+      await solveThere(client, night);
+      const there = await solveThere(client, night);
+      return [
+        {
+          name: `solve of ${nObservations.toLocaleString('en-GB')} observations, asked over HTTP, to its page with all residuals, against the job's own work`,
+          measured: there,
+          baseline: here,
+          unit: 's',
+          aim: null,
+        },
+      ];
+    } finally {
+      await application.stop();
+    }
   },
 };
 
-async function solveOnce(caller: PersonCaller, night: string): Promise<number> {
+/** Queues a solve and does its job in this process: how long it took [s]. */
+async function solveHere(caller: PersonCaller, night: string): Promise<number> {
   const begun_ms = performance.now();
   const { solution } = await queueSolve(caller, night, SolveOptions.parse({}));
   const { outcome, observations } = await solveNight(runOf<'solve-night'>('bench-solve', { solution }));
   const seconds = (performance.now() - begun_ms) / 1000;
   if (outcome !== 'determined' || observations !== nObservations)
     throw new Error(`The solve of ${observations} observations is ${outcome}.`);
-  const stored = await selectOne<{ n: number }>(
-    `SELECT COUNT(*) AS n FROM solution_observations o JOIN solutions s ON s.id = o.solution_id
-      WHERE s.public_id = :solution`,
-    { solution },
-  );
-  if (Number(stored?.n) !== nObservations)
-    throw new Error(`Of the observations ${stored?.n ?? 0} are stored.`);
   return seconds;
+}
+
+interface Client {
+  readonly baseUrl: string;
+  readonly cookie: string;
+}
+
+/** Asks the application for a solve, waits for its job, and reads the page and all residuals [s]. */
+async function solveThere(client: Client, night: string): Promise<number> {
+  const begun_ms = performance.now();
+  const asked = await call(client, `/api/v1/nights/${night}/solutions`, '{}');
+  const { solution, job } = QueuedSolution.parse(await asked.json());
+  for (;;) {
+    const { state } = (await (await call(client, `/api/v1/jobs/${job}`)).json()) as { state: string };
+    if (state === 'done') break;
+    if (state !== 'queued' && state !== 'running') throw new Error(`The solve is ${state}.`);
+    await new Promise((resolve) => setTimeout(resolve, 25));
+  }
+  const page = await call(client, `/solutions/${solution}`);
+  if (!(await page.text()).includes('Coefficients')) throw new Error('The page shows no coefficients.');
+  let n = 0;
+  for (let after: string | null = ''; after !== null;) {
+    const query = `limit=1000${after === '' ? '' : `&after=${after}`}`;
+    const answer = await call(client, `/api/v1/solutions/${solution}/residuals?${query}`);
+    const { items, next } = (await answer.json()) as { items: readonly unknown[]; next: string | null };
+    n += items.length;
+    after = next;
+  }
+  const seconds = (performance.now() - begun_ms) / 1000;
+  if (n !== nObservations) throw new Error(`The page has ${n} observations.`);
+  return seconds;
+}
+
+/** Reads, or posts a body. */
+async function call({ baseUrl, cookie }: Client, address: string, body?: string): Promise<Response> {
+  const answer = await fetch(baseUrl + address, {
+    headers: { cookie, origin: baseUrl, 'content-type': 'application/json' },
+    redirect: 'manual',
+    ...(body === undefined ? {} : { method: 'POST', body }),
+  });
+  if (!answer.ok) throw new Error(`${address} answered ${answer.status}: ${await answer.text()}`);
+  return answer;
 }
 
 interface Standard {

@@ -8,3 +8,13 @@ export async function expectDark(page: Page, what: string): Promise<void> {
   expect(count, `${what}: green or blue at ${first}`).toBe(0);
   expect(red, `${what} shows nothing`).toBeGreaterThan(100);
 }
+
+/** The same on a desk's screen and on a phone's, neither of which the page may be wider than. */
+export async function expectDarkOnScreens(page: Page): Promise<void> {
+  for (const width of [1440, 390]) {
+    await page.setViewportSize({ width, height: 900 });
+    await page.waitForTimeout(300);
+    await expectDark(page, `${width} px`);
+    expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(width);
+  }
+}

@@ -1,7 +1,7 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatBytes } from '@/app/_components/ui/format-figure';
+import { formatBytes } from '@/lib/contracts/format-figure';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { PageHead } from '@/app/_components/ui/page-head';
 import { Panel } from '@/app/_components/ui/panel';

@@ -1,5 +1,5 @@
 import type { Route } from 'next';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import type { Waiting, WaitingNight, WaitingSolution, Waits } from '@/lib/contracts/waiting';
 

@@ -1,5 +1,5 @@
 import Link from 'next/link';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Waiting } from '@/lib/contracts/waiting';
 import { waitingLines, type WaitingLine, type WaitingThing } from './waiting-lines';

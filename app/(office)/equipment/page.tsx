@@ -1,7 +1,7 @@
 import type { Metadata } from 'next';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { Figure } from '@/app/_components/ui/figure';
-import { formatPlain } from '@/app/_components/ui/format-figure';
+import { formatPlain } from '@/lib/contracts/format-figure';
 import { KeyValues } from '@/app/_components/ui/key-values';
 import { PageHead } from '@/app/_components/ui/page-head';
 import { Panel } from '@/app/_components/ui/panel';

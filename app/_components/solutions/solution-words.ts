@@ -1,4 +1,4 @@
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { hasEnded } from '@/lib/contracts/api/job';
 import type { Solution } from '@/lib/contracts/api/solution';
 import { bands } from '@/lib/contracts/bands';

@@ -1,4 +1,4 @@
-import { figureParts } from './format-figure';
+import { figureParts } from '@/lib/contracts/format-figure';
 
 interface FigureProps {
   readonly value: number | null | undefined;

@@ -1,6 +1,7 @@
 import 'server-only';
 import { calibratedCautions } from '@/lib/contracts/calibrated-columns';
 import { coefficientWords, type ApiCoefficient } from '@/lib/contracts/coefficients';
+import { formatPlain, formatWithError } from '@/lib/contracts/format-figure';
 import { renderLetter, type RenderedLetter } from './letter';
 
 export interface CalibratedBand {
@@ -36,15 +37,9 @@ export interface NightCalibrated {
 }
 
 const figure = (n: number): string => n.toLocaleString('en-GB');
-const withMinus = (text: string): string => text.replace('-', '\u2212');
-
-/** `0.1384 ± 0.0033`: both to the two digits that the error has. */
 function coefficientAsText({ value, error, status }: CalibratedBand['coefficients'][number]): string {
   if (value === null) return 'not determined';
-  if (status === 'fixed') return `${withMinus(String(value))}, held fixed`;
-  if (error === null || error <= 0) return withMinus(value.toFixed(4));
-  const decimals = Math.max(0, 1 - Math.floor(Math.log10(Number(error.toPrecision(2)))));
-  return `${withMinus(value.toFixed(decimals))} ± ${error.toFixed(decimals)}`;
+  return status === 'fixed' ? `${formatPlain(value)}, held fixed` : formatWithError(value, error, 4);
 }
 
 const mag = (value: number | null): string => (value === null ? '' : `${value.toFixed(4)} mag`);

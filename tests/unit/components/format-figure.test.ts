@@ -9,7 +9,7 @@ import {
   formatSigned,
   formatWithError,
   noValue,
-} from '@/app/_components/ui/format-figure';
+} from '@/lib/contracts/format-figure';
 
 describe('a figure', () => {
   it.each([

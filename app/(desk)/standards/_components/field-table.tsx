@@ -2,7 +2,7 @@ import Link from 'next/link';
 import type { Route } from 'next';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
-import { formatFixed, noValue } from '@/app/_components/ui/format-figure';
+import { formatFixed, noValue } from '@/lib/contracts/format-figure';
 import { formatDateInWords, formatMinutes } from '@/app/_components/ui/format-time';
 import { Panel } from '@/app/_components/ui/panel';
 

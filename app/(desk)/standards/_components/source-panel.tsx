@@ -1,4 +1,4 @@
-import { formatFixed } from '@/app/_components/ui/format-figure';
+import { formatFixed } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 
 interface Source {

@@ -2,7 +2,7 @@ import Link from 'next/link';
 import type { Route } from 'next';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
-import { formatFixed } from '@/app/_components/ui/format-figure';
+import { formatFixed } from '@/lib/contracts/format-figure';
 import type { Standard } from '@/lib/contracts/api/standard';
 import type { List } from '@/lib/contracts/common';
 import { fieldSlug } from '@/lib/contracts/field-slug';

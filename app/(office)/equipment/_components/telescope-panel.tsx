@@ -1,7 +1,7 @@
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { Figure } from '@/app/_components/ui/figure';
-import { formatCount, formatPlain } from '@/app/_components/ui/format-figure';
+import { formatCount, formatPlain } from '@/lib/contracts/format-figure';
 import { KeyValues } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';
 import { bands, type Band } from '@/lib/contracts/bands';

@@ -28,7 +28,7 @@ export default async function MessagePage({ params }: PageProps<'/mail/[id]'>) {
             {mail.text.trim() === '' ? (
               <p className="text-ink-2">The message has no text.</p>
             ) : (
-              <pre className="max-w-prose text-table whitespace-pre-wrap">{mail.text}</pre>
+              <pre className="max-w-prose text-table wrap-anywhere whitespace-pre-wrap">{mail.text}</pre>
             )}
           </Panel>
           {mail.html === null ? null : (

@@ -2,7 +2,7 @@ import type { Metadata, Route } from 'next';
 import Link from 'next/link';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
-import { formatCount, noValue } from '@/app/_components/ui/format-figure';
+import { formatCount, noValue } from '@/lib/contracts/format-figure';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { PageHead } from '@/app/_components/ui/page-head';

@@ -1,5 +1,5 @@
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatFixed } from '@/app/_components/ui/format-figure';
+import { formatFixed } from '@/lib/contracts/format-figure';
 import { formatMinutes } from '@/app/_components/ui/format-time';
 import type { BandCondition, BandFrame } from './band-input';
 import type { NightSky } from './night-sky';

@@ -1,6 +1,6 @@
 import { buttonClass } from '@/app/_components/ui/button';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatCount, noValue } from '@/app/_components/ui/format-figure';
+import { formatCount, noValue } from '@/lib/contracts/format-figure';
 import { Pagination } from '@/app/_components/ui/pagination';
 import { Panel } from '@/app/_components/ui/panel';
 import type { MeasurementFault, MeasurementSet } from '@/lib/contracts/api/measurement-set';

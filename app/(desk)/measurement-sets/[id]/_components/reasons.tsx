@@ -1,5 +1,5 @@
 import Link from 'next/link';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { Panel } from '@/app/_components/ui/panel';
 import type { SetPage } from '@/lib/contracts/set-page';

@@ -2,7 +2,7 @@ import { BandMark } from '@/app/_components/ui/band-mark';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { Figure } from '@/app/_components/ui/figure';
-import { formatCount, formatFixed, formatPlain, noValue } from '@/app/_components/ui/format-figure';
+import { formatCount, formatFixed, formatPlain, noValue } from '@/lib/contracts/format-figure';
 import { Pagination } from '@/app/_components/ui/pagination';
 import { Panel } from '@/app/_components/ui/panel';
 import type { MeasurementRow } from '@/lib/contracts/api/measurement-set';

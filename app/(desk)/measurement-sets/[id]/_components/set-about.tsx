@@ -1,5 +1,5 @@
 import { BandMark } from '@/app/_components/ui/band-mark';
-import { formatBytes, formatCount, formatPlain } from '@/app/_components/ui/format-figure';
+import { formatBytes, formatCount, formatPlain } from '@/lib/contracts/format-figure';
 import { formatInstant } from '@/app/_components/ui/format-time';
 import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';

@@ -1,5 +1,5 @@
 import { Finding } from '@/app/_components/ui/finding';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { Tabs } from '@/app/_components/ui/tabs';
 import type { SetPage, SetPart } from '@/lib/contracts/set-page';
 import { FaultTable } from './fault-table';

@@ -1,5 +1,5 @@
 import { Finding } from '@/app/_components/ui/finding';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { hasEnded } from '@/lib/contracts/api/job';
 import type { MeasurementSet } from '@/lib/contracts/api/measurement-set';
 import type { SetPage } from '@/lib/contracts/set-page';

@@ -3,7 +3,7 @@ import type { Route } from 'next';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
-import { formatCount, formatFixed, noValue } from '@/app/_components/ui/format-figure';
+import { formatCount, formatFixed, noValue } from '@/lib/contracts/format-figure';
 import { Pagination } from '@/app/_components/ui/pagination';
 import { Panel } from '@/app/_components/ui/panel';
 import type { MeasuredStar } from '@/lib/contracts/api/measurement-set';

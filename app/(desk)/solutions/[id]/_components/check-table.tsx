@@ -1,5 +1,5 @@
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatFixed, noValue } from '@/app/_components/ui/format-figure';
+import { formatFixed, noValue } from '@/lib/contracts/format-figure';
 import { formatMinutes } from '@/app/_components/ui/format-time';
 import type { SolutionBand } from '@/lib/contracts/api/solution';
 import type { Band } from '@/lib/contracts/bands';

@@ -1,5 +1,5 @@
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { figureParts, formatFixed, formatSigned, formatWithError } from '@/app/_components/ui/format-figure';
+import { figureParts, formatFixed, formatSigned, formatWithError } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Solution, SolutionBand, SolutionCoefficient } from '@/lib/contracts/api/solution';
 import { bands, type Band } from '@/lib/contracts/bands';

@@ -1,5 +1,5 @@
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatCount, formatFixed, formatPlain, noValue } from '@/app/_components/ui/format-figure';
+import { formatCount, formatFixed, formatPlain, noValue } from '@/lib/contracts/format-figure';
 import { KeyValues } from '@/app/_components/ui/key-values';
 import type { SolutionBand } from '@/lib/contracts/api/solution';
 import type { Band } from '@/lib/contracts/bands';

@@ -1,6 +1,6 @@
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { Figure } from '@/app/_components/ui/figure';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import type { SolutionBand } from '@/lib/contracts/api/solution';
 import type { Band } from '@/lib/contracts/bands';
 

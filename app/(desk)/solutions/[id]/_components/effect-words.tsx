@@ -1,4 +1,4 @@
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import type { ApprovalEffect } from '@/lib/contracts/solution-page';
 
 const many = (count: number, noun: string): string =>

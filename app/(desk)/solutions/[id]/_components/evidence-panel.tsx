@@ -1,6 +1,6 @@
 import { indexWords } from '@/app/_components/solutions/solution-words';
 import { Finding } from '@/app/_components/ui/finding';
-import { formatFixed, formatWithError, noValue } from '@/app/_components/ui/format-figure';
+import { formatFixed, formatWithError, noValue } from '@/lib/contracts/format-figure';
 import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Tone } from '@/app/_components/ui/tone-mark';

@@ -2,7 +2,7 @@
 
 import type { Route } from 'next';
 import { Dialog } from '@/app/_components/ui/dialog';
-import { formatWithError } from '@/app/_components/ui/format-figure';
+import { formatWithError } from '@/lib/contracts/format-figure';
 import { formatDateInWords, formatInstant } from '@/app/_components/ui/format-time';
 import { KeyValues } from '@/app/_components/ui/key-values';
 import { LinkButton } from '@/app/_components/ui/link-button';

@@ -4,7 +4,7 @@ import { useState } from 'react';
 import { useShortcut } from '@/app/_components/hooks/use-shortcut';
 import { Button } from '@/app/_components/ui/button';
 import { EmptyState } from '@/app/_components/ui/empty-state';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { SolutionObservation } from '@/lib/contracts/api/solution';
 import { Choice } from './choice';

@@ -4,7 +4,7 @@ import type { KeyboardEvent, MouseEvent } from 'react';
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Checkbox } from '@/app/_components/ui/checkbox';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatFixed, formatSigned } from '@/app/_components/ui/format-figure';
+import { formatFixed, formatSigned } from '@/lib/contracts/format-figure';
 import type { SolutionObservation } from '@/lib/contracts/api/solution';
 import { toggled, type Selection, type SortKey, type Sorting } from './observation-list';
 

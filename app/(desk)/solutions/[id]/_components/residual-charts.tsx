@@ -2,7 +2,7 @@
 
 import { useCallback, useMemo } from 'react';
 import { useWidth } from '@/app/_components/hooks/use-width';
-import { formatCount, formatSigned } from '@/app/_components/ui/format-figure';
+import { formatCount, formatSigned } from '@/lib/contracts/format-figure';
 import type { SolutionObservation } from '@/lib/contracts/api/solution';
 import type { Selection } from './observation-list';
 import { ResidualChart } from './residual-chart';

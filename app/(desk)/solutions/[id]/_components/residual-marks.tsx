@@ -13,7 +13,7 @@ import {
 import { bandColour } from '@/app/_components/ui/band-mark';
 import { bandShape, crossShape, type Spot } from '@/app/_components/ui/band-shape';
 import { classNames } from '@/app/_components/ui/class-names';
-import { formatSigned } from '@/app/_components/ui/format-figure';
+import { formatSigned } from '@/lib/contracts/format-figure';
 import { chart } from './chart-geometry';
 import { tickWords, type ResidualPlot, type ResidualPoint } from './residual-points';
 

@@ -1,5 +1,5 @@
 import { axisAbout, timeAxisAbout, type Axis } from '@/app/_components/charts/axis-ticks';
-import { formatFixed } from '@/app/_components/ui/format-figure';
+import { formatFixed } from '@/lib/contracts/format-figure';
 import { formatIsoDate, formatMinutes } from '@/app/_components/ui/format-time';
 import type { SolutionObservation } from '@/lib/contracts/api/solution';
 import type { Band } from '@/lib/contracts/bands';

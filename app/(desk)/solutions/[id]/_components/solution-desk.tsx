@@ -7,7 +7,7 @@ import { BandMark } from '@/app/_components/ui/band-mark';
 import { Button } from '@/app/_components/ui/button';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { ErrorNotice } from '@/app/_components/ui/error-notice';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Solution } from '@/lib/contracts/api/solution';
 import { bands, type Band } from '@/lib/contracts/bands';

@@ -1,6 +1,6 @@
 import { Figure } from '@/app/_components/ui/figure';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
-import { formatFixed, formatSigned } from '@/app/_components/ui/format-figure';
+import { formatFixed, formatSigned } from '@/lib/contracts/format-figure';
 import { KeyValues } from '@/app/_components/ui/key-values';
 import type { FieldStar } from './field-star';
 

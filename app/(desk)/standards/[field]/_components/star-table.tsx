@@ -2,7 +2,7 @@ import type { KeyboardEvent } from 'react';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { Figure } from '@/app/_components/ui/figure';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
-import { noValue } from '@/app/_components/ui/format-figure';
+import { noValue } from '@/lib/contracts/format-figure';
 import type { FieldStar } from './field-star';
 
 interface StarTableProps {

@@ -1,4 +1,4 @@
-import { formatFixed } from '@/app/_components/ui/format-figure';
+import { formatFixed } from '@/lib/contracts/format-figure';
 import { formatDateInWords, formatMinutes } from '@/app/_components/ui/format-time';
 
 interface TonightLineProps {

@@ -4,7 +4,7 @@ import { useState } from 'react';
 import { useStretch } from '@/app/_components/hooks/use-stretch';
 import { Button } from '@/app/_components/ui/button';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { formatFixed } from '@/app/_components/ui/format-figure';
+import { formatFixed } from '@/lib/contracts/format-figure';
 import { formatDuration, formatMinutes } from '@/app/_components/ui/format-time';
 import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';

@@ -3,7 +3,7 @@ import Link from 'next/link';
 import { memo } from 'react';
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Cell, Row } from '@/app/_components/ui/data-table';
-import { formatFixed, formatPlain } from '@/app/_components/ui/format-figure';
+import { formatFixed, formatPlain } from '@/lib/contracts/format-figure';
 import { formatClock } from '@/app/_components/ui/format-time';
 import { StateTag } from '@/app/_components/ui/state-tag';
 import { ToneMark } from '@/app/_components/ui/tone-mark';

@@ -6,7 +6,7 @@ import { Dialog } from '@/app/_components/ui/dialog';
 import { ErrorNotice } from '@/app/_components/ui/error-notice';
 import { Field } from '@/app/_components/ui/field';
 import { Finding } from '@/app/_components/ui/finding';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { ProgressBar } from '@/app/_components/ui/progress-bar';
 import { TextArea } from '@/app/_components/ui/text-area';
 import { CheckedTable } from './checked-table';

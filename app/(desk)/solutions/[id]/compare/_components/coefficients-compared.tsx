@@ -1,6 +1,6 @@
 import { changeInErrors } from '@/app/_components/solutions/coefficient-change';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
-import { figureParts, formatFixed, formatSigned, noValue } from '@/app/_components/ui/format-figure';
+import { figureParts, formatFixed, formatSigned, noValue } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Solution, SolutionCoefficient } from '@/lib/contracts/api/solution';
 import { bands, type Band } from '@/lib/contracts/bands';

@@ -7,7 +7,7 @@ import { Button } from '@/app/_components/ui/button';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
 import { ErrorNotice } from '@/app/_components/ui/error-notice';
-import { formatCount, formatSigned } from '@/app/_components/ui/format-figure';
+import { formatCount, formatSigned } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import type { Solution, SolutionObservation } from '@/lib/contracts/api/solution';
 import { differences, type Difference } from './compared-observations';

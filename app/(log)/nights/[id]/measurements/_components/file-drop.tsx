@@ -3,7 +3,7 @@
 import { useRef, useState, type DragEvent } from 'react';
 import { Button } from '@/app/_components/ui/button';
 import { classNames } from '@/app/_components/ui/class-names';
-import { formatBytes } from '@/app/_components/ui/format-figure';
+import { formatBytes } from '@/lib/contracts/format-figure';
 
 interface FileDropProps {
   readonly file: File | null;

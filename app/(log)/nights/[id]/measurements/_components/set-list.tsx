@@ -4,7 +4,7 @@ import Link from 'next/link';
 import type { Route } from 'next';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { formatInstant } from '@/app/_components/ui/format-time';
 import { Panel } from '@/app/_components/ui/panel';
 import { StateTag } from '@/app/_components/ui/state-tag';

@@ -6,7 +6,7 @@ import { useState } from 'react';
 import { callApi } from '@/app/_components/hooks/call-api';
 import { Button } from '@/app/_components/ui/button';
 import { ErrorNotice } from '@/app/_components/ui/error-notice';
-import { formatBytes } from '@/app/_components/ui/format-figure';
+import { formatBytes } from '@/lib/contracts/format-figure';
 import { Panel } from '@/app/_components/ui/panel';
 import { ProgressBar } from '@/app/_components/ui/progress-bar';
 import { saveColumnMapping, type SavedMapping } from '@/lib/contracts/api/measurement-set';

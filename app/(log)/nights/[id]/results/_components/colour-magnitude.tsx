@@ -3,7 +3,7 @@
 import { memo } from 'react';
 import { CartesianGrid, Scatter, ScatterChart, XAxis, YAxis } from 'recharts';
 import { useWidth } from '@/app/_components/hooks/use-width';
-import { formatCount, formatFixed } from '@/app/_components/ui/format-figure';
+import { formatCount, formatFixed } from '@/lib/contracts/format-figure';
 import type { DiagramStar } from '@/lib/contracts/calibrated-page';
 import { diagramScale, placeOf, room } from './diagram-scale';
 

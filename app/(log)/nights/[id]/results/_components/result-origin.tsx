@@ -2,7 +2,7 @@ import type { Route } from 'next';
 import Link from 'next/link';
 import { buttonClass } from '@/app/_components/ui/button';
 import { Finding } from '@/app/_components/ui/finding';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { formatInstant } from '@/app/_components/ui/format-time';
 import { KeyValues, type KeyValue } from '@/app/_components/ui/key-values';
 import { Panel } from '@/app/_components/ui/panel';

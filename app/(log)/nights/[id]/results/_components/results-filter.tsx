@@ -2,7 +2,7 @@ import type { Route } from 'next';
 import { Button } from '@/app/_components/ui/button';
 import { Checkbox } from '@/app/_components/ui/checkbox';
 import { Field } from '@/app/_components/ui/field';
-import { formatPlain } from '@/app/_components/ui/format-figure';
+import { formatPlain } from '@/lib/contracts/format-figure';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { NumberInput } from '@/app/_components/ui/number-input';
 import { Select } from '@/app/_components/ui/select';

@@ -1,4 +1,4 @@
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import {
   calibratedPerPage,

@@ -5,7 +5,7 @@ import { useCallback, useEffect, useState } from 'react';
 import { classNames } from '@/app/_components/ui/class-names';
 import { Checkbox } from '@/app/_components/ui/checkbox';
 import { EmptyState } from '@/app/_components/ui/empty-state';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { LinkButton } from '@/app/_components/ui/link-button';
 import { Panel } from '@/app/_components/ui/panel';
 import {

@@ -2,7 +2,7 @@ import Link from 'next/link';
 import { Fragment, type ReactNode } from 'react';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { Figure } from '@/app/_components/ui/figure';
-import { decimalsSupported, formatFixed, noValue } from '@/app/_components/ui/format-figure';
+import { decimalsSupported, formatFixed, noValue } from '@/lib/contracts/format-figure';
 import { formatDeclination, formatRightAscension } from '@/lib/astro/format-sexagesimal';
 import { calibratedFlags, type CalibratedFlag } from '@/lib/photometry/calibrated-flags';
 import {

@@ -7,7 +7,7 @@ import { SolveProgress } from '@/app/_components/solutions/solve-progress';
 import { VerdictTag } from '@/app/_components/solutions/verdict-tag';
 import { Cell, DataTable, HeadCell, Row } from '@/app/_components/ui/data-table';
 import { EmptyState } from '@/app/_components/ui/empty-state';
-import { formatCount, formatFixed } from '@/app/_components/ui/format-figure';
+import { formatCount, formatFixed } from '@/lib/contracts/format-figure';
 import { formatInstant } from '@/app/_components/ui/format-time';
 import { Panel } from '@/app/_components/ui/panel';
 import { StateTag } from '@/app/_components/ui/state-tag';

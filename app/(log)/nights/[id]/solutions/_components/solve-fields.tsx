@@ -4,7 +4,7 @@ import { airmassWords } from '@/app/_components/solutions/solution-words';
 import { BandMark } from '@/app/_components/ui/band-mark';
 import { Checkbox } from '@/app/_components/ui/checkbox';
 import { Field } from '@/app/_components/ui/field';
-import { formatCount } from '@/app/_components/ui/format-figure';
+import { formatCount } from '@/lib/contracts/format-figure';
 import { formatDateInWords } from '@/app/_components/ui/format-time';
 import { Select } from '@/app/_components/ui/select';
 import type { NightSolutionsPage } from '@/lib/contracts/solution-page';
